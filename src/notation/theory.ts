@@ -1,0 +1,95 @@
+/**
+ * What a theory file says, checked and freed of its notation: plain data, no positions needed downstream.
+ * The Lagrangian is a sum of monomials, each a rational times powers of declared symbols times tensor factors whose
+ * indices obey Einstein's rule. Imports only exact rationals and diagnostics.
+ */
+import type { Rational } from '../algebra/rational.js';
+import type { Diagnostic } from './diagnostics.js';
+
+/** A Laurent monomial in named symbols: coefficient · Π name^exponent (exponents are non-zero integers). */
+export interface ScalarTerm {
+  readonly coefficient: Rational;
+  /** Sorted by name, no zero exponents. */
+  readonly powers: readonly (readonly [name: string, exponent: number])[];
+}
+
+/** A sum of Laurent monomials in declared symbols; like terms collected, zero is the empty list. */
+export type ScalarSum = readonly ScalarTerm[];
+
+/** One slot of a tensor as typed: an index name (`a`, `\mu`) and its height. */
+export interface IndexSlot {
+  readonly name: string;
+  readonly up: boolean;
+}
+
+/** Tensor heads that a Lagrangian may use, with their numbers of slots in docs/notation.md. */
+export type TensorHead = 'R' | 'T' | 'A' | 'epsilon' | 'eta' | 'delta';
+
+export interface TensorFactor {
+  readonly head: TensorHead;
+  readonly slots: readonly IndexSlot[];
+}
+
+/** One monomial of the Lagrangian: every index occurs exactly twice, once up and once down. */
+export interface LagrangianTerm {
+  readonly scalar: ScalarTerm;
+  readonly factors: readonly TensorFactor[];
+}
+
+/** What a symbol stands for: declared constant, declared scale, or the energy density of a vacuum fluid. */
+export type SymbolRole = 'constant' | 'scale' | 'vacuum';
+
+export interface TheorySymbol {
+  readonly name: string;
+  readonly role: SymbolRole;
+  /** Mass dimension in units c = ħ = 1: 0 for a dimensionless constant, 1 for a mass, 4 for an energy density. */
+  readonly dimension: number;
+  /** LaTeX of the user (`symbols:`) or derived from the name. */
+  readonly latex: string;
+}
+
+/** A fluid that enters the reduced Lagrangian as −(volume) ρ. w = p/ρ. */
+export interface MatterComponent {
+  readonly kind: 'dust' | 'radiation' | 'vacuum' | 'fluid';
+  /** `dust`, `radiation`, the fluid's own name, or the vacuum's symbol. */
+  readonly name: string;
+  /** Symbol of its density in every output: `rho_<name>`, or the vacuum's symbol itself. */
+  readonly density: string;
+  readonly w: Rational;
+}
+
+/** left = right, as typed in `impose` or `--set`, before it is solved. */
+export interface Relation {
+  readonly left: ScalarSum;
+  readonly right: ScalarSum;
+  /** The name when the left side is one symbol alone with coefficient 1. */
+  readonly subject: string | undefined;
+  /** The relation as the user typed it, white space folded. */
+  readonly text: string;
+  /** For diagnostics: where it was typed. */
+  readonly origin: Origin;
+}
+
+/** A place in a text the user wrote; offsets count UTF-16 units from its start. */
+export interface Origin {
+  readonly file: string;
+  readonly source: string;
+  readonly start: number;
+  readonly end: number;
+}
+
+export interface Theory {
+  readonly name: string;
+  /** Lower case, words joined by hyphens, safe as a file name: `harbour-light`. */
+  readonly slug: string;
+  readonly signature: '-+++' | '+---';
+  /** In order of declaration: constants, then scales, then vacuum symbols that were not declared. */
+  readonly symbols: readonly TheorySymbol[];
+  readonly lagrangian: readonly LagrangianTerm[];
+  /** In order: those of the file, then those of --set. */
+  readonly relations: readonly Relation[];
+  readonly matter: readonly MatterComponent[];
+  /** Name of a file in rules/geometry, without its ending. */
+  readonly geometry: string;
+  readonly warnings: readonly Diagnostic[];
+}
