@@ -1,0 +1,384 @@
+/**
+ * Sparse Laurent polynomials with exact rational coefficients: integer numerators over one common denominator.
+ * Invariant (`isCanonical`): monomials strictly descending, no zero coefficient, numerators and denominator without a
+ * common factor, numerators in doubles exactly when all of them are safe integers, radicals only to the powers 0 and 1.
+ */
+import { gcd, type Rational, rational } from './rational.js';
+import {
+  ExponentLimitError,
+  exponentAt,
+  MAX_EXPONENT,
+  positionOf,
+  type Ring,
+  unpackMonomial,
+  weightOf,
+  wordOf,
+} from './ring.js';
+import { compareKeys, TermTable } from './terms.js';
+
+/** Numerators: doubles while all are safe integers, BigInts beyond. */
+export type Numerators = Float64Array | readonly bigint[];
+
+export interface Poly {
+  readonly ring: Ring;
+  /** Number of terms. */
+  readonly size: number;
+  /** Packed monomials, `ring.words` doubles each, descending. */
+  readonly keys: Float64Array;
+  readonly numerators: Numerators;
+  /** Positive common denominator. */
+  readonly denominator: bigint;
+  /** No exponent exceeds this in absolute value (an upper bound, not always the least). */
+  readonly reach: number;
+}
+
+const SAFE = Number.MAX_SAFE_INTEGER;
+const BIG_SAFE = BigInt(SAFE);
+
+const isBig = (n: Numerators): n is readonly bigint[] => !(n instanceof Float64Array);
+const toBig = (n: Numerators): readonly bigint[] => (isBig(n) ? n : Array.from(n, BigInt));
+
+/** Largest absolute numerator as a double (an upper bound to one rounding for BigInts). */
+export function height(p: Poly): number {
+  let h = 0;
+  if (isBig(p.numerators)) return Number.POSITIVE_INFINITY;
+  for (const c of p.numerators) if (c > h || -c > h) h = Math.abs(c);
+  return h;
+}
+
+function build(ring: Ring, keys: Float64Array, numerators: Numerators, denominator: bigint, reach: number): Poly {
+  return { ring, size: numerators.length, keys, numerators, denominator, reach };
+}
+
+/** Cancels common factors and chooses the representation of numerators. Monomials must be canonical already. */
+export function normalise(
+  ring: Ring,
+  keys: Float64Array,
+  numerators: Numerators,
+  denominator: bigint,
+  reach: number,
+): Poly {
+  let n = numerators;
+  let d = denominator;
+  if (n.length === 0) return build(ring, keys, new Float64Array(0), 1n, 0);
+  if (d !== 1n) {
+    let g = d;
+    for (let i = 0; i < n.length && g !== 1n; i++) g = gcd(g, BigInt(n[i]!));
+    if (g !== 1n) {
+      n = isBig(n) ? n.map((c) => c / g) : divideSafe(n, g);
+      d /= g;
+    }
+  }
+  if (isBig(n) && n.every((c) => c <= BIG_SAFE && c >= -BIG_SAFE)) n = Float64Array.from(n, Number);
+  return build(ring, keys, n, d, reach);
+}
+
+function divideSafe(n: Float64Array, g: bigint): Float64Array {
+  const divisor = Number(g);
+  return n.map((c) => c / divisor);
+}
+
+/** The polynomial that a filled table holds, over a denominator. */
+export function fromTable(ring: Ring, table: TermTable, denominator: bigint, reach: number): Poly {
+  const { keys, coefficients } = table.sorted();
+  const p = normalise(ring, keys, coefficients, denominator, reach);
+  return ring.radicals.length > 0 ? reduceRadicals(p) : p;
+}
+
+export const zero = (ring: Ring): Poly => build(ring, new Float64Array(0), new Float64Array(0), 1n, 0);
+
+/** A constant polynomial. */
+export function constant(ring: Ring, value: Rational | number): Poly {
+  const r = typeof value === 'number' ? rational(value) : value;
+  if (r.num === 0n) return zero(ring);
+  return normalise(ring, new Float64Array(ring.words), [r.num], r.den, 0);
+}
+
+/**
+ * One generator to an integer power.
+ * @throws Error for an unknown name; ExponentLimitError beyond ±511.
+ */
+export function generator(ring: Ring, name: string, exponent = 1): Poly {
+  return monomial(ring, rational(1), [[name, exponent]]);
+}
+
+/** coefficient · Π name^exponent. @throws as `generator`. */
+export function monomial(
+  ring: Ring,
+  coefficient: Rational,
+  powers: Iterable<readonly [name: string, exponent: number]>,
+): Poly {
+  if (coefficient.num === 0n) return zero(ring);
+  const keys = new Float64Array(ring.words);
+  let reach = 0;
+  for (const [name, exponent] of powers) {
+    const g = positionOf(ring, name);
+    const total = exponentAt(keys, 0, g) + exponent;
+    if (Math.abs(total) > MAX_EXPONENT) throw new ExponentLimitError();
+    keys[wordOf(g)]! += exponent * weightOf(g);
+    reach = Math.max(reach, Math.abs(total), Math.abs(exponent));
+  }
+  const p = normalise(ring, keys, [coefficient.num], coefficient.den, reach);
+  return ring.radicals.length > 0 ? reduceRadicals(p) : p;
+}
+
+export const isZero = (p: Poly): boolean => p.size === 0;
+
+function sameRing(a: Poly, b: Poly): void {
+  if (a.ring !== b.ring) throw new Error('polynomials of different rings');
+}
+
+function scaled(p: Poly, factor: bigint): Numerators {
+  if (factor === 1n) return p.numerators;
+  if (!isBig(p.numerators) && height(p) * Math.abs(Number(factor)) <= SAFE) {
+    const f = Number(factor);
+    return p.numerators.map((c) => c * f);
+  }
+  return toBig(p.numerators).map((c) => c * factor);
+}
+
+/** a + sign·b by merging two sorted lists. */
+function merge(a: Poly, b: Poly, sign: 1 | -1): Poly {
+  sameRing(a, b);
+  if (b.size === 0) return a;
+  if (a.size === 0) return sign === 1 ? b : negate(b);
+  const words = a.ring.words;
+  const shared = a.denominator === b.denominator ? 1n : gcd(a.denominator, b.denominator);
+  const denominator =
+    shared === 1n && a.denominator === b.denominator ? a.denominator : (a.denominator / shared) * b.denominator;
+  let na = scaled(a, denominator / a.denominator);
+  let nb = scaled(b, (denominator / b.denominator) * BigInt(sign));
+  const keys = new Float64Array((a.size + b.size) * words);
+  const left = new Int32Array(a.size + b.size);
+  const right = new Int32Array(a.size + b.size);
+  let n = 0;
+  let i = 0;
+  let j = 0;
+  while (i < a.size || j < b.size) {
+    const c = i >= a.size ? -1 : j >= b.size ? 1 : compareKeys(a.keys, i * words, b.keys, j * words, words);
+    const source = c >= 0 ? a.keys : b.keys;
+    const base = (c >= 0 ? i : j) * words;
+    for (let w = 0; w < words; w++) keys[n * words + w] = source[base + w]!;
+    left[n] = c >= 0 ? i++ : -1;
+    right[n] = c <= 0 ? j++ : -1;
+    n++;
+  }
+  if (!isBig(na) && !isBig(nb)) {
+    const sums = new Float64Array(n);
+    let safe = true;
+    for (let t = 0; t < n; t++) {
+      const s = (left[t]! >= 0 ? na[left[t]!]! : 0) + (right[t]! >= 0 ? nb[right[t]!]! : 0);
+      sums[t] = s;
+      // A sum of two safe integers that rounds to a safe integer was exact.
+      if (s > SAFE || s < -SAFE) safe = false;
+    }
+    if (safe) return compress(a, keys, sums, n, denominator, Math.max(a.reach, b.reach));
+  }
+  na = toBig(na);
+  nb = toBig(nb);
+  const sums: bigint[] = [];
+  for (let t = 0; t < n; t++) sums.push((left[t]! >= 0 ? na[left[t]!]! : 0n) + (right[t]! >= 0 ? nb[right[t]!]! : 0n));
+  return compress(a, keys, sums, n, denominator, Math.max(a.reach, b.reach));
+}
+
+function compress(of: Poly, keys: Float64Array, sums: Numerators, n: number, denominator: bigint, reach: number): Poly {
+  const words = of.ring.words;
+  let m = 0;
+  const kept = isBig(sums) ? ([] as bigint[]) : new Float64Array(n);
+  for (let t = 0; t < n; t++) {
+    const s = sums[t]!;
+    if (s === 0 || s === 0n) continue;
+    if (m !== t) keys.copyWithin(m * words, t * words, (t + 1) * words);
+    (kept as (number | bigint)[])[m++] = s;
+  }
+  const numerators = kept instanceof Float64Array ? kept.slice(0, m) : kept;
+  return normalise(of.ring, keys.slice(0, m * words), numerators, denominator, reach);
+}
+
+export const add = (a: Poly, b: Poly): Poly => merge(a, b, 1);
+export const subtract = (a: Poly, b: Poly): Poly => merge(a, b, -1);
+
+export function negate(p: Poly): Poly {
+  const n = p.numerators;
+  return build(p.ring, p.keys, isBig(n) ? n.map((c) => -c) : n.map((c) => -c), p.denominator, p.reach);
+}
+
+/** factor · p for a rational factor. */
+export function scale(p: Poly, factor: Rational | number): Poly {
+  const f = typeof factor === 'number' ? rational(factor) : factor;
+  if (f.num === 0n) return zero(p.ring);
+  if (f.den === 1n && f.num === 1n) return p;
+  return normalise(p.ring, p.keys, scaled(p, f.num), p.denominator * f.den, p.reach);
+}
+
+/** Least bound on the absolute exponents. */
+function exactReach(p: Poly): number {
+  let r = 0;
+  for (let i = 0; i < p.size; i++)
+    for (const e of unpackMonomial(p.ring, p.keys, i * p.ring.words)) r = Math.max(r, Math.abs(e));
+  return r;
+}
+
+/** Bound on the exponents of a product. @throws ExponentLimitError beyond ±511. */
+function productReach(a: Poly, b: Poly): number {
+  if (a.reach + b.reach <= MAX_EXPONENT) return a.reach + b.reach;
+  const reach = exactReach(a) + exactReach(b);
+  if (reach > MAX_EXPONENT) throw new ExponentLimitError();
+  return reach;
+}
+
+/** a · b. @throws ExponentLimitError beyond ±511. */
+export function multiply(a: Poly, b: Poly): Poly {
+  sameRing(a, b);
+  if (a.size === 0 || b.size === 0) return zero(a.ring);
+  if (a.size < b.size) return multiply(b, a);
+  const { ring } = a;
+  const { words } = ring;
+  const reach = productReach(a, b);
+  const denominator = a.denominator * b.denominator;
+  const big = !(height(a) * height(b) * b.size <= SAFE);
+  if (b.size === 1) {
+    const keys = new Float64Array(a.keys.length);
+    for (let i = 0, t = 0; i < a.size; i++) for (let w = 0; w < words; w++, t++) keys[t] = a.keys[t]! + b.keys[w]!;
+    const numerators = scaled(a, BigInt(b.numerators[0]!));
+    const p = normalise(ring, keys, numerators, denominator, reach);
+    return ring.radicals.length > 0 ? reduceRadicals(p) : p;
+  }
+  const table = new TermTable(words, Math.min(a.size * b.size, 4 * (a.size + b.size)), big);
+  const { key } = table;
+  const ka = a.keys;
+  const kb = b.keys;
+  if (!big) {
+    const na = a.numerators as Float64Array;
+    const nb = b.numerators as Float64Array;
+    for (let j = 0; j < b.size; j++)
+      for (let i = 0; i < a.size; i++) {
+        for (let w = 0; w < words; w++) key[w] = ka[i * words + w]! + kb[j * words + w]!;
+        const s = table.slot();
+        table.numbers[s]! += na[i]! * nb[j]!;
+      }
+  } else {
+    const na = toBig(a.numerators);
+    const nb = toBig(b.numerators);
+    const bigs = table.bigs!;
+    for (let j = 0; j < b.size; j++)
+      for (let i = 0; i < a.size; i++) {
+        for (let w = 0; w < words; w++) key[w] = ka[i * words + w]! + kb[j * words + w]!;
+        const s = table.slot();
+        bigs[s]! += na[i]! * nb[j]!;
+      }
+  }
+  return fromTable(ring, table, denominator, reach);
+}
+
+/**
+ * p^n for an integer n; negative only for a single term.
+ * @throws RangeError for a negative power of zero or of a sum; ExponentLimitError beyond ±511.
+ */
+export function power(p: Poly, n: number): Poly {
+  if (n < 0) {
+    if (p.size !== 1) throw new RangeError(p.size === 0 ? 'division by zero' : 'a sum has no inverse in this ring');
+    return power(invertMonomial(p), -n);
+  }
+  let result = constant(p.ring, 1);
+  for (let i = 0; i < n; i++) result = multiply(result, p);
+  return result;
+}
+
+function invertMonomial(p: Poly): Poly {
+  const num = BigInt(p.numerators[0]!);
+  const sign = num < 0n ? -1n : 1n;
+  const inverse = normalise(
+    p.ring,
+    p.keys.map((w) => -w),
+    [p.denominator * sign],
+    num * sign,
+    p.reach,
+  );
+  return p.ring.radicals.length > 0 ? reduceRadicals(inverse) : inverse;
+}
+
+/** Sum of many polynomials; cheaper than repeated `add` when there are many short ones. */
+export function sum(ring: Ring, terms: readonly Poly[]): Poly {
+  if (terms.length === 0) return zero(ring);
+  if (terms.length === 1) return terms[0]!;
+  const half = terms.length >> 1;
+  return add(sum(ring, terms.slice(0, half)), sum(ring, terms.slice(half)));
+}
+
+export const product = (ring: Ring, factors: readonly Poly[]): Poly =>
+  factors.reduce((p, f) => multiply(p, f), constant(ring, 1));
+
+/** Structural equality, which canonical form makes equality of values. */
+export function equals(a: Poly, b: Poly): boolean {
+  sameRing(a, b);
+  if (a.size !== b.size || a.denominator !== b.denominator) return false;
+  for (let i = 0; i < a.size; i++) if (a.numerators[i] !== b.numerators[i]) return false;
+  return a.keys.every((w, i) => w === b.keys[i]);
+}
+
+/** Replaces s² by its value for every radical s. */
+function reduceRadicals(p: Poly): Poly {
+  const { ring } = p;
+  const needs = (i: number, r: number): boolean => {
+    const e = exponentAt(p.keys, i * ring.words, r);
+    return e !== 0 && e !== 1;
+  };
+  let any = false;
+  for (let i = 0; i < p.size && !any; i++) any = ring.radicals.some(([r]) => needs(i, r));
+  if (!any) return p;
+  const table = new TermTable(ring.words, p.size, true);
+  let reach = p.reach;
+  const numerators = toBig(p.numerators);
+  for (let i = 0; i < p.size; i++) {
+    table.key.set(p.keys.subarray(i * ring.words, (i + 1) * ring.words));
+    for (const [r, square] of ring.radicals) {
+      const halves = Math.floor(exponentAt(table.key, 0, r) / 2);
+      const total = exponentAt(table.key, 0, square) + halves;
+      if (Math.abs(total) > MAX_EXPONENT) throw new ExponentLimitError();
+      reach = Math.max(reach, Math.abs(total));
+      table.key[wordOf(r)]! -= 2 * halves * weightOf(r);
+      table.key[wordOf(square)]! += halves * weightOf(square);
+    }
+    table.bigs![table.slot()]! += numerators[i]!;
+  }
+  const { keys, coefficients } = table.sorted();
+  return normalise(ring, keys, coefficients, p.denominator, reach);
+}
+
+/** One term, unpacked: its rational coefficient and the non-zero exponents by generator position. */
+export interface Term {
+  readonly coefficient: Rational;
+  readonly exponents: readonly (readonly [generator: number, exponent: number])[];
+}
+
+/** The terms in canonical order. */
+export function termsOf(p: Poly): Term[] {
+  const out: Term[] = [];
+  for (let i = 0; i < p.size; i++) {
+    const exponents: [number, number][] = [];
+    unpackMonomial(p.ring, p.keys, i * p.ring.words).forEach((e, g) => {
+      if (e !== 0) exponents.push([g, e]);
+    });
+    out.push({ coefficient: rational(BigInt(p.numerators[i]!), p.denominator), exponents });
+  }
+  return out;
+}
+
+/** Whether the value obeys the invariant stated at the top of this module. */
+export function isCanonical(p: Poly): boolean {
+  const { ring, keys, numerators, denominator } = p;
+  const { words } = ring;
+  if (keys.length !== p.size * words || numerators.length !== p.size || denominator < 1n) return false;
+  let g = denominator;
+  for (let i = 0; i < p.size; i++) {
+    const c = BigInt(numerators[i]!);
+    if (c === 0n) return false;
+    g = gcd(g, c);
+    if (i > 0 && compareKeys(keys, (i - 1) * words, keys, i * words, words) <= 0) return false;
+    if (ring.radicals.some(([r]) => ![0, 1].includes(exponentAt(keys, i * words, r)))) return false;
+    if (unpackMonomial(ring, keys, i * words).some((e) => Math.abs(e) > p.reach)) return false;
+  }
+  const allSafe = toBig(numerators).every((c) => c <= BIG_SAFE && c >= -BIG_SAFE);
+  return g === 1n && isBig(numerators) !== allSafe && (p.size > 0 || denominator === 1n);
+}
