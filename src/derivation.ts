@@ -1,0 +1,103 @@
+/**
+ * Everything that a derivation finds, as one frozen value: what the emitters read. Polynomials live in `ring` unless said
+ * otherwise; expressions keep the lapse N and are exact.
+ */
+import type { Fraction } from './algebra/fraction.js';
+import type { Poly } from './algebra/poly.js';
+import type { Ring } from './algebra/ring.js';
+import type { Geometry } from './geometry/geometry.js';
+import type { LagrangianTerm, TensorFactor, Theory } from './notation/theory.js';
+
+/** A statement that was tested exactly during the derivation. A check that fails stops the derivation with an error. */
+export interface Check {
+  readonly name: string;
+  readonly holds: boolean;
+  /** What was compared, for the report. */
+  readonly detail: string;
+}
+
+/** Value of one product of tensors on the geometry. */
+export interface InvariantValue {
+  readonly factors: readonly TensorFactor[];
+  /** In `geometry.tensors.ring`, the ring of component symbols. */
+  readonly value: Poly;
+}
+
+/** What `impose` and `--set` came to. */
+export interface ImposedRelations {
+  /** Symbol → its value in the remaining symbols, in order of elimination. */
+  readonly eliminated: ReadonlyMap<string, Poly>;
+  /** Relations that could not be solved: polynomial = 0, never used for rewriting. */
+  readonly conditions: readonly { readonly text: string; readonly value: Poly }[];
+}
+
+/** Fluids as they enter: density symbol, equation of state, and whether the symbol is a function of time. */
+export interface FluidValue {
+  readonly name: string;
+  readonly density: string;
+  /** ρ in the ring, for instance rho_dust/a^3. */
+  readonly rho: Poly;
+  /** p = wρ in the ring. */
+  readonly pressure: Poly;
+  /** Whether `density` is ρ itself rather than its value at a = 1. */
+  readonly isSource: boolean;
+}
+
+/** 3M²(H² + k/a²) = ρ + rho_T and −M²(2Ḣ + 3H² + k/a²) = p + p_T on the equations of the lapse and of the scale factor. */
+export interface FriedmannForm {
+  readonly rhoT: Poly;
+  readonly pT: Poly;
+  /** p_T/rho_T; undefined when rho_T vanishes identically. */
+  readonly wT: Fraction | undefined;
+}
+
+/** √−g [G4 R + Σ K_AB X^AB + J·∂ − V] on the metric geometry; X^AB = −½ ∂A·∂B once per unordered pair. Lapse 1. */
+export interface BiScalarForm {
+  readonly form: 'bi-scalar';
+  readonly validFor: 'every k' | 'k = 0';
+  readonly g4: Poly;
+  /** Keys `phi,phi`, `phi,psi`, `psi,psi` for scalars [phi, psi]; every unordered pair is present. */
+  readonly kinetic: ReadonlyMap<string, Poly>;
+  /** J_A by scalar: +J_A Ȧ in the reduced Lagrangian; covariantly √|J_μ J^μ| with J_μ = Σ J_A ∂_μ A. */
+  readonly current: ReadonlyMap<string, Poly>;
+  readonly potential: Poly;
+  /** Torsion theory minus this form per a³N at k ≠ 0, up to total derivatives; D(q,1) stands for D(q,1)/N. */
+  readonly obstruction: Poly;
+}
+
+export interface NoScalarTensorForm {
+  readonly form: 'none';
+  readonly reason: string;
+  /** Terms of the reduced Lagrangian (lapse 1, per a³) that no bi-scalar form produces; empty when the reason is another. */
+  readonly offending: Poly | undefined;
+}
+
+export type ScalarTensorForm = BiScalarForm | NoScalarTensorForm;
+
+export interface Derivation {
+  readonly theory: Theory;
+  readonly geometry: Geometry;
+  /** Jets of the geometry's fields (orders 0 to 3), its parameters, all symbols of the theory, M, densities. */
+  readonly ring: Ring;
+  readonly relations: ImposedRelations;
+  /** The Lagrangian after the relations were applied; like terms collected. */
+  readonly terms: readonly { readonly coefficient: Poly; readonly factors: LagrangianTerm['factors'] }[];
+  readonly invariants: readonly InvariantValue[];
+  /** Exact a³N·L of the torsion theory, without matter. */
+  readonly gravity: Poly;
+  readonly fluids: readonly FluidValue[];
+  /** gravity − Σ (volume) ρ: what the equations are derived from. */
+  readonly lagrangian: Poly;
+  /** gravity = reducedGravity + d/dt dropped. */
+  readonly reducedGravity: Poly;
+  readonly dropped: Poly;
+  /** Field → ∂L/∂q − d/dt ∂L/∂q̇ of `lagrangian`, in the order of the geometry's fields. */
+  readonly equations: ReadonlyMap<string, Poly>;
+  /** Linearly independent combinations of couplings on which the background depends. */
+  readonly combinations: readonly Poly[];
+  /** Polynomials in the couplings that must all vanish for k to drop out; undefined when the geometry has no k. */
+  readonly screening: readonly Poly[] | undefined;
+  readonly friedmann: FriedmannForm | undefined;
+  readonly scalarTensor: ScalarTensorForm;
+  readonly checks: readonly Check[];
+}

@@ -1,0 +1,127 @@
+/**
+ * Contracts products of tensors on given components, as a database joins tables: two factors at a time, only over
+ * components that are not zero. The order of the joins keeps intermediate ranks small.
+ * May not import geometry: it is told the components and the signs of the frame metric.
+ */
+import { remember } from '../algebra/memo.js';
+import { constant, multiply, negate, type Poly } from '../algebra/poly.js';
+import type { Ring } from '../algebra/ring.js';
+import type { IndexSlot } from '../notation/theory.js';
+import { DIMENSION, type SparseTensor, TensorBuilder, unpackIndices } from './components.js';
+
+/** A tensor whose slots carry index names; a name that occurs twice in a product is summed over. */
+export interface Placed {
+  readonly tensor: SparseTensor;
+  readonly names: readonly string[];
+}
+
+/** Diagonal of the frame metric: its signs raise indices. */
+export type FrameMetric = readonly [number, number, number, number];
+
+/** More components than this in an intermediate product are refused rather than waited for. */
+export const MAX_COMPONENTS = 400_000;
+
+/** Thrown when a product would need more intermediate components than the stated limit. */
+export class ContractionLimitError extends RangeError {
+  constructor() {
+    super(`a product of tensors needs more than ${MAX_COMPONENTS} intermediate components`);
+  }
+}
+
+/** Sums over pairs of equal names within one tensor. Each pair is one index up and one down. */
+export function trace(placed: Placed, metric: FrameMetric): Placed {
+  const { tensor, names } = placed;
+  const partner = names.map((n, s) => names.findIndex((m, t) => m === n && t !== s));
+  if (partner.every((t) => t < 0)) return placed;
+  const free = names.flatMap((_, s) => (partner[s]! < 0 ? [s] : []));
+  const builder = new TensorBuilder(free.length);
+  for (const [packed, value] of tensor.entries) {
+    const indices = unpackIndices(packed, tensor.rank);
+    if (partner.some((t, s) => t >= 0 && indices[t] !== indices[s])) continue;
+    let sign = 1;
+    partner.forEach((t, s) => {
+      if (t > s) sign *= metric[indices[s]!]!;
+    });
+    builder.put(
+      free.reduce((n, s) => n * DIMENSION + indices[s]!, 0),
+      sign < 0 ? negate(value) : value,
+    );
+  }
+  return { tensor: builder.build(), names: free.map((s) => names[s]!) };
+}
+
+/** Product of two traced tensors, summed over the names they share. */
+function join(a: Placed, b: Placed, metric: FrameMetric, multiplyOnce: (x: Poly, y: Poly) => Poly): Placed {
+  const shared = a.names.flatMap((n, s) => (b.names.includes(n) ? [[s, b.names.indexOf(n)] as const] : []));
+  const freeA = a.names.flatMap((_, s) => (shared.some(([x]) => x === s) ? [] : [s]));
+  const freeB = b.names.flatMap((_, s) => (shared.some(([, y]) => y === s) ? [] : [s]));
+  const buckets = new Map<number, { free: number; value: Poly }[]>();
+  for (const [packed, value] of b.tensor.entries) {
+    const indices = unpackIndices(packed, b.tensor.rank);
+    const key = shared.reduce((n, [, y]) => n * DIMENSION + indices[y]!, 0);
+    const free = freeB.reduce((n, s) => n * DIMENSION + indices[s]!, 0);
+    const bucket = buckets.get(key);
+    if (bucket) bucket.push({ free, value });
+    else buckets.set(key, [{ free, value }]);
+  }
+  const builder = new TensorBuilder(freeA.length + freeB.length);
+  const shift = DIMENSION ** freeB.length;
+  for (const [packed, value] of a.tensor.entries) {
+    const indices = unpackIndices(packed, a.tensor.rank);
+    const matches = buckets.get(shared.reduce((n, [x]) => n * DIMENSION + indices[x]!, 0));
+    if (!matches) continue;
+    const sign = shared.reduce((s, [x]) => s * metric[indices[x]!]!, 1);
+    const left = freeA.reduce((n, s) => n * DIMENSION + indices[s]!, 0) * shift;
+    const signed = sign < 0 ? negate(value) : value;
+    for (const { free, value: right } of matches) builder.put(left + free, multiplyOnce(signed, right));
+    if (builder.size > MAX_COMPONENTS) throw new ContractionLimitError();
+  }
+  return {
+    tensor: builder.build(),
+    names: [...freeA.map((s) => a.names[s]!), ...freeB.map((s) => b.names[s]!)],
+  };
+}
+
+/** Expected number of components of a join, if those of each factor were spread evenly. */
+function joinCost(a: Placed, b: Placed): number {
+  const shared = a.names.filter((n) => b.names.includes(n)).length;
+  return (a.tensor.entries.size * b.tensor.entries.size) / DIMENSION ** shared;
+}
+
+/**
+ * Full contraction of a product in which every name occurs exactly twice.
+ * @returns a polynomial in the ring of the components.
+ * @throws ContractionLimitError beyond the stated number of intermediate components.
+ */
+export function contract(ring: Ring, factors: readonly Placed[], metric: FrameMetric): Poly {
+  const memo = new Map<Poly, Map<Poly, Poly>>();
+  const multiplyOnce = (x: Poly, y: Poly): Poly => {
+    const row = remember(memo, x, () => new Map<Poly, Poly>());
+    return remember(row, y, () => multiply(x, y));
+  };
+  let rest = factors.map((f) => trace(f, metric));
+  while (rest.length > 1) {
+    let best: [number, number] = [0, 1];
+    let least = Number.POSITIVE_INFINITY;
+    for (let i = 0; i < rest.length; i++)
+      for (let j = i + 1; j < rest.length; j++) {
+        const linked = rest[i]!.names.some((n) => rest[j]!.names.includes(n));
+        const cost =
+          linked || rest.every((f) => f.names.length === 0) ? joinCost(rest[i]!, rest[j]!) : Number.MAX_VALUE;
+        if (cost < least) {
+          least = cost;
+          best = [i, j];
+        }
+      }
+    const [i, j] = best;
+    const joined = trace(join(rest[i]!, rest[j]!, metric, multiplyOnce), metric);
+    rest = [...rest.filter((_, s) => s !== i && s !== j), joined];
+    if (joined.tensor.entries.size === 0) return constant(ring, 0);
+  }
+  const last = rest[0];
+  if (!last) return constant(ring, 1);
+  return last.tensor.entries.get(0) ?? constant(ring, 0);
+}
+
+/** Index names of typed slots; heights are implied, since a pair is one up and one down and components are lowered. */
+export const namesOf = (slots: readonly IndexSlot[]): string[] => slots.map((s) => s.name);
