@@ -1,0 +1,195 @@
+/**
+ * A tensor with its indices, slots in the order typed. Indices are single Latin letters or Greek macros; a wrong number of
+ * them is reported and parsing goes on, everything else stops it.
+ */
+import type { Cursor } from './cursor.js';
+import type { Expression, SlotNode, Span } from './syntax.js';
+import type { TensorHead } from './theory.js';
+import { isGreek, type Token } from './tokens.js';
+import { isPowerAt } from './vocabulary.js';
+
+/** How many indices each head may carry. */
+export const SLOT_COUNTS: Readonly<Record<TensorHead, readonly number[]>> = {
+  R: [0, 2, 4],
+  T: [1, 3],
+  A: [1],
+  epsilon: [4],
+  eta: [2],
+  delta: [2],
+};
+
+const shownHead = (head: TensorHead): string => (head.length === 1 ? head : `\\${head}`);
+
+interface Begun extends Span {
+  readonly slots: readonly SlotNode[];
+}
+
+/** Reads the indices behind a head; the cursor stands behind the head, or behind what `begun` has of the tensor. */
+export function parseTensor(cursor: Cursor, head: TensorHead, begun: Begun): Expression {
+  const slots: SlotNode[] = [...begun.slots];
+  for (;;) {
+    if (cursor.isMark('^') || cursor.isMark('_')) {
+      if (cursor.isMark('^') && isPowerAt(cursor, 0)) {
+        if (!SLOT_COUNTS[head].includes(0) || slots.length > 0) refusePower(cursor, head, begun);
+        if (powerThenIndices(cursor)) refuseIndicesAfterPower(cursor, begun);
+        break;
+      }
+      parseGroup(cursor, slots);
+    } else if (cursor.isMark('{') && cursor.isMark('}', 1)) {
+      cursor.skip(2);
+    } else if (cursor.isMark('{') && (cursor.isMark('^', 1) || cursor.isMark('_', 1))) {
+      // T{^a}{_{bc}}: braces around each group of indices, as some styles write it.
+      const opening = cursor.next();
+      while (cursor.isMark('^') || cursor.isMark('_')) parseGroup(cursor, slots);
+      if (!cursor.accept('}')) cursor.fail('unbalanced-bracket', opening, '{ is never closed', 'add the closing }');
+    } else break;
+  }
+  const span = { start: begun.start, end: Math.max(begun.end, cursor.lastEnd) };
+  // In `{R^a}_{bcd}` the rest of the indices stands behind the brace.
+  const goesOn = cursor.isMark('}') && (cursor.isMark('^', 1) || cursor.isMark('_', 1) || cursor.isMark('{', 1));
+  if (!goesOn || begun.slots.length > 0) checkCount(cursor, head, slots, span);
+  return { kind: 'tensor', head, slots, ...span };
+}
+
+function checkCount(cursor: Cursor, head: TensorHead, slots: readonly SlotNode[], span: Span): void {
+  const allowed = SLOT_COUNTS[head];
+  const count = slots.length;
+  const name = shownHead(head);
+  if (!allowed.includes(count)) {
+    const has = count === 0 ? 'no indices here' : count === 1 ? '1 index' : `${count} indices`;
+    const list = allowed.length === 3 ? '0, 2 or 4' : allowed.join(' or ');
+    const hint =
+      head === 'T' && count === 0
+        ? 'the torsion scalar is not a symbol; write T_a T^a, T_{abc} T^{abc} or T_{abc} T^{bac}'
+        : undefined;
+    const message = `${cursor.typed(span)} has ${has}, ${name} has ${list}`;
+    cursor.report('index-count', span, message, hint ?? `mend the indices of ${name}`);
+  } else if (head === 'delta' && slots[0]!.up === slots[1]!.up) {
+    cursor.report(
+      'delta-heights',
+      span,
+      '\\delta has one index up and one down',
+      'write \\eta for two indices at one height',
+    );
+  }
+}
+
+/** R^{2}_{ab}: the cursor stands at ^. */
+function powerThenIndices(cursor: Cursor): boolean {
+  let n = 1;
+  while (cursor.peek(n).kind !== 'integer') n++;
+  n++;
+  if (cursor.isMark('}', n) || cursor.isMark(')', n)) n++;
+  return cursor.isMark('_', n) || (cursor.isMark('^', n) && !isPowerAt(cursor, n));
+}
+
+function refuseIndicesAfterPower(cursor: Cursor, begun: Begun): never {
+  const span = { start: begun.start, end: cursor.peek(3).end };
+  return cursor.fail(
+    'power-of-tensor',
+    span,
+    'a power cannot stand between a tensor and its indices',
+    'write the product out, as in R_{ab} R^{ab}',
+  );
+}
+
+function refusePower(cursor: Cursor, head: TensorHead, begun: Begun): never {
+  const typed = cursor.typed({ start: begun.start, end: cursor.lastEnd });
+  const number = cursor.peek(1).kind === 'integer' ? cursor.peek(1) : cursor.peek(2);
+  const span = { start: begun.start, end: number.end };
+  if (cursor.lastEnd === begun.end && begun.slots.length === 0) {
+    const message = `an index of ${shownHead(head)} is a number`;
+    return cursor.fail(
+      'index-digit',
+      { start: number.start, end: number.end },
+      message,
+      'components are not allowed; use letters',
+    );
+  }
+  return cursor.fail(
+    'power-of-tensor',
+    span,
+    `${typed} has free indices, so its power has no meaning`,
+    'powers stand on scalars: R^2, (T_a T^a)^2; a square is written out, R_{ab} R^{ab}',
+  );
+}
+
+/** One `^…` or `_…`. */
+function parseGroup(cursor: Cursor, slots: SlotNode[]): void {
+  const sign = cursor.next();
+  const up = sign.text === '^';
+  const { token } = cursor;
+  if (token.kind === 'word') {
+    if (token.text.length > 1) {
+      const digits = /[0-9]/.test(token.text);
+      cursor.fail(
+        'index-braces',
+        token,
+        digits ? `${token.text} is not an index` : 'several indices need braces',
+        digits
+          ? 'an index is one letter; leave a space behind it'
+          : `write ${sign.text}{${token.text}}, or leave a space: ${sign.text}${token.text[0]} ${token.text.slice(1)}`,
+      );
+    }
+    cursor.next();
+    slots.push({ name: token.text, up, start: token.start, end: token.end });
+    return;
+  }
+  if (token.kind === 'macro' && isGreek(token.text)) {
+    cursor.next();
+    slots.push({ name: `\\${token.text}`, up, start: token.start, end: token.end });
+    return;
+  }
+  if (!cursor.isMark('{')) {
+    if (token.kind === 'integer') refuseDigit(cursor, token);
+    const at = token.kind === 'end' ? sign : token;
+    cursor.fail('missing-index', at, `${sign.text} lacks its index`, 'an index is a Latin letter or a Greek macro');
+  }
+  const opening = cursor.next();
+  while (!cursor.isMark('}')) pushIndices(cursor, opening, up, slots);
+  cursor.next();
+}
+
+function pushIndices(cursor: Cursor, opening: Token, up: boolean, slots: SlotNode[]): void {
+  const token = cursor.next();
+  if (token.kind === 'word') {
+    const digit = token.text.search(/[0-9]/);
+    if (digit !== -1) refuseDigit(cursor, { ...token, start: token.start + digit, end: token.start + digit + 1 });
+    for (let i = 0; i < token.text.length; i++) {
+      slots.push({ name: token.text[i]!, up, start: token.start + i, end: token.start + i + 1 });
+    }
+    return;
+  }
+  if (token.kind === 'macro' && isGreek(token.text)) {
+    slots.push({ name: `\\${token.text}`, up, start: token.start, end: token.end });
+    return;
+  }
+  if (token.kind === 'end') cursor.fail('unbalanced-bracket', opening, '{ is never closed', 'add the closing }');
+  if (token.kind === 'integer') refuseDigit(cursor, token);
+  if ('[]()'.includes(token.text)) {
+    cursor.fail(
+      'index-brackets',
+      token,
+      'brackets around indices are not part of the notation',
+      'write the symmetrised sum out',
+    );
+  }
+  if (token.text === ',') {
+    cursor.fail(
+      'bad-index',
+      token,
+      'a comma among indices',
+      'derivatives are not part of the notation; indices need no comma',
+    );
+  }
+  cursor.fail(
+    'bad-index',
+    token,
+    `${cursor.describe(token)} is not an index`,
+    'an index is a Latin letter or a Greek macro',
+  );
+}
+
+function refuseDigit(cursor: Cursor, span: Span): never {
+  return cursor.fail('index-digit', span, 'an index is a number', 'components are not allowed; use letters');
+}
