@@ -1,0 +1,84 @@
+/**
+ * The derivation as JSON for other programs, documented in docs/formats.md. Expressions are infix texts in φ, ψ and the
+ * lapse, whatever variables the printed outputs use.
+ */
+import { symbolsOf } from '../algebra/collect.js';
+import { infix } from '../algebra/infix.js';
+import type { Poly } from '../algebra/poly.js';
+import { printRational } from '../algebra/rational.js';
+import type { Derivation, ScalarTensorForm } from '../derivation.js';
+
+/** Version of the format; it grows when a key changes its meaning. */
+export const FORMAT_VERSION = 1;
+
+const texts = (map: ReadonlyMap<string, Poly>): Record<string, string> =>
+  Object.fromEntries([...map].map(([key, p]) => [key, infix(p)]));
+
+function scalarTensorObject(form: ScalarTensorForm): Record<string, unknown> {
+  if (form.form === 'none')
+    return { form: 'none', reason: form.reason, ...(form.offending ? { offending: infix(form.offending) } : {}) };
+  return {
+    form: form.form,
+    validFor: form.validFor,
+    G4: infix(form.g4),
+    kinetic: texts(form.kinetic),
+    current: texts(form.current),
+    potential: infix(form.potential),
+    curvatureObstruction: infix(form.obstruction),
+  };
+}
+
+/** Every polynomial that the JSON prints. */
+function expressions(d: Derivation): Poly[] {
+  const form = d.scalarTensor;
+  return [
+    d.lagrangian,
+    ...d.equations.values(),
+    d.reducedGravity,
+    d.dropped,
+    ...d.combinations,
+    ...(d.screening ?? []),
+    ...(d.friedmann ? [d.friedmann.rhoT, d.friedmann.pT] : []),
+    ...d.relations.eliminated.values(),
+    ...d.relations.conditions.map((c) => c.value),
+    ...(form.form === 'none'
+      ? form.offending
+        ? [form.offending]
+        : []
+      : [form.g4, ...form.kinetic.values(), ...form.current.values(), form.potential, form.obstruction]),
+  ];
+}
+
+/** Names of all symbols of any printed expression that are not fields, in the order of the ring. */
+export function parametersOf(d: Derivation): string[] {
+  const used = new Set(expressions(d).flatMap(symbolsOf));
+  return d.ring.generators.filter((g) => g.kind !== 'jet' && used.has(g.name)).map((g) => g.name);
+}
+
+/** Plain data, ready for JSON.stringify; key order is fixed. */
+export function derivationObject(d: Derivation): Record<string, unknown> {
+  return {
+    untwist: FORMAT_VERSION,
+    theory: d.theory.name,
+    geometry: d.geometry.id,
+    variables: d.geometry.fields.map((f) => f.name),
+    parameters: parametersOf(d),
+    sources: d.fluids.filter((f) => f.isSource).map((f) => f.density),
+    fluids: d.theory.matter.map((m) => ({ name: m.name, density: m.density, w: printRational(m.w) })),
+    eliminated: texts(d.relations.eliminated),
+    conditions: d.relations.conditions.map((c) => `${infix(c.value)} = 0`),
+    lagrangian: infix(d.lagrangian),
+    reduced: infix(d.reducedGravity),
+    dropped: infix(d.dropped),
+    equations: texts(d.equations),
+    combinations: d.combinations.map(infix),
+    ...(d.screening ? { screening: d.screening.map(infix) } : {}),
+    ...(d.friedmann ? { friedmann: { rho_T: infix(d.friedmann.rhoT), p_T: infix(d.friedmann.pT) } } : {}),
+    scalarTensor: scalarTensorObject(d.scalarTensor),
+    checks: d.checks.map(({ name, holds, detail }) => ({ name, holds, detail })),
+    warnings: d.theory.warnings.map((w) => w.message),
+  };
+}
+
+/** The JSON text, indented, with a final newline. */
+export const derivationJson = (d: Derivation): string => `${JSON.stringify(derivationObject(d), null, 2)}\n`;
