@@ -1,0 +1,128 @@
+/**
+ * The declarations of a theory file: constants, scales, and the LaTeX of their names. Faulty declarations are reported and
+ * still entered, so that their use in the Lagrangian is not reported a second time.
+ */
+import { type Diagnostic, errorAt, warningAt } from './diagnostics.js';
+import { DIMENSION_HINT, parseDimension } from './dimension.js';
+import { latexFault, latexName } from './latex-symbol.js';
+import { MAX_SYMBOLS } from './limits.js';
+import { nameFault } from './names.js';
+import { nearest } from './suggest.js';
+import type { Origin, SymbolRole, TheorySymbol } from './theory.js';
+import { asList, asMap, asText } from './yaml-shape.js';
+import type { YamlNode, YamlText } from './yaml-source.js';
+import { passageOf } from './yaml-text.js';
+
+/** A symbol with the place of its declaration. */
+export interface Declaration {
+  readonly name: string;
+  readonly role: SymbolRole;
+  readonly dimension: number;
+  readonly origin: Origin;
+}
+
+/** Declarations in the order of the file, by name. */
+export type Declarations = Map<string, Declaration>;
+
+/** Adds one declaration; reports `bad-name`, `reserved-name`, `declared-twice`. */
+export function declare(
+  key: YamlText,
+  role: SymbolRole,
+  dimension: number,
+  declarations: Declarations,
+  problems: Diagnostic[],
+): void {
+  const name = key.text.trim();
+  const fault = nameFault(name);
+  if (fault !== undefined) problems.push(errorAt(key.origin, fault.code, fault.message, fault.hint));
+  const before = declarations.get(name);
+  if (before !== undefined) {
+    const message = `${name} is declared twice`;
+    problems.push(errorAt(key.origin, 'declared-twice', message, `it is a ${before.role} already; keep one of them`));
+    return;
+  }
+  if (declarations.size === MAX_SYMBOLS) {
+    const message = `more than ${MAX_SYMBOLS} constants and scales`;
+    problems.push(errorAt(key.origin, 'symbols-limit', message, 'declare only what the Lagrangian uses'));
+  }
+  declarations.set(name, { name, role, dimension, origin: key.origin });
+}
+
+function readDimension(node: YamlNode, name: string, problems: Diagnostic[]): number {
+  const text = asText(node, `the dimension of ${name}`, problems);
+  const dimension = text === undefined ? 0 : parseDimension(text.text);
+  if (dimension === undefined) {
+    const message = `${JSON.stringify(text?.text.trim())} is not a dimension`;
+    problems.push(errorAt(node.origin, 'bad-dimension', message, DIMENSION_HINT));
+  }
+  return dimension ?? 0;
+}
+
+/** `constants: [c0, { g: mass^2 }]`. */
+export function readConstants(node: YamlNode, declarations: Declarations, problems: Diagnostic[]): void {
+  for (const item of asList(node, 'constants', problems)?.items ?? []) {
+    if (item.kind === 'map') {
+      for (const { key, value } of item.entries.values()) {
+        declare(key, 'constant', readDimension(value, key.text, problems), declarations, problems);
+      }
+    } else {
+      const text = asText(item, 'a constant', problems);
+      if (text !== undefined) declare(text, 'constant', 0, declarations, problems);
+    }
+  }
+}
+
+/** `scales: { M: mass }`. */
+export function readScales(node: YamlNode, declarations: Declarations, problems: Diagnostic[]): void {
+  for (const { key, value } of asMap(node, 'scales', problems)?.entries.values() ?? []) {
+    declare(key, 'scale', readDimension(value, key.text, problems), declarations, problems);
+  }
+}
+
+/**
+ * The symbols with their LaTeX, derived from the name unless `symbols` (may be undefined) gives it. Reports `bad-latex` and
+ * `unknown-symbol`; warns with `same-latex` when two symbols would look alike.
+ */
+export function namedSymbols(
+  node: YamlNode | undefined,
+  declarations: Declarations,
+  problems: Diagnostic[],
+  warnings: Diagnostic[],
+): readonly TheorySymbol[] {
+  const given = new Map<string, string>();
+  const map = node === undefined ? undefined : asMap(node, 'symbols', problems);
+  for (const [name, { key, value }] of map?.entries ?? []) {
+    if (!declarations.has(name)) {
+      const near = nearest(name, declarations.keys());
+      const hint =
+        near === undefined
+          ? 'only declared constants, scales and vacuum densities can be renamed'
+          : `did you mean ${near}?`;
+      problems.push(errorAt(key.origin, 'unknown-symbol', `symbols renames ${name}, which is not declared`, hint));
+      continue;
+    }
+    const text = asText(value, `the LaTeX of ${name}`, problems);
+    if (text === undefined) continue;
+    const fault = latexFault(passageOf(text));
+    if (fault !== undefined) problems.push(fault);
+    else given.set(name, text.text.trim());
+  }
+  const seen = new Map<string, string>();
+  return [...declarations.values()].map(({ name, role, dimension, origin }) => {
+    const latex = given.get(name) ?? latexName(name);
+    const twin = seen.get(latex);
+    if (twin !== undefined) {
+      const message = `${twin} and ${name} are both printed as ${latex}`;
+      warnings.push(
+        warningAt(
+          map?.entries.get(name)?.value.origin ?? origin,
+          'same-latex',
+          message,
+          'give one of them another name under symbols',
+        ),
+      );
+    }
+    seen.set(latex, name);
+    return { name, role, dimension, latex };
+  });
+}
