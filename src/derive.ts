@@ -31,10 +31,11 @@ const PLANCK_MASS = 'M';
 
 /**
  * Derives everything about a theory.
+ * @param onStep is told what is about to be done, for a progress line.
  * @throws InputError when the theory is at fault (unknown geometry, contradictory relations, a limit exceeded);
  * Error when a check fails, which means that this program is wrong.
  */
-export function derive(theory: Theory): Derivation {
+export function derive(theory: Theory, onStep: (what: string) => void = () => {}): Derivation {
   const geometry = loadGeometry(theory.geometry, theory.signature);
   refuseFieldNames(theory, geometry);
   const fluidsWanted = theory.matter.map((m) => ({ ...m, exponents: dilution(geometry, m) }));
@@ -51,7 +52,10 @@ export function derive(theory: Theory): Derivation {
   const terms = collectTerms(ring, theory.lagrangian, couple);
   const gravity = sum(
     ring,
-    terms.map(({ coefficient, factors }) => multiply(coefficient, moveTo(density(geometry, factors), ring))),
+    terms.map(({ coefficient, factors }, i) => {
+      onStep(`contracting product ${i + 1} of ${terms.length}`);
+      return multiply(coefficient, moveTo(density(geometry, factors), ring));
+    }),
   );
   const fluids = fluidsWanted.map((m) => fluidValue(ring, m, couple));
   const spatialVolume = moveTo(geometry.spatialVolume, ring);
@@ -62,6 +66,7 @@ export function derive(theory: Theory): Derivation {
   );
   const lagrangian = add(gravity, matter);
 
+  onStep('varying the Lagrangian');
   const fields = geometry.fields.map((f) => f.name);
   const variation = (of: Poly) => new Map(fields.map((q) => [q, eulerLagrange(of, q)] as const));
   const gravityEquations = variation(gravity);
@@ -95,6 +100,7 @@ export function derive(theory: Theory): Derivation {
   );
 
   const friedmann = friedmannOf(geometry, ring, gravityEquations, couple, check);
+  onStep('looking for the scalar-tensor form');
   const scalarTensor = scalarTensorOf(geometry, ring, gravity, check);
   const parameters = geometry.parameters.map((p) => p.name);
   const scales = theory.symbols.filter((s) => s.role === 'scale').map((s) => s.name);
@@ -117,7 +123,8 @@ export function derive(theory: Theory): Derivation {
     combinations: couplingCombinations(fix(reduced), parameters, scales),
     screening: curvature === undefined ? undefined : screeningConditions(reduced, curvature, parameters, scales),
     friedmann: friedmann && fixFriedmann(friedmann, fix),
-    scalarTensor: fixForm(scalarTensor, fix),
+    // The form speaks about other values of k too, so a value imposed on k is not put into its obstruction.
+    scalarTensor,
     checks,
   });
 }
@@ -261,8 +268,3 @@ function scalarTensorOf(geometry: Geometry, ring: Ring, gravity: Poly, check: Ch
     obstruction: outcome.obstruction,
   };
 }
-
-const fixForm = (form: ScalarTensorForm, fix: (p: Poly) => Poly): ScalarTensorForm =>
-  form.form === 'none'
-    ? { ...form, offending: form.offending && fix(form.offending) }
-    : { ...form, obstruction: fix(form.obstruction) };

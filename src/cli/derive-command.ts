@@ -1,0 +1,99 @@
+/** `untwist derive`: one theory file in; a summary on the terminal and a folder of results out. */
+import { resolve } from 'node:path';
+import type { Derivation } from '../derivation.js';
+import { derive } from '../derive.js';
+import { derivationJson } from '../emit/json.js';
+import { InputError, renderDiagnostic } from '../notation/diagnostics.js';
+import { readTheory } from '../notation/read-theory.js';
+import { EXIT, type Io } from './io.js';
+import { refuseExisting, writeFolder } from './output-folder.js';
+import { progressLine } from './progress.js';
+import { readInput } from './read-input.js';
+
+export interface DeriveOptions {
+  readonly out?: string;
+  readonly set: readonly string[];
+  readonly variables: string;
+  readonly factor?: boolean;
+  readonly json?: boolean;
+  readonly force?: boolean;
+}
+
+/** Names of the files of a derivation, in the order in which a reader wants them. */
+const filesOf = (slug: string) => ({
+  report: 'report.html',
+  equations: 'equations.tex',
+  document: 'derivation.tex',
+  code: `${slug}.ts`,
+  data: 'derivation.json',
+});
+
+/** @returns the exit code. @throws InputError for everything that the user can mend. */
+export async function deriveCommand(path: string, options: DeriveOptions, io: Io): Promise<number> {
+  const { file, text } = await readInput(path, io);
+  const theory = readTheory(text, file, { set: options.set });
+  for (const warning of theory.warnings) io.stderr(`${renderDiagnostic(warning, { color: io.color })}\n`);
+  if (options.json) {
+    io.stdout(derivationJson(derive(theory)));
+    return EXIT.done;
+  }
+  const folder = options.out ?? `out/${theory.slug}`;
+  const files = filesOf(theory.slug);
+  refuseExisting(folder, Object.values(files), options.force ?? false);
+
+  const progress = progressLine(io);
+  const derivation = derive(theory, progress.step);
+  const variables = chosenVariables(derivation, options.variables);
+  progress.step('typesetting');
+  const [{ derivationTex, equationsTex }, { typescriptModule }, { reportHtml }, { summary }] = await Promise.all([
+    import('../emit/latex.js'),
+    import('../emit/typescript.js'),
+    import('../emit/report.js'),
+    import('../emit/summary.js'),
+  ]);
+  const factored = options.factor ? await (await import('../factored.js')).factorFunctions(derivation) : undefined;
+  writeFolder(
+    folder,
+    new Map([
+      [files.equations, equationsTex(derivation, { variables })],
+      [files.document, derivationTex(derivation, { variables })],
+      [files.code, typescriptModule(derivation)],
+      [files.data, derivationJson(derivation)],
+      [files.report, reportHtml(derivation, { variables })],
+    ]),
+  );
+  progress.done();
+  io.stdout(summary(derivation, { variables, color: io.color, factored }));
+  io.stdout(closing(resolve(folder), files));
+  return EXIT.done;
+}
+
+/** The key of the geometry's variables that the user asked for. */
+function chosenVariables({ geometry }: Derivation, asked: string): string {
+  const own = geometry.isotropic?.scalars.join(',') ?? '';
+  const keys = [own, ...geometry.variables.map((v) => v.key)].filter((k) => k !== '');
+  const key = asked.replace(/\s/g, '');
+  if (keys.includes(key)) return key;
+  // The default names the variables of the isotropic geometry; other geometries print their own.
+  if (keys.length === 0 && key === 'phi,psi') return own;
+  throw new InputError([
+    {
+      code: 'unknown-variables',
+      severity: 'error',
+      message: `the geometry ${geometry.id} has no variables ${asked}`,
+      hint: keys.length === 0 ? 'leave --variables out' : `choose one of ${keys.map((k) => `"${k}"`).join(', ')}`,
+    },
+  ]);
+}
+
+function closing(folder: string, files: ReturnType<typeof filesOf>): string {
+  const rows = [
+    [files.report, 'the derivation step by step; open it in a browser'],
+    [files.equations, 'equations with labels, ready to \\input into a manuscript'],
+    [files.document, 'the whole derivation as a LaTeX document'],
+    [files.code, 'residuals, Friedmann form and scalar-tensor functions for solvers'],
+    [files.data, 'every result as exact text for other programs'],
+  ] as const;
+  const width = Math.max(...rows.map(([name]) => name.length));
+  return `\nWritten to ${folder}\n${rows.map(([name, what]) => `  ${name.padEnd(width)}  ${what}\n`).join('')}`;
+}

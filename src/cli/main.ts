@@ -1,0 +1,52 @@
+/**
+ * The command line: parses arguments, runs one command, renders whatever went wrong. Thin on purpose.
+ */
+import { Command, CommanderError, Option } from 'commander';
+import { InputError, renderDiagnostic } from '../notation/diagnostics.js';
+import { EXIT, type Io } from './io.js';
+
+const collect = (value: string, previous: string[]): string[] => [...previous, value];
+
+/** Runs the program with the words after its name. @returns the exit code. */
+export async function main(args: readonly string[], io: Io): Promise<number> {
+  let code: number = EXIT.done;
+  const program = new Command('untwist')
+    .description('Derives the cosmology of gravity with torsion from a Lagrangian in index notation.')
+    .version('0.1.0')
+    .exitOverride()
+    .configureOutput({ writeOut: io.stdout, writeErr: io.stderr })
+    .showHelpAfterError('(untwist --help lists the commands)');
+  program
+    .command('derive')
+    .description('reduce a theory: field equations, scalar-tensor Lagrangian, LaTeX, TypeScript, JSON and a report')
+    .argument('<theory>', 'theory file (YAML), or - for standard input')
+    .option('--out <folder>', 'folder for the results (default: out/<name of the theory>)')
+    .option(
+      '--set <relation>',
+      'impose one more relation, for instance b1=0 or "b1=-2*b3"; may be repeated',
+      collect,
+      [],
+    )
+    .option('--variables <pair>', 'variables of the printed equations: phi,psi or u,v (torsion) or h,f', 'phi,psi')
+    .option('--factor', 'also print the functions of the scalar-tensor form in factors')
+    .option('--json', 'print the JSON alone and write no file')
+    .option('--force', 'replace files that exist')
+    .addOption(new Option('--no-color', 'no terminal colours'))
+    .action(async (theory: string, options) => {
+      const { deriveCommand } = await import('./derive-command.js');
+      code = await deriveCommand(theory, options, io);
+    });
+  try {
+    await program.parseAsync([...args], { from: 'user' });
+    return code;
+  } catch (error) {
+    if (error instanceof CommanderError) return error.exitCode === 0 ? EXIT.done : EXIT.input;
+    if (error instanceof InputError) {
+      for (const d of error.diagnostics) io.stderr(`${renderDiagnostic(d, { color: io.color })}\n`);
+      return EXIT.input;
+    }
+    const detail = error instanceof Error ? (error.stack ?? error.message) : String(error);
+    io.stderr(`error: untwist itself is at fault; no result was written\n${detail}\n`);
+    return EXIT.fault;
+  }
+}
