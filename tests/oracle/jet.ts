@@ -183,6 +183,11 @@ export class Jet {
     return derivative(this.value, n);
   }
 
+  /** All retained time derivatives at t = 0, from order 0 on. */
+  derivatives(): Q[] {
+    return this.value.map((_, n) => this.rationalAt(n));
+  }
+
   /** n-th time derivative at t = 0 of the variation along a direction. */
   variationAt(direction: string, n: number): Q {
     const series = this.variations.get(direction);

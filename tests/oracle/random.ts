@@ -52,7 +52,7 @@ export class Random {
   }
 
   /** A jet point with `derivatives` derivatives of every field; N and scale factors positive; k of either sign or 0. */
-  point(geometry: GeometryName, constants: readonly string[], derivatives = 3): Point {
+  point(geometry: GeometryName, constants: readonly string[], derivatives = 2): Point {
     const fields: Record<string, Q[]> = {};
     for (const name of FIELDS[geometry]) {
       const head = name === 'N' || name === 'a' || name.startsWith('a_') ? this.positive() : this.rational();

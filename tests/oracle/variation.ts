@@ -28,12 +28,17 @@ export interface Values {
   readonly equations: Readonly<Record<string, Q>>;
 }
 
-/** Energy density along the jets: at a = 1 for integer 3w, else the value now with dρ/da = −3(1+w)ρ/a. */
-export function density(fluid: Fluid, now: Q, scaleFactor: Jet, algebra: Algebra): Jet {
-  const exponent = E.mul(E.q(-3), E.add(E.ONE, fluid.w));
-  const number = Jet.number(algebra, now, scaleFactor.length);
-  if (exponent.d === 1n) return number.times(scaleFactor.power(Number(exponent.n)));
-  return number.times(scaleFactor.relativePower(exponent));
+/**
+ * Energy density along the jets, ρ ∝ V^-(1+w) with V the product of the scale factors: `now` is the value at V = 1 when all
+ * exponents are integers, else the present one.
+ */
+export function density(fluid: Fluid, now: Q, scaleFactors: readonly Jet[], algebra: Algebra): Jet {
+  // On FLRW the three scale factors are one field.
+  const [factors, times] = scaleFactors.length === 1 ? [scaleFactors, -3] : [scaleFactors, -1];
+  const exponent = E.mul(E.q(times), E.add(E.ONE, fluid.w));
+  const number = Jet.number(algebra, now, factors[0]!.length);
+  const power = (a: Jet): Jet => (exponent.d === 1n ? a.power(Number(exponent.n)) : a.relativePower(exponent));
+  return factors.reduce((rho, a) => rho.times(power(a)), number);
 }
 
 /** E_q of a functional of the fields at t = 0, for every field of the point. */
@@ -67,10 +72,8 @@ export function torsionTheory(theory: OracleTheory, point: Point): Values {
     for (const fluid of theory.matter) {
       const now = point.constants[fluid.density];
       if (now === undefined) throw new Error(`the point has no value for ${fluid.density}`);
-      if (fields.a === undefined && !E.same(fluid.w, E.q(-1)))
-        throw new Error('a fluid other than vacuum needs the scale factor a');
-      const rho =
-        fields.a === undefined ? Jet.number(algebra, now, frame.volume.length) : density(fluid, now, fields.a, algebra);
+      const scaleFactors = theory.geometry === 'flrw' ? [fields.a!] : [fields.a_x!, fields.a_y!, fields.a_z!];
+      const rho = density(fluid, now, scaleFactors, algebra);
       out = out.minus(rho.times(frame.volume));
     }
     return out;
