@@ -1,8 +1,10 @@
 /**
  * Derivatives in a ring of jets: with respect to a generator, to a field through its jets and sources, and to time.
  * d/dt is one function because each generator carries its own rule. Values in and out are canonical polynomials.
+ * Imports polynomials and their views.
  */
 
+import { select } from './collect.js';
 import { add, fromTable, generator, height, multiply, normalise, type Poly, scale, subtract, zero } from './poly.js';
 import { rational } from './rational.js';
 import {
@@ -10,6 +12,7 @@ import {
   exponentAt,
   jetName,
   MAX_EXPONENT,
+  positionOf,
   type Ring,
   type SourceGenerator,
   weightOf,
@@ -21,38 +24,48 @@ import { TermTable } from './terms.js';
 function partialAt(p: Poly, g: number): Poly {
   const { ring } = p;
   const { words } = ring;
-  if (p.reach >= MAX_EXPONENT) throw new ExponentLimitError();
   const word = wordOf(g);
   const weight = weightOf(g);
-  const rows: number[] = [];
-  const factors: number[] = [];
+  const exponents = new Int16Array(p.size);
+  let n = 0;
   for (let i = 0; i < p.size; i++) {
     const e = exponentAt(p.keys, i * words, g);
     if (e === 0) continue;
-    rows.push(i);
-    factors.push(e);
+    if (e === -MAX_EXPONENT) throw new ExponentLimitError();
+    exponents[i] = e;
+    n++;
   }
-  if (rows.length === 0) return zero(ring);
-  const keys = new Float64Array(rows.length * words);
-  rows.forEach((row, i) => {
-    for (let w = 0; w < words; w++) keys[i * words + w] = p.keys[row * words + w]!;
-    keys[i * words + word]! -= weight;
-  });
+  if (n === 0) return zero(ring);
+  const keys = new Float64Array(n * words);
   const { numerators } = p;
   const small = numerators instanceof Float64Array && height(p) * MAX_EXPONENT <= Number.MAX_SAFE_INTEGER;
-  const values = small
-    ? Float64Array.from(rows, (row, i) => numerators[row]! * factors[i]!)
-    : rows.map((row, i) => BigInt(numerators[row]!) * BigInt(factors[i]!));
-  return normalise(ring, keys, values, p.denominator, p.reach + 1);
+  const doubles = new Float64Array(small ? n : 0);
+  const bigs: bigint[] = [];
+  for (let i = 0, t = 0; t < n; i++) {
+    const e = exponents[i]!;
+    if (e === 0) continue;
+    for (let w = 0; w < words; w++) keys[t * words + w] = p.keys[i * words + w]!;
+    keys[t * words + word]! -= weight;
+    if (small) doubles[t] = numerators[i]! * e;
+    else bigs.push(BigInt(numerators[i]!) * BigInt(e));
+    t++;
+  }
+  return normalise(ring, keys, small ? doubles : bigs, p.denominator, Math.min(p.reach + 1, MAX_EXPONENT));
 }
 
-/** Partial derivative with respect to a generator by name; a name that is not in the ring gives zero. */
+/**
+ * Partial derivative with respect to a generator by name, all others held fixed (a radical and its square too);
+ * a name that is not in the ring gives zero. @throws ExponentLimitError beyond ±511.
+ */
 export function partial(p: Poly, name: string): Poly {
   const g = p.ring.position.get(name);
   return g === undefined ? zero(p.ring) : partialAt(p, g);
 }
 
-/** ∂/∂q of a polynomial at fixed velocities, with sources differentiated as the functions of q that they are. */
+/**
+ * ∂/∂q of a polynomial at fixed velocities, with sources differentiated as the functions of q that they are.
+ * @throws ExponentLimitError beyond ±511.
+ */
 export function fieldPartial(p: Poly, field: string): Poly {
   let result = partial(p, field);
   for (const g of p.ring.generators) {
@@ -71,32 +84,35 @@ export function fieldPartial(p: Poly, field: string): Poly {
 export function timeDerivative(p: Poly): Poly {
   const { ring } = p;
   const { words, generators, next } = ring;
-  if (p.reach >= MAX_EXPONENT) throw new ExponentLimitError();
-  const rules = generators.map((g) => (g.kind === 'source' ? sourceRate(ring, g) : undefined));
-  const active = generators.flatMap((g, i) => (g.kind === 'jet' ? [i] : []));
+  const atLimit = p.reach >= MAX_EXPONENT;
   const big = !(height(p) * MAX_EXPONENT * generators.length * Math.max(1, p.size) <= Number.MAX_SAFE_INTEGER);
   const table = new TermTable(words, p.size * 3, big);
-  for (const g of active) {
+  for (let g = 0; g < generators.length; g++) {
+    if (generators[g]!.kind !== 'jet') continue;
     const w0 = wordOf(g);
     const d0 = weightOf(g);
     const up = next[g]!;
+    const w1 = wordOf(up);
+    const d1 = weightOf(up);
     for (let i = 0; i < p.size; i++) {
       const e = exponentAt(p.keys, i * words, g);
       if (e === 0) continue;
       if (up < 0) throw new Error(`the ring has no time derivative of ${generators[g]!.name}`);
+      if (atLimit && (e === -MAX_EXPONENT || exponentAt(p.keys, i * words, up) === MAX_EXPONENT))
+        throw new ExponentLimitError();
       for (let w = 0; w < words; w++) table.key[w] = p.keys[i * words + w]!;
       table.key[w0]! -= d0;
-      table.key[wordOf(up)]! += weightOf(up);
+      table.key[w1]! += d1;
       const s = table.slot();
       if (table.bigs) table.bigs[s]! += BigInt(p.numerators[i]!) * BigInt(e);
       else table.numbers[s]! += (p.numerators[i] as number) * e;
     }
   }
-  let result = fromTable(ring, table, p.denominator, p.reach + 1);
-  rules.forEach((rate, g) => {
-    if (!rate) return;
-    const by = partialAt(p, g);
-    if (by.size > 0) result = add(result, multiply(by, rate));
+  let result = fromTable(ring, table, p.denominator, Math.min(p.reach + 1, MAX_EXPONENT));
+  generators.forEach((g, i) => {
+    if (g.kind !== 'source') return;
+    const by = partialAt(p, i);
+    if (by.size > 0) result = add(result, multiply(by, sourceRate(ring, g)));
   });
   return result;
 }
@@ -125,7 +141,10 @@ export function orderIn(p: Poly, field: string): number {
   return order;
 }
 
-/** Euler–Lagrange expression Σ_n (−d/dt)^n ∂L/∂D(q,n). */
+/**
+ * Euler–Lagrange expression Σ_n (−d/dt)^n ∂L/∂D(q,n), with ∂L/∂q as in `fieldPartial`.
+ * @throws as `timeDerivative`; the ring needs jets up to twice the order in which the field occurs.
+ */
 export function eulerLagrange(lagrangian: Poly, field: string): Poly {
   let result = fieldPartial(lagrangian, field);
   for (let n = orderIn(lagrangian, field); n >= 1; n--) {
@@ -137,16 +156,20 @@ export function eulerLagrange(lagrangian: Poly, field: string): Poly {
 }
 
 /**
- * Antiderivative in one generator, all others held fixed.
- * Terms with exponent -1, whose antiderivative is a logarithm, come back as `rest`.
+ * Antiderivative in one generator, all others held fixed, sources that depend on it too.
+ * Terms with exponent -1, whose antiderivative is a logarithm, come back as `rest`: p = ∂primitive + rest.
+ * @throws Error for an unknown name or a radical, whose powers are not free; ExponentLimitError beyond ±511.
  */
 export function antiderivative(p: Poly, name: string): { primitive: Poly; rest: Poly } {
   const { ring } = p;
   const byExponent = new Map<number, number[]>();
-  const g = ring.position.get(name)!;
+  const g = positionOf(ring, name);
+  if (ring.generators[g]!.kind === 'radical') throw new Error(`${name} is a radical`);
   for (let i = 0; i < p.size; i++) {
     const e = exponentAt(p.keys, i * ring.words, g);
-    byExponent.set(e, [...(byExponent.get(e) ?? []), i]);
+    const rows = byExponent.get(e);
+    if (rows) rows.push(i);
+    else byExponent.set(e, [i]);
   }
   let primitive = zero(ring);
   let rest = zero(ring);
@@ -156,30 +179,4 @@ export function antiderivative(p: Poly, name: string): { primitive: Poly; rest: 
     else primitive = add(primitive, scale(multiply(part, generator(ring, name)), rational(1, e + 1)));
   }
   return { primitive, rest };
-}
-
-/** The terms at the given rows (ascending), as a polynomial. */
-export function select(p: Poly, rows: readonly number[]): Poly {
-  const { words } = p.ring;
-  const keys = new Float64Array(rows.length * words);
-  rows.forEach((row, i) => {
-    keys.set(p.keys.subarray(row * words, (row + 1) * words), i * words);
-  });
-  const { numerators } = p;
-  const chosen =
-    numerators instanceof Float64Array
-      ? Float64Array.from(rows, (r) => numerators[r]!)
-      : rows.map((r) => numerators[r]!);
-  return normalise(p.ring, keys, chosen, p.denominator, p.reach);
-}
-
-/** The terms for which a test on their exponents holds; the second part is the remainder. */
-export function partition(p: Poly, test: (exponent: (generator: number) => number) => boolean): [Poly, Poly] {
-  const yes: number[] = [];
-  const no: number[] = [];
-  for (let i = 0; i < p.size; i++) {
-    const offset = i * p.ring.words;
-    (test((g) => exponentAt(p.keys, offset, g)) ? yes : no).push(i);
-  }
-  return [select(p, yes), select(p, no)];
 }

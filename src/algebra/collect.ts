@@ -1,12 +1,38 @@
 /**
- * Views of a polynomial: as a polynomial in some generators with polynomial coefficients in the others; its values;
- * its image under substitution or in another ring.
+ * Views of a polynomial: some of its terms; as a polynomial in some generators with polynomial coefficients in the
+ * others; its values; its image under substitution or in another ring. Values out are canonical. Imports polynomials.
  */
 
-import { select } from './calculus.js';
-import { add, constant, generator, monomial, multiply, normalise, type Poly, power, sum, termsOf } from './poly.js';
-import { addRational, multiplyRational, powerRational, type Rational, ZERO } from './rational.js';
-import { exponentAt, type Ring, weightOf, wordOf } from './ring.js';
+import { constant, equals, fromTable, generator, multiply, normalise, type Poly, power, sum, termsOf } from './poly.js';
+import { addRational, equalRational, multiplyRational, powerRational, type Rational, ZERO } from './rational.js';
+import { exponentAt, type Ring, unpackMonomial, weightOf, wordOf } from './ring.js';
+import { TermTable } from './terms.js';
+
+/** The terms at the given rows (ascending), as a polynomial. */
+export function select(p: Poly, rows: readonly number[]): Poly {
+  const { words } = p.ring;
+  const keys = new Float64Array(rows.length * words);
+  rows.forEach((row, i) => {
+    keys.set(p.keys.subarray(row * words, (row + 1) * words), i * words);
+  });
+  const { numerators } = p;
+  const chosen =
+    numerators instanceof Float64Array
+      ? Float64Array.from(rows, (r) => numerators[r]!)
+      : rows.map((r) => numerators[r]!);
+  return normalise(p.ring, keys, chosen, p.denominator, p.reach);
+}
+
+/** The terms for which a test on their exponents holds; the second part is the remainder. */
+export function partition(p: Poly, test: (exponent: (generator: number) => number) => boolean): [Poly, Poly] {
+  const yes: number[] = [];
+  const no: number[] = [];
+  for (let i = 0; i < p.size; i++) {
+    const offset = i * p.ring.words;
+    (test((g) => exponentAt(p.keys, offset, g)) ? yes : no).push(i);
+  }
+  return [select(p, yes), select(p, no)];
+}
 
 /** One monomial in the chosen generators and what multiplies it. */
 export interface Collected {
@@ -60,12 +86,19 @@ export function symbolsOf(p: Poly): string[] {
 }
 
 /**
- * p with generators replaced by polynomials of a target ring; the others keep their name there.
- * Constant in the number of terms of p times the size of the powers needed.
- * @throws RangeError when a negative power of zero or of a sum would be needed; Error for a name unknown in the target.
+ * p with generators replaced by polynomials of a target ring; the others keep their name there. Nothing else follows:
+ * neither the jets of a replaced field nor the sources that depend on it.
+ * @throws RangeError when a negative power of zero or of a sum would be needed; Error for a name unknown in the target,
+ * and when p involves a radical whose image squared is not the image of its square; ExponentLimitError beyond ±511.
  */
 export function substitute(p: Poly, images: ReadonlyMap<string, Poly>, target: Ring = p.ring): Poly {
   const replaced = p.ring.generators.map((g) => images.get(g.name));
+  for (const [r, square] of p.ring.radicals) {
+    if (!replaced[r] && !replaced[square]) continue;
+    const [radical, value] = [r, square].map((g) => replaced[g] ?? generator(target, p.ring.generators[g]!.name));
+    if (involves(p, p.ring.generators[r]!.name) && !equals(multiply(radical!, radical!), value!))
+      throw new Error(`the image of ${p.ring.generators[r]!.name} is no root of the image of its square`);
+  }
   const powers = new Map<string, Poly>();
   const powerOf = (g: number, e: number): Poly => {
     const key = `${g}^${e}`;
@@ -87,24 +120,38 @@ export function substitute(p: Poly, images: ReadonlyMap<string, Poly>, target: R
 
 /** The same polynomial in another ring, generators matched by name. @throws Error when a name is missing there. */
 export function moveTo(p: Poly, target: Ring): Poly {
-  if (p.ring === target) return p;
-  return sum(
-    target,
-    termsOf(p).map(({ coefficient, exponents }) =>
-      monomial(
-        target,
-        coefficient,
-        exponents.map(([g, e]) => [p.ring.generators[g]!.name, e] as const),
-      ),
-    ),
-  );
+  const { ring, keys, numerators, size } = p;
+  if (ring === target) return p;
+  const there = ring.generators.map((g) => target.position.get(g.name) ?? -1);
+  const table = new TermTable(target.words, size, !(numerators instanceof Float64Array));
+  for (let i = 0; i < size; i++) {
+    table.key.fill(0);
+    unpackMonomial(ring, keys, i * ring.words).forEach((e, g) => {
+      if (e === 0) return;
+      if (there[g]! < 0) throw new Error(`no generator ${ring.generators[g]!.name} in the ring`);
+      table.key[wordOf(there[g]!)]! += e * weightOf(there[g]!);
+    });
+    // Monomials stay distinct, so that nothing is added up here.
+    const s = table.slot();
+    if (table.bigs) table.bigs[s] = numerators[i] as bigint;
+    else table.numbers[s] = numerators[i] as number;
+  }
+  return fromTable(target, table, p.denominator, p.reach);
 }
 
 /**
  * Exact value at a point given by generator name.
- * @throws Error when a value is missing; RangeError for a negative power of zero.
+ * @throws Error when a value is missing, or when p involves a radical and the point does not have its square's root
+ * there; RangeError for a negative power of zero.
  */
 export function evaluate(p: Poly, point: ReadonlyMap<string, Rational>): Rational {
+  for (const [r, square] of p.ring.radicals) {
+    const name = p.ring.generators[r]!.name;
+    const root = point.get(name);
+    const value = point.get(p.ring.generators[square]!.name);
+    if (root && value && !equalRational(multiplyRational(root, root), value) && involves(p, name))
+      throw new Error(`the value of ${name} is no root of the value of its square`);
+  }
   let total = ZERO;
   for (const { coefficient, exponents } of termsOf(p)) {
     let value = coefficient;
@@ -119,7 +166,7 @@ export function evaluate(p: Poly, point: ReadonlyMap<string, Rational>): Rationa
   return total;
 }
 
-/** Coefficient polynomial of one power of one generator. */
+/** Coefficient polynomial of one power of one generator; a name that is not in the ring occurs to the power 0 only. */
 export function coefficientOf(p: Poly, name: string, exponent: number): Poly {
   const g = p.ring.position.get(name);
   const rows: number[] = [];
@@ -127,11 +174,4 @@ export function coefficientOf(p: Poly, name: string, exponent: number): Poly {
     if ((g === undefined ? 0 : exponentAt(p.keys, i * p.ring.words, g)) === exponent) rows.push(i);
   const part = select(p, rows);
   return g === undefined || exponent === 0 ? part : multiply(part, generator(p.ring, name, -exponent));
-}
-
-/** Sum over all terms of p of f(term): a linear map given on monomials. */
-export function mapTerms(p: Poly, target: Ring, f: (term: Poly) => Poly): Poly {
-  let total = constant(target, 0);
-  for (let i = 0; i < p.size; i++) total = add(total, f(select(p, [i])));
-  return total;
 }

@@ -1,12 +1,26 @@
 /**
  * Fractions of Laurent polynomials whose denominators stay factored.
- * Invariant: denominator factors are primitive sums (single terms are absorbed into the numerator), distinct, in a fixed
- * order, and none of them divides the numerator.
+ * Invariant: denominator factors are primitive sums that no generator divides (single terms are absorbed into the
+ * numerator), distinct, in a fixed order, and none of them divides the numerator. Factors need not be coprime to each
+ * other or to the numerator, so equality is `equalFraction`, not sameness of form. Imports polynomials.
  */
 
 import { timeDerivative } from './calculus.js';
-import { compareSimplicity, divideExactly, primitive } from './linear.js';
-import { add, constant, equals, isCanonical, isZero, multiply, negate, type Poly, power, subtract } from './poly.js';
+import { divideExactly, splitUnit } from './division.js';
+import { compareSimplicity } from './linear.js';
+import {
+  constant,
+  equals,
+  isCanonical,
+  isZero,
+  multiply,
+  negate,
+  type Poly,
+  power,
+  scale,
+  subtract,
+  sum,
+} from './poly.js';
 
 export interface Factor {
   readonly base: Poly;
@@ -19,83 +33,80 @@ export interface Fraction {
   readonly denominator: readonly Factor[];
 }
 
-const one = (p: Poly): Poly => constant(p.ring, 1);
+/** p · Π base^power. */
 const expand = (p: Poly, factors: readonly Factor[]): Poly =>
-  factors.reduce((acc, f) => multiply(acc, power(f.base, f.power)), one(p));
+  factors.reduce((acc, f) => multiply(acc, power(f.base, f.power)), p);
 
-/** numerator / Π base^power in canonical form. @throws RangeError when a base is zero. */
+/**
+ * numerator / Π base^power in canonical form.
+ * @throws RangeError when a base is zero or a power is no integer ≥ 0; ExponentLimitError beyond ±511.
+ */
 export function fraction(numerator: Poly, factors: readonly Factor[] = []): Fraction {
   let top = numerator;
   const kept: { base: Poly; power: number }[] = [];
   for (const { base, power: n } of factors) {
     if (isZero(base)) throw new RangeError('division by zero');
-    if (base.size === 1) {
-      top = multiply(top, power(base, -n));
-      continue;
-    }
-    const { unit, reduced } = split(base);
+    if (!Number.isSafeInteger(n) || n < 0) throw new RangeError(`a factor to the power ${n}`);
+    const { unit, reduced } = splitUnit(base);
     top = multiply(top, power(unit, -n));
+    if (reduced.size === 1) continue;
     let rest = n;
-    for (let quotient = divideExactly(top, reduced); rest > 0 && quotient; quotient = divideExactly(top, reduced)) {
+    while (rest > 0 && !isZero(top)) {
+      const quotient = divideExactly(top, reduced);
+      if (!quotient) break;
       top = quotient;
       rest--;
-      if (isZero(top)) rest = 0;
     }
     const twin = kept.find((f) => equals(f.base, reduced));
     if (twin) twin.power += rest;
     else if (rest > 0) kept.push({ base: reduced, power: rest });
   }
-  if (isZero(top)) return { numerator: top, denominator: [] };
-  return { numerator: top, denominator: kept.sort((a, b) => compareSimplicity(a.base, b.base)) };
+  if (isZero(top)) kept.length = 0;
+  kept.sort((a, b) => compareSimplicity(a.base, b.base));
+  return Object.freeze({ numerator: top, denominator: Object.freeze(kept.map((f) => Object.freeze(f))) });
 }
 
-/** base = unit · reduced with a one-term unit and a reduced part that no monomial divides. */
-function split(base: Poly): { unit: Poly; reduced: Poly } {
-  const { ring } = base;
-  const shift = new Float64Array(ring.words);
-  for (let w = 0; w < ring.words; w++) shift[w] = base.keys[(base.size - 1) * ring.words + w]!;
-  const last: Poly = { ...one(base), keys: shift, reach: base.reach };
-  const shifted = multiply(base, power(last, -1));
-  const reduced = primitive(shifted);
-  const unit = multiply(last, divideExactly(shifted, reduced)!);
-  return { unit, reduced };
+/** What a list of factors lacks to be a multiple of another one. */
+const lacking = (have: readonly Factor[], want: readonly Factor[]): Factor[] =>
+  want.flatMap(({ base, power: n }) => {
+    const missing = n - (have.find((f) => equals(f.base, base))?.power ?? 0);
+    return missing > 0 ? [{ base, power: missing }] : [];
+  });
+
+export function addFraction(a: Fraction, b: Fraction): Fraction {
+  const forA = lacking(a.denominator, b.denominator);
+  const forB = lacking(b.denominator, a.denominator);
+  const top = sum(a.numerator.ring, [expand(a.numerator, forA), expand(b.numerator, forB)]);
+  return fraction(top, [...a.denominator, ...forA]);
 }
 
-export const addFraction = (a: Fraction, b: Fraction): Fraction =>
-  fraction(
-    add(
-      multiply(a.numerator, expand(a.numerator, b.denominator)),
-      multiply(b.numerator, expand(b.numerator, a.denominator)),
-    ),
-    [...a.denominator, ...b.denominator],
-  );
-export const negateFraction = (a: Fraction): Fraction => ({ ...a, numerator: negate(a.numerator) });
+export const negateFraction = (a: Fraction): Fraction => Object.freeze({ ...a, numerator: negate(a.numerator) });
 export const multiplyFraction = (a: Fraction, b: Fraction): Fraction =>
   fraction(multiply(a.numerator, b.numerator), [...a.denominator, ...b.denominator]);
 
 /** a / b. @throws RangeError when b is zero. */
 export const divideFraction = (a: Fraction, b: Fraction): Fraction =>
-  fraction(multiply(a.numerator, expand(a.numerator, b.denominator)), [
-    ...a.denominator,
-    { base: b.numerator, power: 1 },
-  ]);
+  fraction(expand(a.numerator, b.denominator), [...a.denominator, { base: b.numerator, power: 1 }]);
 
 /** Equality of values, by cross-multiplication. */
 export const equalFraction = (a: Fraction, b: Fraction): boolean =>
-  isZero(
-    subtract(
-      multiply(a.numerator, expand(a.numerator, b.denominator)),
-      multiply(b.numerator, expand(b.numerator, a.denominator)),
-    ),
+  equals(
+    expand(a.numerator, lacking(a.denominator, b.denominator)),
+    expand(b.numerator, lacking(b.denominator, a.denominator)),
   );
 
-/** d/dt by the quotient rule. */
+/** d/dt by the quotient rule: (n/Πb^p)' = (n' Πb − n Σ p b' Π of the others) / Πb^(p+1). */
 export function timeDerivativeOfFraction(a: Fraction): Fraction {
-  const bottom = expand(a.numerator, a.denominator);
-  const top = subtract(multiply(timeDerivative(a.numerator), bottom), multiply(a.numerator, timeDerivative(bottom)));
+  const bases = a.denominator.map((f) => f.base);
+  const { ring } = a.numerator;
+  const product = (of: readonly Poly[]): Poly => of.reduce(multiply, constant(ring, 1));
+  const slopes = a.denominator.map(({ base, power: n }, i) =>
+    product([scale(timeDerivative(base), n), ...bases.filter((_, j) => j !== i)]),
+  );
+  const top = subtract(multiply(timeDerivative(a.numerator), product(bases)), multiply(a.numerator, sum(ring, slopes)));
   return fraction(
     top,
-    a.denominator.map((f) => ({ base: f.base, power: 2 * f.power })),
+    a.denominator.map(({ base, power: n }) => ({ base, power: n + 1 })),
   );
 }
 
@@ -104,9 +115,11 @@ export const isCanonicalFraction = (a: Fraction): boolean =>
   isCanonical(a.numerator) &&
   a.denominator.every(
     (f, i) =>
+      Number.isSafeInteger(f.power) &&
       f.power > 0 &&
       f.base.size > 1 &&
-      equals(primitive(f.base), f.base) &&
+      isCanonical(f.base) &&
+      equals(splitUnit(f.base).reduced, f.base) &&
       divideExactly(a.numerator, f.base) === undefined &&
       (i === 0 || compareSimplicity(a.denominator[i - 1]!.base, f.base) < 0),
   );

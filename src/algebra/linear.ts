@@ -1,8 +1,8 @@
 /**
  * Linear algebra over the rationals with polynomials as vectors: their monomials are the coordinates.
+ * Imports polynomials.
  */
-
-import { isZero, normalise, type Poly, scale, subtract, termsOf } from './poly.js';
+import { isZero, leadingCoefficient, type Poly, scale, subtract, termsOf } from './poly.js';
 import { divideRational, gcd, rational } from './rational.js';
 import { compareKeys } from './terms.js';
 
@@ -15,9 +15,7 @@ export function primitive(p: Poly): Poly {
   return scale(p, rational(p.denominator * sign, content));
 }
 
-const leadingCoefficient = (p: Poly) => rational(BigInt(p.numerators[0]!), p.denominator);
-
-/** p minus the multiples of basis elements that cancel their leading monomials; zero exactly when p is in the span. */
+/** p minus the multiples of basis elements that cancel their leading monomials. */
 function reduce(p: Poly, basis: readonly Poly[]): Poly {
   let rest = p;
   for (const b of basis) {
@@ -31,29 +29,43 @@ function reduce(p: Poly, basis: readonly Poly[]): Poly {
 
 /** Row of p that holds the leading monomial of b, or -1. */
 function rowOf(p: Poly, b: Poly): number {
-  for (let i = 0; i < p.size; i++) if (compareKeys(p.keys, i * p.ring.words, b.keys, 0, p.ring.words) === 0) return i;
+  const { words } = p.ring;
+  let from = 0;
+  let to = p.size;
+  while (from < to) {
+    const middle = (from + to) >> 1;
+    const c = compareKeys(p.keys, middle * words, b.keys, 0, words);
+    if (c === 0) return middle;
+    if (c > 0) from = middle + 1;
+    else to = middle;
+  }
   return -1;
 }
 
 /**
- * The polynomials that are not linear combinations of those before them.
- * Invariant of the inner basis: leading monomials differ, and none occurs in a later element.
+ * Adds to the basis what is new in p and says whether there was anything.
+ * Invariant: the leading monomial of an element is that of no other and occurs in none after it; so what `reduce`
+ * leaves of a polynomial has none of them, and vanishes exactly when the polynomial is in the span.
  */
+function extend(basis: Poly[], p: Poly): boolean {
+  const rest = reduce(p, basis);
+  if (isZero(rest)) return false;
+  basis.push(rest);
+  return true;
+}
+
+/** The polynomials that are not linear combinations of those before them. */
 export function independent(polys: readonly Poly[]): Poly[] {
   const basis: Poly[] = [];
-  const chosen: Poly[] = [];
-  for (const p of polys) {
-    const rest = reduce(p, basis);
-    if (isZero(rest)) continue;
-    chosen.push(p);
-    basis.push(rest);
-  }
-  return chosen;
+  return polys.filter((p) => extend(basis, p));
 }
 
 /** Whether p is a linear combination of the others. */
-export const dependsOn = (p: Poly, others: readonly Poly[]): boolean =>
-  independent([...others, p]).every((q) => q !== p);
+export function dependsOn(p: Poly, others: readonly Poly[]): boolean {
+  const basis: Poly[] = [];
+  for (const q of others) extend(basis, q);
+  return isZero(reduce(p, basis));
+}
 
 /**
  * Reduced echelon basis of a span, each element primitive: the same for every set of generators of the same span.
@@ -62,52 +74,25 @@ export function echelon(polys: readonly Poly[]): Poly[] {
   let basis: Poly[] = [];
   for (const p of polys) {
     const rest = reduce(p, basis);
-    if (isZero(rest)) continue;
-    basis = [...basis.map((b) => reduce(b, [rest])), rest];
+    if (!isZero(rest)) basis = [...basis.map((b) => reduce(b, [rest])), rest];
   }
   return basis.map(primitive).sort((a, b) => compareKeys(b.keys, 0, a.keys, 0, a.ring.words));
 }
 
-/**
- * The quotient p/q when it is exact in the ring of Laurent polynomials, else undefined.
- * @throws RangeError when q is zero.
- */
-export function divideExactly(p: Poly, q: Poly): Poly | undefined {
-  if (isZero(q)) throw new RangeError('division by zero');
-  const { words } = p.ring;
-  const quotient: Poly[] = [];
-  let rest = p;
-  // In Laurent polynomials leading terms can be cancelled for ever; an exact quotient has its lowest term here.
-  const lowest = new Float64Array(words);
-  for (let w = 0; w < words && p.size > 0; w++)
-    lowest[w] = p.keys[(p.size - 1) * words + w]! - q.keys[(q.size - 1) * words + w]!;
-  while (!isZero(rest)) {
-    const keys = new Float64Array(words);
-    for (let w = 0; w < words; w++) keys[w] = rest.keys[w]! - q.keys[w]!;
-    if (compareKeys(keys, 0, lowest, 0, words) < 0) return undefined;
-    const ratio = divideRational(leadingCoefficient(rest), leadingCoefficient(q));
-    const term = normalise(p.ring, keys, [ratio.num], ratio.den, rest.reach + q.reach);
-    quotient.push(term);
-    rest = subtract(rest, multiplyTerm(q, term));
-  }
-  return quotient.length === 0 ? rest : quotient.reduce((a, b) => subtract(a, scale(b, -1)));
-}
-
-function multiplyTerm(q: Poly, term: Poly): Poly {
-  const keys = q.keys.map((k, i) => k + term.keys[i % q.ring.words]!);
-  const factor = rational(BigInt(term.numerators[0]!), term.denominator);
-  return scale(normalise(q.ring, keys, q.numerators, q.denominator, q.reach + term.reach), factor);
-}
-
-/** Number of terms, then infix-independent canonical order: a stable way to put simple polynomials first. */
+/** Total order of polynomials of one ring that puts simple ones first: by number of terms, of factors, then canonical. */
 export function compareSimplicity(a: Poly, b: Poly): number {
   if (a.size !== b.size) return a.size - b.size;
   const weight = (p: Poly) => termsOf(p).reduce((n, t) => n + t.exponents.length, 0);
   const d = weight(a) - weight(b);
   if (d !== 0) return d;
+  const { words } = a.ring;
   for (let i = 0; i < a.size; i++) {
-    const c = compareKeys(b.keys, i * a.ring.words, a.keys, i * a.ring.words, a.ring.words);
+    const c = compareKeys(b.keys, i * words, a.keys, i * words, words);
     if (c !== 0) return c;
+  }
+  for (let i = 0; i < a.size; i++) {
+    const c = BigInt(b.numerators[i]!) * a.denominator - BigInt(a.numerators[i]!) * b.denominator;
+    if (c !== 0n) return c < 0n ? -1 : 1;
   }
   return 0;
 }

@@ -2,19 +2,22 @@
  * Sparse Laurent polynomials with exact rational coefficients: integer numerators over one common denominator.
  * Invariant (`isCanonical`): monomials strictly descending, no zero coefficient, numerators and denominator without a
  * common factor, numerators in doubles exactly when all of them are safe integers, radicals only to the powers 0 and 1.
+ * Imports only exact rationals, rings and term tables.
  */
 import { gcd, type Rational, rational } from './rational.js';
 import {
   ExponentLimitError,
   exponentAt,
+  exponentRange,
   MAX_EXPONENT,
+  packMonomial,
   positionOf,
   type Ring,
   unpackMonomial,
   weightOf,
   wordOf,
 } from './ring.js';
-import { compareKeys, TermTable } from './terms.js';
+import { compareKeys, mergeBigs, mergeDoubles, TermTable } from './terms.js';
 
 /** Numerators: doubles while all are safe integers, BigInts beyond. */
 export type Numerators = Float64Array | readonly bigint[];
@@ -38,7 +41,7 @@ const BIG_SAFE = BigInt(SAFE);
 const isBig = (n: Numerators): n is readonly bigint[] => !(n instanceof Float64Array);
 const toBig = (n: Numerators): readonly bigint[] => (isBig(n) ? n : Array.from(n, BigInt));
 
-/** Largest absolute numerator as a double (an upper bound to one rounding for BigInts). */
+/** Largest absolute numerator while all are safe integers, else infinity. */
 export function height(p: Poly): number {
   let h = 0;
   if (isBig(p.numerators)) return Number.POSITIVE_INFINITY;
@@ -47,7 +50,7 @@ export function height(p: Poly): number {
 }
 
 function build(ring: Ring, keys: Float64Array, numerators: Numerators, denominator: bigint, reach: number): Poly {
-  return { ring, size: numerators.length, keys, numerators, denominator, reach };
+  return Object.freeze({ ring, size: numerators.length, keys, numerators, denominator, reach });
 }
 
 /** Cancels common factors and chooses the representation of numerators. Monomials must be canonical already. */
@@ -96,30 +99,34 @@ export function constant(ring: Ring, value: Rational | number): Poly {
 
 /**
  * One generator to an integer power.
- * @throws Error for an unknown name; ExponentLimitError beyond ±511.
+ * @throws Error for an unknown name; RangeError for an exponent that is no integer; ExponentLimitError beyond ±511.
  */
 export function generator(ring: Ring, name: string, exponent = 1): Poly {
   return monomial(ring, rational(1), [[name, exponent]]);
 }
 
-/** coefficient · Π name^exponent. @throws as `generator`. */
+/** coefficient · Π name^exponent; names may repeat. @throws as `generator`. */
 export function monomial(
   ring: Ring,
   coefficient: Rational,
   powers: Iterable<readonly [name: string, exponent: number]>,
 ): Poly {
   if (coefficient.num === 0n) return zero(ring);
-  const keys = new Float64Array(ring.words);
-  let reach = 0;
-  for (const [name, exponent] of powers) {
-    const g = positionOf(ring, name);
-    const total = exponentAt(keys, 0, g) + exponent;
-    if (Math.abs(total) > MAX_EXPONENT) throw new ExponentLimitError();
-    keys[wordOf(g)]! += exponent * weightOf(g);
-    reach = Math.max(reach, Math.abs(total), Math.abs(exponent));
+  const exponents = new Array<number>(ring.generators.length).fill(0);
+  for (const [name, exponent] of powers) exponents[positionOf(ring, name)]! += integer(exponent);
+  // A radical may occur to a power beyond the limit that its square stays below.
+  for (const [r, square] of ring.radicals) {
+    exponents[square]! += Math.floor(exponents[r]! / 2);
+    exponents[r] = exponents[r]! & 1;
   }
-  const p = normalise(ring, keys, [coefficient.num], coefficient.den, reach);
-  return ring.radicals.length > 0 ? reduceRadicals(p) : p;
+  let reach = 0;
+  for (const e of exponents) reach = Math.max(reach, Math.abs(e));
+  return normalise(ring, packMonomial(ring, exponents), [coefficient.num], coefficient.den, reach);
+}
+
+function integer(n: number): number {
+  if (!Number.isSafeInteger(n)) throw new RangeError(`an exponent must be an integer, not ${n}`);
+  return n;
 }
 
 export const isZero = (p: Poly): boolean => p.size === 0;
@@ -146,53 +153,13 @@ function merge(a: Poly, b: Poly, sign: 1 | -1): Poly {
   const shared = a.denominator === b.denominator ? 1n : gcd(a.denominator, b.denominator);
   const denominator =
     shared === 1n && a.denominator === b.denominator ? a.denominator : (a.denominator / shared) * b.denominator;
-  let na = scaled(a, denominator / a.denominator);
-  let nb = scaled(b, (denominator / b.denominator) * BigInt(sign));
+  const na = scaled(a, denominator / a.denominator);
+  const nb = scaled(b, sign === 1 ? denominator / b.denominator : -denominator / b.denominator);
   const keys = new Float64Array((a.size + b.size) * words);
-  const left = new Int32Array(a.size + b.size);
-  const right = new Int32Array(a.size + b.size);
-  let n = 0;
-  let i = 0;
-  let j = 0;
-  while (i < a.size || j < b.size) {
-    const c = i >= a.size ? -1 : j >= b.size ? 1 : compareKeys(a.keys, i * words, b.keys, j * words, words);
-    const source = c >= 0 ? a.keys : b.keys;
-    const base = (c >= 0 ? i : j) * words;
-    for (let w = 0; w < words; w++) keys[n * words + w] = source[base + w]!;
-    left[n] = c >= 0 ? i++ : -1;
-    right[n] = c <= 0 ? j++ : -1;
-    n++;
-  }
-  if (!isBig(na) && !isBig(nb)) {
-    const sums = new Float64Array(n);
-    let safe = true;
-    for (let t = 0; t < n; t++) {
-      const s = (left[t]! >= 0 ? na[left[t]!]! : 0) + (right[t]! >= 0 ? nb[right[t]!]! : 0);
-      sums[t] = s;
-      // A sum of two safe integers that rounds to a safe integer was exact.
-      if (s > SAFE || s < -SAFE) safe = false;
-    }
-    if (safe) return compress(a, keys, sums, n, denominator, Math.max(a.reach, b.reach));
-  }
-  na = toBig(na);
-  nb = toBig(nb);
-  const sums: bigint[] = [];
-  for (let t = 0; t < n; t++) sums.push((left[t]! >= 0 ? na[left[t]!]! : 0n) + (right[t]! >= 0 ? nb[right[t]!]! : 0n));
-  return compress(a, keys, sums, n, denominator, Math.max(a.reach, b.reach));
-}
-
-function compress(of: Poly, keys: Float64Array, sums: Numerators, n: number, denominator: bigint, reach: number): Poly {
-  const words = of.ring.words;
-  let m = 0;
-  const kept = isBig(sums) ? ([] as bigint[]) : new Float64Array(n);
-  for (let t = 0; t < n; t++) {
-    const s = sums[t]!;
-    if (s === 0 || s === 0n) continue;
-    if (m !== t) keys.copyWithin(m * words, t * words, (t + 1) * words);
-    (kept as (number | bigint)[])[m++] = s;
-  }
-  const numerators = kept instanceof Float64Array ? kept.slice(0, m) : kept;
-  return normalise(of.ring, keys.slice(0, m * words), numerators, denominator, reach);
+  const small = isBig(na) || isBig(nb) ? undefined : mergeDoubles(words, a.keys, na, b.keys, nb, keys);
+  const sums = small ?? mergeBigs(words, a.keys, toBig(na), b.keys, toBig(nb), keys);
+  const n = sums.length * words;
+  return normalise(a.ring, n === keys.length ? keys : keys.slice(0, n), sums, denominator, Math.max(a.reach, b.reach));
 }
 
 export const add = (a: Poly, b: Poly): Poly => merge(a, b, 1);
@@ -211,18 +178,18 @@ export function scale(p: Poly, factor: Rational | number): Poly {
   return normalise(p.ring, p.keys, scaled(p, f.num), p.denominator * f.den, p.reach);
 }
 
-/** Least bound on the absolute exponents. */
-function exactReach(p: Poly): number {
-  let r = 0;
-  for (let i = 0; i < p.size; i++)
-    for (const e of unpackMonomial(p.ring, p.keys, i * p.ring.words)) r = Math.max(r, Math.abs(e));
-  return r;
-}
-
-/** Bound on the exponents of a product. @throws ExponentLimitError beyond ±511. */
+/**
+ * Bound on the exponents of a product. Extreme exponents of two non-zero factors add up exactly, because a ring without
+ * divisors of zero cancels no extreme part; so nothing is refused that would fit. @throws ExponentLimitError beyond ±511.
+ */
 function productReach(a: Poly, b: Poly): number {
   if (a.reach + b.reach <= MAX_EXPONENT) return a.reach + b.reach;
-  const reach = exactReach(a) + exactReach(b);
+  const of = exponentRange(a.ring, a.keys);
+  const by = exponentRange(b.ring, b.keys);
+  let reach = 0;
+  of.low.forEach((low, g) => {
+    reach = Math.max(reach, Math.abs(low + by.low[g]!), Math.abs(of.high[g]! + by.high[g]!));
+  });
   if (reach > MAX_EXPONENT) throw new ExponentLimitError();
   return reach;
 }
@@ -273,16 +240,36 @@ export function multiply(a: Poly, b: Poly): Poly {
 
 /**
  * p^n for an integer n; negative only for a single term.
- * @throws RangeError for a negative power of zero or of a sum; ExponentLimitError beyond ±511.
+ * @throws RangeError for an exponent that is no integer and for a negative power of zero or of a sum;
+ * ExponentLimitError beyond ±511.
  */
 export function power(p: Poly, n: number): Poly {
-  if (n < 0) {
+  if (integer(n) < 0) {
     if (p.size !== 1) throw new RangeError(p.size === 0 ? 'division by zero' : 'a sum has no inverse in this ring');
     return power(invertMonomial(p), -n);
   }
+  if (p.size === 1) return powerOfMonomial(p, n);
+  refuseLongPower(p, n);
   let result = constant(p.ring, 1);
-  for (let i = 0; i < n; i++) result = multiply(result, p);
-  return result;
+  for (let i = 0; i < n && p.size > 0; i++) result = multiply(result, p);
+  return n > 0 && p.size === 0 ? p : result;
+}
+
+/** By squaring, which for sums of several terms would cost more than it saves. */
+function powerOfMonomial(p: Poly, n: number): Poly {
+  if (n < 2) return n === 0 ? constant(p.ring, 1) : p;
+  const half = powerOfMonomial(p, Math.floor(n / 2));
+  const square = multiply(half, half);
+  return n % 2 === 0 ? square : multiply(square, p);
+}
+
+/** Refuses before the work what would be refused at its end; the exponents of radicals do not grow. */
+function refuseLongPower(p: Poly, n: number): void {
+  if (n * p.reach <= MAX_EXPONENT) return;
+  const { low, high } = exponentRange(p.ring, p.keys);
+  p.ring.generators.forEach((g, i) => {
+    if (g.kind !== 'radical' && n * Math.max(-low[i]!, high[i]!) > MAX_EXPONENT) throw new ExponentLimitError();
+  });
 }
 
 function invertMonomial(p: Poly): Poly {
@@ -290,7 +277,7 @@ function invertMonomial(p: Poly): Poly {
   const sign = num < 0n ? -1n : 1n;
   const inverse = normalise(
     p.ring,
-    p.keys.map((w) => -w),
+    p.keys.map((w) => 0 - w),
     [p.denominator * sign],
     num * sign,
     p.reach,
@@ -346,6 +333,9 @@ function reduceRadicals(p: Poly): Poly {
   return normalise(ring, keys, coefficients, p.denominator, reach);
 }
 
+/** Coefficient of the highest monomial of a polynomial that is not zero. */
+export const leadingCoefficient = (p: Poly): Rational => rational(BigInt(p.numerators[0]!), p.denominator);
+
 /** One term, unpacked: its rational coefficient and the non-zero exponents by generator position. */
 export interface Term {
   readonly coefficient: Rational;
@@ -370,6 +360,7 @@ export function isCanonical(p: Poly): boolean {
   const { ring, keys, numerators, denominator } = p;
   const { words } = ring;
   if (keys.length !== p.size * words || numerators.length !== p.size || denominator < 1n) return false;
+  if (p.reach > MAX_EXPONENT || (!isBig(numerators) && !numerators.every(Number.isSafeInteger))) return false;
   let g = denominator;
   for (let i = 0; i < p.size; i++) {
     const c = BigInt(numerators[i]!);
@@ -377,7 +368,10 @@ export function isCanonical(p: Poly): boolean {
     g = gcd(g, c);
     if (i > 0 && compareKeys(keys, (i - 1) * words, keys, i * words, words) <= 0) return false;
     if (ring.radicals.some(([r]) => ![0, 1].includes(exponentAt(keys, i * words, r)))) return false;
-    if (unpackMonomial(ring, keys, i * words).some((e) => Math.abs(e) > p.reach)) return false;
+    const exponents = unpackMonomial(ring, keys, i * words);
+    if (exponents.some((e) => Math.abs(e) > p.reach)) return false;
+    // Also refuses a negative zero, and digits that belong to no generator.
+    if (!packMonomial(ring, exponents).every((w, at) => Object.is(w, keys[i * words + at]))) return false;
   }
   const allSafe = toBig(numerators).every((c) => c <= BIG_SAFE && c >= -BIG_SAFE);
   return g === 1n && isBig(numerators) !== allSafe && (p.size > 0 || denominator === 1n);

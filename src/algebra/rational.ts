@@ -55,13 +55,33 @@ export function powerRational(a: Rational, n: number): Rational {
 /** Text `p` or `p/q`; what it prints is read back by the expression grammar of docs/formats.md. */
 export const printRational = (a: Rational): string => (a.den === 1n ? `${a.num}` : `${a.num}/${a.den}`);
 
-/** Nearest double. Exact to one rounding also when numerator or denominator exceed the range of doubles. */
+/** Bits of a positive integer. */
+const bitsOf = (a: bigint): number => {
+  const hex = a.toString(16);
+  return 4 * hex.length - Math.clz32(Number.parseInt(hex[0]!, 16)) + 28;
+};
+
+/** Bits of a double's significand, and the exponent of its least positive value. */
+const SIGNIFICAND = 53;
+const SMALLEST = -1074;
+
+/** The nearest double, ties to even; ±Infinity and 0 beyond the range of doubles. */
 export function toNumber(a: Rational): number {
   const n = Number(a.num);
   const d = Number(a.den);
-  if (Number.isFinite(n) && Number.isFinite(d)) return n / d;
-  const shift = BigInt(Math.max(0, a.num.toString(2).length, a.den.toString(2).length) - 1000);
-  return Number(a.num >> shift) / Number(a.den >> shift);
+  if (Number.isSafeInteger(n) && Number.isSafeInteger(d)) return n / d;
+  const size = a.num < 0n ? -a.num : a.num;
+  // The quotient of size · 2^shift by den fills a significand exactly; near the smallest double it is shorter.
+  let shift = SIGNIFICAND + bitsOf(a.den) - bitsOf(size);
+  if (size << BigInt(Math.max(shift, 0)) >= (a.den << BigInt(SIGNIFICAND)) << BigInt(Math.max(-shift, 0))) shift--;
+  shift = Math.min(shift, -SMALLEST);
+  const top = size << BigInt(Math.max(shift, 0));
+  const bottom = a.den << BigInt(Math.max(-shift, 0));
+  const down = top / bottom;
+  const twiceRest = 2n * (top % bottom);
+  const up = twiceRest > bottom || (twiceRest === bottom && (down & 1n) === 1n);
+  const magnitude = Number(up ? down + 1n : down) * 2 ** -shift;
+  return a.num < 0n ? -magnitude : magnitude;
 }
 
 /** Whether the pair is in lowest terms with a positive denominator. */

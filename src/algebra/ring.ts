@@ -27,7 +27,7 @@ export interface SourceGenerator {
   readonly exponents: ReadonlyMap<string, Rational>;
 }
 
-/** A constant s with s² = another generator. */
+/** A constant s with s² = a constant of the ring. */
 export interface RadicalGenerator {
   readonly kind: 'radical';
   readonly name: string;
@@ -56,6 +56,7 @@ const WEIGHTS = [BASE ** 4, BASE ** 3, BASE ** 2, BASE, 1];
 export class ExponentLimitError extends RangeError {
   constructor() {
     super(`an exponent beyond ${MAX_EXPONENT} would be needed`);
+    this.name = 'ExponentLimitError';
   }
 }
 
@@ -76,7 +77,8 @@ export const constantsOf = (names: Iterable<string>): ConstantGenerator[] =>
 
 /**
  * A ring over the given generators; the first is the most significant in the order of monomials.
- * @throws Error when a name occurs twice or a radical's square is missing.
+ * @throws Error when a name occurs twice, a radical's square is no constant of the ring or is that of another radical
+ * (the ring would have divisors of zero), or a source depends on a field that is missing.
  */
 export function makeRing(generators: readonly Generator[]): Ring {
   const position = new Map(generators.map((g, i) => [g.name, i]));
@@ -86,12 +88,20 @@ export function makeRing(generators: readonly Generator[]): Ring {
     if (i === undefined) throw new Error(`no generator ${name} in the ring`);
     return i;
   };
+  const radicals = generators.flatMap((g, i) => (g.kind === 'radical' ? [[i, at(g.square)] as const] : []));
+  for (const [, square] of radicals)
+    if (generators[square]!.kind !== 'constant') throw new Error(`${generators[square]!.name} is no constant`);
+  if (new Set(radicals.map(([, square]) => square)).size !== radicals.length)
+    throw new Error('two radicals have the same square');
+  for (const g of generators) if (g.kind === 'source') for (const field of g.exponents.keys()) at(field);
   return Object.freeze({
     generators: Object.freeze([...generators]),
     words: Math.max(1, Math.ceil(generators.length / DIGITS)),
     position,
-    next: generators.map((g) => (g.kind === 'jet' ? (position.get(jetName(g.field, g.order + 1)) ?? -1) : -1)),
-    radicals: generators.flatMap((g, i) => (g.kind === 'radical' ? [[i, at(g.square)] as const] : [])),
+    next: Object.freeze(
+      generators.map((g) => (g.kind === 'jet' ? (position.get(jetName(g.field, g.order + 1)) ?? -1) : -1)),
+    ),
+    radicals: Object.freeze(radicals),
   });
 }
 
@@ -128,4 +138,27 @@ export function unpackMonomial(ring: Ring, keys: Float64Array, offset: number): 
     }
   }
   return exponents;
+}
+
+/** Least and greatest exponent of each generator among the monomials of a list; all zero for an empty list. */
+export function exponentRange(ring: Ring, keys: Float64Array): { low: Int16Array; high: Int16Array } {
+  const low = keys.length > 0 ? unpackMonomial(ring, keys, 0) : new Int16Array(ring.generators.length);
+  const high = low.slice();
+  for (let offset = ring.words; offset < keys.length; offset += ring.words)
+    unpackMonomial(ring, keys, offset).forEach((e, g) => {
+      if (e < low[g]!) low[g] = e;
+      if (e > high[g]!) high[g] = e;
+    });
+  return { low, high };
+}
+
+/** The packed form of exponents given in the order of the generators. @throws ExponentLimitError beyond ±511. */
+export function packMonomial(ring: Ring, exponents: ArrayLike<number>): Float64Array {
+  const keys = new Float64Array(ring.words);
+  for (let g = 0; g < exponents.length; g++) {
+    const e = exponents[g]!;
+    if (e > MAX_EXPONENT || e < -MAX_EXPONENT) throw new ExponentLimitError();
+    keys[wordOf(g)]! += e * weightOf(g);
+  }
+  return keys;
 }

@@ -1,16 +1,19 @@
 /**
- * Tables that collect monomials with their coefficients: open addressing over packed exponent words.
- * A table counts either in doubles (the caller has bounded every sum below 2^53) or in BigInts.
+ * Lists of packed monomials with their coefficients: a table that collects them, and the merging of two sorted lists.
+ * Coefficients are doubles (the caller has bounded every sum below 2^53) or BigInts. Imports nothing.
  */
 
 const EMPTY = -1;
 
-/** Accumulates coefficients by monomial. Fill `key`, call `slot()`, then add to `numbers[slot]` or `bigs[slot]`. */
+/**
+ * Accumulates coefficients by monomial, by open addressing over packed exponent words.
+ * Fill `key`, call `slot()`, then add to `numbers[slot]` or `bigs[slot]`.
+ */
 export class TermTable {
   readonly words: number;
   /** Scratch: the monomial that the next `slot()` looks up. */
   readonly key: Float64Array;
-  /** Coefficients when the table counts in doubles. */
+  /** Coefficients when the table counts in doubles. Growing replaces the array: read it after `slot()`. */
   numbers: Float64Array;
   /** Coefficients when the table counts in BigInts. */
   readonly bigs: bigint[] | undefined;
@@ -119,4 +122,58 @@ export function compareKeys(a: Float64Array, i: number, b: Float64Array, j: numb
     if (d !== 0) return d;
   }
   return 0;
+}
+
+/**
+ * Merges two descending lists and drops sums that vanish. Monomials are written to `out`, the sums returned;
+ * undefined when a sum leaves the range of safe integers.
+ */
+export function mergeDoubles(
+  words: number,
+  ka: Float64Array,
+  a: Float64Array,
+  kb: Float64Array,
+  b: Float64Array,
+  out: Float64Array,
+): Float64Array | undefined {
+  const sums = new Float64Array(a.length + b.length);
+  let n = 0;
+  let i = 0;
+  let j = 0;
+  while (i < a.length || j < b.length) {
+    const c = i >= a.length ? -1 : j >= b.length ? 1 : compareKeys(ka, i * words, kb, j * words, words);
+    const source = c >= 0 ? ka : kb;
+    const base = (c >= 0 ? i : j) * words;
+    const s = c > 0 ? a[i++]! : c < 0 ? b[j++]! : a[i++]! + b[j++]!;
+    if (s === 0) continue;
+    // A sum of two safe integers that rounds to a safe integer was exact.
+    if (s > Number.MAX_SAFE_INTEGER || s < -Number.MAX_SAFE_INTEGER) return undefined;
+    for (let w = 0; w < words; w++) out[n * words + w] = source[base + w]!;
+    sums[n++] = s;
+  }
+  return n === sums.length ? sums : sums.slice(0, n);
+}
+
+/** As `mergeDoubles`, for any size of coefficient. */
+export function mergeBigs(
+  words: number,
+  ka: Float64Array,
+  a: readonly bigint[],
+  kb: Float64Array,
+  b: readonly bigint[],
+  out: Float64Array,
+): bigint[] {
+  const sums: bigint[] = [];
+  let i = 0;
+  let j = 0;
+  while (i < a.length || j < b.length) {
+    const c = i >= a.length ? -1 : j >= b.length ? 1 : compareKeys(ka, i * words, kb, j * words, words);
+    const source = c >= 0 ? ka : kb;
+    const base = (c >= 0 ? i : j) * words;
+    const s = c > 0 ? a[i++]! : c < 0 ? b[j++]! : a[i++]! + b[j++]!;
+    if (s === 0n) continue;
+    out.set(source.subarray(base, base + words), sums.length * words);
+    sums.push(s);
+  }
+  return sums;
 }
