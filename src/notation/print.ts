@@ -39,7 +39,8 @@ const GREEK_TEXT = 'αβγδεζηθικλμνξοπρστυφχψωεϑϖϱςφ
 const GREEK_LETTER: ReadonlyMap<string, string> = new Map(GREEK.map((name, i) => [name, [...GREEK_TEXT][i]!]));
 /** The Greek letter of that TeX name, or the text unchanged. */
 const greek = (text: string): string => GREEK_LETTER.get(text) ?? text;
-const superscript = (n: number): string =>
+/** An integer as a Unicode exponent. */
+export const superscript = (n: number): string =>
   [...`${n}`].map((c) => (c === '-' ? '⁻' : '⁰¹²³⁴⁵⁶⁷⁸⁹'[Number(c)]!)).join('');
 
 const UNICODE: Style = {
@@ -50,6 +51,9 @@ const UNICODE: Style = {
   head: greek,
   index: (name) => (name.startsWith('\\') ? greek(name.slice(1)) : name),
 };
+
+/** A declared name in Unicode: `alpha_1` as α_1. */
+export const unicodeName: (name: string) => string = UNICODE.symbol;
 
 function latexStyle(symbols: readonly TheorySymbol[]): Style {
   const latex = new Map(symbols.map((s) => [s.name, s.latex]));
