@@ -51,3 +51,9 @@ export function commentText(text: string): string {
     .replaceAll('//', '/ /')
     .trim();
 }
+
+/** A string literal, in double quotes; characters that a screen does not show or that reverse the text are escaped. */
+export const stringLiteral = (text: string): string =>
+  JSON.stringify(text).replace(/[\p{Cf}\p{Zl}\p{Zp}\p{Cc}]/gu, (c) =>
+    [...Array(c.length).keys()].map((i) => `\\u${c.charCodeAt(i).toString(16).padStart(4, '0')}`).join(''),
+  );

@@ -6,7 +6,7 @@ import { select } from '../algebra/collect.js';
 import type { Fraction } from '../algebra/fraction.js';
 import type { Poly } from '../algebra/poly.js';
 import type { BiScalarForm, Derivation, FriedmannForm } from '../derivation.js';
-import { commentText, propertyKey } from './identifiers.js';
+import { commentText, propertyKey, stringLiteral } from './identifiers.js';
 import { dimensionsIn, dimensionsOf, modelParameters, type Parameter } from './parameters.js';
 import { type Body, functionBody, type Output, wrapped } from './typescript-body.js';
 import { type JetOrders, jetOrders, tupleType } from './typescript-jets.js';
@@ -74,19 +74,14 @@ const header = (d: Derivation): string =>
   ]);
 
 /** An array literal of strings. */
-const strings = (names: readonly string[]): string =>
-  `[${wrapped(
-    names.map((n) => JSON.stringify(n)),
-    '',
-    '',
-  )}] as const`;
+const strings = (names: readonly string[]): string => `[${wrapped(names.map(stringLiteral), '', '')}] as const`;
 
 function constants({ derivation: d, parameters }: Writer): string {
   const sources = parameters.filter((p) => p.isSource).map((p) => p.name);
   const one = (about: string, name: string, value: string) => `/** ${about} */\nexport const ${name} = ${value};`;
   return [
-    one('Name of the theory.', 'theory', JSON.stringify(d.theory.name)),
-    one('Geometry on which it was reduced.', 'geometry', JSON.stringify(d.geometry.id)),
+    one('Name of the theory.', 'theory', stringLiteral(d.theory.name)),
+    one('Geometry on which it was reduced.', 'geometry', stringLiteral(d.geometry.id)),
     one(
       'Functions of time that are varied, in the order of the equations.',
       'variables',
