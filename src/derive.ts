@@ -4,7 +4,7 @@
  */
 
 import { eulerLagrange, timeDerivative } from './algebra/calculus.js';
-import { moveTo } from './algebra/collect.js';
+import { moveTo, symbolsOf } from './algebra/collect.js';
 import { fraction } from './algebra/fraction.js';
 import { remember } from './algebra/memo.js';
 import { add, equals, generator, isZero, monomial, multiply, negate, type Poly, scale, sum } from './algebra/poly.js';
@@ -120,7 +120,7 @@ export function derive(theory: Theory, onStep: (what: string) => void = () => {}
     reducedGravity: fix(reduced),
     dropped: fix(primitive),
     equations: new Map([...equations].map(([q, e]) => [q, fix(e)])),
-    combinations: couplingCombinations(fix(reduced), parameters, scales),
+    combinations: couplingCombinations(fix(reduced), parameters, scales).filter((p) => symbolsOf(p).length > 0),
     screening: curvature === undefined ? undefined : screeningConditions(reduced, curvature, parameters, scales),
     friedmann: friedmann && fixFriedmann(friedmann, fix),
     // The form speaks about other values of k too, so a value imposed on k is not put into its obstruction.

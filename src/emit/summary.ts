@@ -1,6 +1,7 @@
 /** What `untwist derive` prints: the theory as understood and its main results, in Unicode mathematics. */
 import Table from 'cli-table3';
 import picocolors from 'picocolors';
+import { symbolsOf } from '../algebra/collect.js';
 import { isZero, type Poly } from '../algebra/poly.js';
 import type { Derivation } from '../derivation.js';
 import type { FactoredFunction } from '../factored.js';
@@ -80,14 +81,16 @@ export function summary(d: Derivation, options: SummaryOptions): string {
   );
   section('Combinations of couplings that the background sees', d.combinations.map(scalar));
   if (d.screening)
-    section('Spatial curvature', [
-      d.screening.length === 0
-        ? 'k drops out of the equations'
-        : `k drops out exactly when ${d.screening.map((p) => `${scalar(p)} = 0`).join(' and ')}`,
-    ]);
+    section('Spatial curvature', [screeningText(d.screening, d.geometry.isotropic?.curvature ?? 'k', scalar)]);
   const failed = d.checks.filter((c) => !c.holds).length;
   section('Checks', [failed === 0 ? `all ${d.checks.length} hold` : `${failed} of ${d.checks.length} fail`]);
   return `${out.join('\n')}\n`;
+}
+
+function screeningText(conditions: readonly Poly[], k: string, scalar: (p: Poly) => string): string {
+  if (conditions.length === 0) return `${k} drops out of the equations`;
+  if (conditions.some((p) => symbolsOf(p).length === 0)) return `${k} cannot drop out, whatever the couplings`;
+  return `${k} drops out exactly when ${conditions.map((p) => `${scalar(p)} = 0`).join(' and ')}`;
 }
 
 function invariantTable(d: Derivation): string[] {
