@@ -3,7 +3,7 @@
  * the passage (by an InputError); faults of meaning, such as an unknown symbol, are collected and parsing goes on.
  */
 import { type Diagnostic, errorAt, InputError } from './diagnostics.js';
-import { MAX_NESTING } from './limits.js';
+import { MAX_DIAGNOSTICS, MAX_NESTING } from './limits.js';
 import type { Passage } from './passage.js';
 import type { Span } from './syntax.js';
 import { clip, type Token } from './tokens.js';
@@ -14,6 +14,7 @@ export class Cursor {
   private readonly problems: Diagnostic[];
   private position = 0;
   private depth = 0;
+  private readonly reported = new Set<string>();
 
   constructor(passage: Passage, tokens: readonly Token[], problems: Diagnostic[]) {
     this.passage = passage;
@@ -83,9 +84,24 @@ export class Cursor {
     return clip(this.passage.text.slice(span.start, span.end).replace(/\s+/g, ' '));
   }
 
+  /** Whether this is the first time that the passage is asked about a name; an unknown name is reported once. */
+  isNews(name: string): boolean {
+    const news = !this.reported.has(name);
+    this.reported.add(name);
+    return news;
+  }
+
+  /** Whether the bracket that opens `ahead` places further on has no closing mark behind it. */
+  isOpenForGood(ahead: number, closing: string): boolean {
+    for (let n = ahead; this.peek(n).kind !== 'end'; n++) if (this.isMark(closing, n)) return false;
+    return true;
+  }
+
   /** Adds an error and goes on. */
   report(code: string, span: Span, message: string, hint?: string): void {
     this.problems.push(errorAt(this.passage.locate(span.start, span.end), code, message, hint));
+    // More would not be shown, and looking for suggestions takes time.
+    if (this.problems.length > MAX_DIAGNOSTICS) throw new InputError([]);
   }
 
   /** Stops the parsing of this passage. */

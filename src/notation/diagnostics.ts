@@ -78,7 +78,8 @@ const harmless = (text: string): string =>
 function excerpt(source: string, start: number, end: number): { line: string; caret: string } {
   const from = source.lastIndexOf('\n', start - 1) + 1;
   const newline = source.indexOf('\n', start);
-  const to = newline === -1 ? source.length : newline;
+  let to = newline === -1 ? source.length : newline;
+  if (source[to - 1] === '\r' && to > start) to--;
   const left = Math.max(from, start - WINDOW);
   const right = Math.min(to, Math.max(start + WINDOW, Math.min(end, start + WINDOW)));
   const before = (left > from ? '…' : '') + source.slice(left, start);

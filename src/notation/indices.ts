@@ -30,15 +30,19 @@ class IndexChecker {
   }
 
   requireScalar(free: Free): void {
-    for (const slot of free?.values() ?? []) {
-      const message = `index ${slot.name} is free: it occurs once in its term`;
-      this.report(
-        'free-index',
-        slot,
-        message,
-        `the Lagrangian is a scalar; contract ${slot.name} with one ${other(slot)}`,
-      );
-    }
+    const [first, ...more] = free?.values() ?? [];
+    if (first === undefined) return;
+    const names = [first, ...more].map((slot) => slot.name).join(', ');
+    const message =
+      more.length === 0
+        ? `index ${names} is free: it occurs once in its term`
+        : `indices ${names} are free: each occurs once in its term`;
+    this.report(
+      'free-index',
+      first,
+      message,
+      `the Lagrangian is a scalar; contract ${first.name} with one ${other(first)}`,
+    );
   }
 
   free(node: Expression): Free {

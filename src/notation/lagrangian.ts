@@ -8,6 +8,7 @@ import { checkIndices } from './indices.js';
 import { reservedMeaning } from './names.js';
 import { parseExpression } from './parser.js';
 import type { Passage } from './passage.js';
+import { printLagrangian } from './print.js';
 import type { Expression } from './syntax.js';
 import type { LagrangianTerm, TensorHead, TheorySymbol } from './theory.js';
 import { clip } from './tokens.js';
@@ -74,8 +75,8 @@ function dimensionWarnings(
   for (const summand of summands) {
     const off = expand(summand, passage).find(isOff);
     if (off === undefined) continue;
-    const typed = clip(passage.text.slice(summand.start, summand.end).replace(/\s+/g, ' '));
-    const message = `${typed} has mass dimension ${dimensionOf(off, dimensions)}, a Lagrangian has 4`;
+    const typed = clip(printLagrangian([off], { symbols }));
+    const message = `the term ${typed} has mass dimension ${dimensionOf(off, dimensions)}, a Lagrangian has 4`;
     const hint = 'multiply by a scale such as M^2, or declare the dimension of its constant: { b1: mass^2 }';
     return [warningAt(passage.locate(summand.start, summand.end), 'mass-dimension', message, hint)];
   }

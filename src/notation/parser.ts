@@ -71,7 +71,8 @@ function attempt<T>(passage: Passage, problems: Diagnostic[], parse: (cursor: Cu
   const found: Diagnostic[] = [];
   const tokens = tokenize(passage, found);
   let value: T | undefined;
-  if (found.length === 0) {
+  // A decimal point leaves a number in place, so the rest can still be looked at.
+  if (found.every((problem) => problem.code === 'decimal-point')) {
     try {
       value = parse(new Cursor(passage, tokens, found));
     } catch (error) {
@@ -124,7 +125,7 @@ function parseProduct(cursor: Cursor, vocabulary: Vocabulary): Expression {
   for (;;) {
     const operator = cursor.isMark('*') || cursor.isMark('/') ? cursor.next() : undefined;
     if (operator === undefined && !startsFactor(cursor.token)) break;
-    if (operator?.text === '*' && cursor.isMark('*')) {
+    if (operator?.text === '*' && cursor.isMark('*') && cursor.token.start === operator.end) {
       cursor.fail(
         'unexpected-token',
         { start: operator.start, end: cursor.token.end },
@@ -167,6 +168,7 @@ function parsePower(cursor: Cursor, vocabulary: Vocabulary): Expression {
     }
   }
   if (cursor.isMark('_')) {
+    if (cursor.isMark('{', 1) && cursor.isOpenForGood(1, '}')) unclosed(cursor, cursor.peek(1));
     const message = `${cursor.typed(base)} cannot carry indices`;
     const hint =
       base.kind === 'power'
@@ -250,7 +252,8 @@ function parsePrimary(cursor: Cursor, vocabulary: Vocabulary): Expression {
   const at = token.kind === 'end' ? { start: Math.max(0, cursor.lastEnd - 1), end: cursor.lastEnd } : token;
   if (CLOSERS.has(token.text) && cursor.lastEnd === 0) expectEnd(cursor);
   const message = token.kind === 'end' ? 'the expression ends too early' : `unexpected ${cursor.describe(token)}`;
-  return cursor.fail('missing-factor', at, message, 'expected a number, a name, a tensor or a bracket');
+  const hint = token.text === '_' ? 'a name begins with a letter' : 'expected a number, a name, a tensor or a bracket';
+  return cursor.fail('missing-factor', at, message, hint);
 }
 
 function macroHint(name: string): string {

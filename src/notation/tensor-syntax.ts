@@ -34,13 +34,13 @@ export function parseTensor(cursor: Cursor, head: TensorHead, begun: Begun): Exp
         if (powerThenIndices(cursor)) refuseIndicesAfterPower(cursor, begun);
         break;
       }
-      parseGroup(cursor, slots);
+      parseGroup(cursor, slots, begun);
     } else if (cursor.isMark('{') && cursor.isMark('}', 1)) {
       cursor.skip(2);
     } else if (cursor.isMark('{') && (cursor.isMark('^', 1) || cursor.isMark('_', 1))) {
       // T{^a}{_{bc}}: braces around each group of indices, as some styles write it.
       const opening = cursor.next();
-      while (cursor.isMark('^') || cursor.isMark('_')) parseGroup(cursor, slots);
+      while (cursor.isMark('^') || cursor.isMark('_')) parseGroup(cursor, slots, begun);
       if (!cursor.accept('}')) cursor.fail('unbalanced-bracket', opening, '{ is never closed', 'add the closing }');
     } else break;
   }
@@ -51,6 +51,16 @@ export function parseTensor(cursor: Cursor, head: TensorHead, begun: Begun): Exp
   return { kind: 'tensor', head, slots, ...span };
 }
 
+/** What the head is, for a hint. */
+const FORMS: Readonly<Record<TensorHead, string>> = {
+  R: 'R_{abcd} is the curvature, R_{ab} its trace, R the scalar',
+  T: 'T_{abc} is the torsion, T_a its trace',
+  A: 'A_a is the axial vector of the torsion',
+  epsilon: 'as in \\epsilon^{abcd}',
+  eta: 'as in \\eta_{ab}',
+  delta: 'as in \\delta^a_b',
+};
+
 function checkCount(cursor: Cursor, head: TensorHead, slots: readonly SlotNode[], span: Span): void {
   const allowed = SLOT_COUNTS[head];
   const count = slots.length;
@@ -58,19 +68,10 @@ function checkCount(cursor: Cursor, head: TensorHead, slots: readonly SlotNode[]
   if (!allowed.includes(count)) {
     const has = count === 0 ? 'no indices here' : count === 1 ? '1 index' : `${count} indices`;
     const list = allowed.length === 3 ? '0, 2 or 4' : allowed.join(' or ');
-    const hint =
-      head === 'T' && count === 0
-        ? 'the torsion scalar is not a symbol; write T_a T^a, T_{abc} T^{abc} or T_{abc} T^{bac}'
-        : undefined;
-    const message = `${cursor.typed(span)} has ${has}, ${name} has ${list}`;
-    cursor.report('index-count', span, message, hint ?? `mend the indices of ${name}`);
+    cursor.report('index-count', span, `${cursor.typed(span)} has ${has}, ${name} has ${list}`, FORMS[head]);
   } else if (head === 'delta' && slots[0]!.up === slots[1]!.up) {
-    cursor.report(
-      'delta-heights',
-      span,
-      '\\delta has one index up and one down',
-      'write \\eta for two indices at one height',
-    );
+    const message = '\\delta has one index up and one down';
+    cursor.report('delta-heights', span, message, 'write \\eta for two indices at one height');
   }
 }
 
@@ -115,22 +116,12 @@ function refusePower(cursor: Cursor, head: TensorHead, begun: Begun): never {
 }
 
 /** One `^…` or `_…`. */
-function parseGroup(cursor: Cursor, slots: SlotNode[]): void {
+function parseGroup(cursor: Cursor, slots: SlotNode[], begun: Begun): void {
   const sign = cursor.next();
   const up = sign.text === '^';
   const { token } = cursor;
   if (token.kind === 'word') {
-    if (token.text.length > 1) {
-      const digits = /[0-9]/.test(token.text);
-      cursor.fail(
-        'index-braces',
-        token,
-        digits ? `${token.text} is not an index` : 'several indices need braces',
-        digits
-          ? 'an index is one letter; leave a space behind it'
-          : `write ${sign.text}{${token.text}}, or leave a space: ${sign.text}${token.text[0]} ${token.text.slice(1)}`,
-      );
-    }
+    if (token.text.length > 1) refuseWord(cursor, { start: begun.start, end: sign.end }, token);
     cursor.next();
     slots.push({ name: token.text, up, start: token.start, end: token.end });
     return;
@@ -148,6 +139,16 @@ function parseGroup(cursor: Cursor, slots: SlotNode[]): void {
   const opening = cursor.next();
   while (!cursor.isMark('}')) pushIndices(cursor, opening, up, slots);
   cursor.next();
+}
+
+/** Two or more letters without braces. */
+function refuseWord(cursor: Cursor, begun: Span, token: Token): never {
+  const { text } = token;
+  const before = cursor.typed(begun);
+  const apart = `leave a space: ${before}${text[0]} ${text.slice(1)}`;
+  if (/[0-9]/.test(text))
+    cursor.fail('index-braces', token, `${text} is not an index`, `an index is one letter; ${apart}`);
+  return cursor.fail('index-braces', token, 'several indices need braces', `write ${before}{${text}}, or ${apart}`);
 }
 
 function pushIndices(cursor: Cursor, opening: Token, up: boolean, slots: SlotNode[]): void {

@@ -4,6 +4,7 @@
  * that several can be shown; the parser runs only when there is none.
  */
 import { type Diagnostic, errorAt } from './diagnostics.js';
+import { MAX_DIAGNOSTICS } from './limits.js';
 import type { Passage } from './passage.js';
 
 /**
@@ -51,7 +52,7 @@ const GREEK_CAPITALS: Readonly<Record<string, string>> = {
   ϑ: 'vartheta',
 };
 const SIGNS: Readonly<Record<string, string>> = { '−': '-', '–': '-', '·': '*', '×': '*', '⋅': '*' };
-const SUPERSCRIPTS = '⁰¹²³⁴⁵⁶⁷⁸⁹';
+const SUPERSCRIPTS = '⁰¹²³⁴⁵⁶⁷⁸⁹⁻';
 
 const isLetter = (c: number): boolean => (c >= 65 && c <= 90) || (c >= 97 && c <= 122);
 const isDigit = (c: number): boolean => c >= 48 && c <= 57;
@@ -75,7 +76,7 @@ export function tokenize(passage: Passage, problems: Diagnostic[]): readonly Tok
     problems.push(errorAt(passage.locate(start, end), code, message, hint));
   };
   let i = 0;
-  while (i < length) {
+  while (i < length && problems.length <= MAX_DIAGNOSTICS) {
     const code = text.charCodeAt(i);
     const start = i;
     if (code <= 32 || code === 0xa0 || code === 126) {
@@ -89,6 +90,7 @@ export function tokenize(passage: Passage, problems: Diagnostic[]): readonly Tok
         i++;
         while (i < length && isDigit(text.charCodeAt(i))) i++;
         const typed = text.slice(start, i);
+        push('integer', '1', start, i);
         fault(
           'decimal-point',
           start,
@@ -96,15 +98,15 @@ export function tokenize(passage: Passage, problems: Diagnostic[]): readonly Tok
           `${clip(typed)} has a decimal point`,
           `write a fraction: ${asFraction(typed)}`,
         );
-      }
-      push('integer', text.slice(start, i), start, i);
+      } else push('integer', text.slice(start, i), start, i);
     } else if (code === 92) {
       i = macro(text, i, push, fault);
     } else {
       const character = String.fromCodePoint(text.codePointAt(i)!);
       i += character.length;
       const greek = greekCharacter(character);
-      if (greek !== undefined) push('macro', greek, start, i);
+      if (SUPERSCRIPTS.includes(character)) i = superscript(text, start, push);
+      else if (greek !== undefined) push('macro', greek, start, i);
       else if (MARKS.includes(character)) push('mark', character, start, i);
       else if (Object.hasOwn(SIGNS, character)) push('mark', SIGNS[character]!, start, i);
       else fault('unexpected-character', start, i, `unexpected character ${show(character)}`, characterHint(character));
@@ -146,6 +148,19 @@ function macro(text: string, start: number, push: Push, fault: Report): number {
   return i;
 }
 
+/** M⁻² as M^-2; the offset behind it. */
+function superscript(text: string, start: number, push: Push): number {
+  let i = start;
+  let digits = '';
+  push('mark', '^', start, start + 1);
+  if (text[i] === '⁻') push('mark', '-', i, ++i);
+  const from = i;
+  for (; i < text.length && text[i] !== '⁻' && SUPERSCRIPTS.includes(text[i]!); i++)
+    digits += SUPERSCRIPTS.indexOf(text[i]!);
+  if (digits !== '') push('integer', digits, from, i);
+  return i;
+}
+
 /** \phantom{…} only makes space. */
 function skipGroup(text: string, from: number): number {
   const open = text.indexOf('{', from);
@@ -174,7 +189,6 @@ function characterHint(character: string): string {
   if (character === '#' || character === '%')
     return 'there are no comments inside an expression; put a # line above the key';
   if (character === '&') return 'alignment marks have no meaning here; remove it';
-  if (SUPERSCRIPTS.includes(character)) return `write ^${SUPERSCRIPTS.indexOf(character)}`;
   if ('½¼¾⅓⅔'.includes(character)) return 'write \\frac{p}{q} or p/q';
   if (character === '.') return 'a sum of terms needs no full stop';
   if (character === '|') return 'there is no absolute value in a Lagrangian';

@@ -3,6 +3,7 @@
  * of Lagrangians and of scalar expressions; the caller says which symbols exist.
  */
 import type { Cursor } from './cursor.js';
+import { MAX_NAME } from './limits.js';
 import { nearest, splitWord } from './suggest.js';
 import type { Span } from './syntax.js';
 import type { TensorHead } from './theory.js';
@@ -93,27 +94,33 @@ export function macroName(macro: string, vocabulary: Vocabulary): string {
   return macro === 'varepsilon' && !vocabulary.isSymbol(macro) ? 'epsilon' : macro;
 }
 
-/** Reports a name that is no symbol here; stops the parsing when indices follow, which nothing could read. */
+/**
+ * Reports a name that is no symbol here, once in a passage; stops the parsing when indices follow, which nothing could
+ * read. Codes `unknown-symbol`, `unknown-tensor`, `reserved-name`.
+ */
 export function reportUnknown(cursor: Cursor, vocabulary: Vocabulary, name: JoinedName, span: Span): void {
   const typed = cursor.typed(span);
-  const superscript = cursor.isMark('^') && !isPowerAt(cursor, 0);
-  const subscript = /^([A-Za-z]+)\s*_\s*\{[A-Za-z\s]+\}$/.exec(typed);
-  if (vocabulary.tensors && (superscript || cursor.isMark('_') || subscript !== null)) {
-    const base = subscript?.[1] ?? typed;
-    const code = 'unknown-tensor';
-    const message = `${typed} is not a tensor of this notation`;
-    const hint = tensorHint(base);
-    if (superscript || cursor.isMark('_')) cursor.fail(code, span, message, hint);
+  const indexed = vocabulary.tensors && (cursor.isMark('_') || (cursor.isMark('^') && !isPowerAt(cursor, 0)));
+  if (!indexed && !cursor.isNews(name.text)) return;
+  const report = (code: string, message: string, hint: string): void => {
+    if (indexed) cursor.fail(code, span, message, hint);
     cursor.report(code, span, message, hint);
-    return;
-  }
+  };
+  const apart = runTogether(typed, vocabulary);
+  const subscript = vocabulary.tensors ? /^([A-Za-z]+)\s*_\s*\{[A-Za-z\s]+\}$/.exec(typed) : null;
   const reason = vocabulary.explain?.(name.text);
-  if (reason !== undefined) {
-    cursor.report('reserved-name', span, reason, suggestion(name.text, vocabulary) ?? 'choose another name');
-    return;
+  if (apart !== undefined) {
+    report('unknown-symbol', `unknown symbol ${clip(name.text)}`, `did you mean ${apart}?`);
+  } else if (indexed || subscript !== null) {
+    report('unknown-tensor', `${typed} is not a tensor of this notation`, tensorHint(subscript?.[1] ?? typed));
+  } else if (reason !== undefined) {
+    report('reserved-name', reason, 'choose another name');
+  } else {
+    const near = nearest(name.text, vocabulary.names);
+    const hint =
+      near === undefined ? 'declare it under constants or scales, or mend the name' : `did you mean ${near}?`;
+    report('unknown-symbol', `unknown symbol ${clip(name.text)}`, hint);
   }
-  const hint = suggestion(name.text, vocabulary) ?? 'declare it under constants or scales, or mend the name';
-  cursor.report('unknown-symbol', span, `unknown symbol ${clip(name.text)}`, hint);
 }
 
 function tensorHint(base: string): string {
@@ -122,9 +129,16 @@ function tensorHint(base: string): string {
   return 'the tensors are R, T, A, \\epsilon, \\eta and \\delta';
 }
 
-function suggestion(name: string, vocabulary: Vocabulary): string | undefined {
-  const known = (piece: string): boolean => vocabulary.isSymbol(piece) || (vocabulary.tensors && piece === 'R');
-  const split = splitWord(name, known);
-  const near = split ?? nearest(name, vocabulary.names);
-  return near === undefined ? undefined : `did you mean ${near}?`;
+/** `c0M` as `c0 M`, `b1T_{abc}` as `b1 T_{abc}`: known words that lack a space. */
+function runTogether(typed: string, vocabulary: Vocabulary): string | undefined {
+  const known = (piece: string): boolean => vocabulary.isSymbol(piece) || (vocabulary.tensors && WORD_HEADS.has(piece));
+  const words = splitWord(typed, known);
+  if (words !== undefined || !vocabulary.tensors) return words;
+  for (let i = Math.min(typed.length, MAX_NAME) - 1; i > 0; i--) {
+    if (!WORD_HEADS.has(typed[i]!) || typed[i + 1] !== '_') continue;
+    const before = typed.slice(0, i);
+    const apart = vocabulary.isSymbol(before) ? before : splitWord(before, known);
+    if (apart !== undefined) return `${apart} ${typed.slice(i)}`;
+  }
+  return undefined;
 }

@@ -8,13 +8,13 @@ import { nearest } from './suggest.js';
 import type { YamlList, YamlMap, YamlNode, YamlText } from './yaml-source.js';
 
 const KINDS = { text: 'a text', list: 'a list', map: 'a mapping' } as const;
-const EXAMPLES = { text: '', list: ': [x, y]', map: ': { key: value }' } as const;
+const HINTS = { text: 'write one text', list: 'write a list: [x, y]', map: 'write key: value' } as const;
 
 function wrongKind(node: YamlNode, what: string, wanted: keyof typeof KINDS, problems: Diagnostic[]): undefined {
-  const empty = node.kind === 'text' && node.text === '' && node.style === 'plain';
+  const empty = node.kind === 'text' && node.text.trim() === '';
   const is = empty ? 'is empty' : `is ${KINDS[node.kind]}`;
-  const hint = wanted === 'text' ? 'write one text' : `for example ${what}${EXAMPLES[wanted]}`;
-  problems.push(errorAt(node.origin, 'wrong-kind', `${what} must be ${KINDS[wanted]} but ${is}`, hint));
+  const message = `${what} must be ${KINDS[wanted]} but ${is}`;
+  problems.push(errorAt(node.origin, 'wrong-kind', message, HINTS[wanted]));
   return undefined;
 }
 
@@ -52,6 +52,7 @@ export function asRecord(
   const values = new Map<string, YamlNode>();
   const map = asMap(node, what, problems);
   if (map === undefined) return values;
+  const misspelt = new Set<string>();
   const known = [...keys.required, ...(keys.optional ?? [])];
   for (const [name, { key, value }] of map.entries) {
     if (known.includes(name)) {
@@ -59,11 +60,12 @@ export function asRecord(
       continue;
     }
     const near = nearest(name, known);
+    if (near !== undefined) misspelt.add(near);
     const hint = near === undefined ? `the keys are ${known.join(', ')}` : `did you mean ${near}?`;
     problems.push(errorAt(key.origin, 'unknown-key', `${what} has no key ${name}`, hint));
   }
   for (const name of keys.required) {
-    if (values.has(name)) continue;
+    if (values.has(name) || misspelt.has(name)) continue;
     const start = map.origin.start;
     const place = { ...map.origin, end: Math.min(start + 1, map.origin.end) };
     problems.push(errorAt(place, 'missing-key', `${what} lacks the key ${name}`, `add a line ${name}: …`));
