@@ -94,14 +94,18 @@ export interface Written {
 }
 
 /** Text of a Lagrangian; it may bracket several terms or square one, and `terms` says what it then means. */
-export function write(random: Random, lagrangian: readonly LagrangianTerm[]): Written {
+export function write(random: Random, lagrangian: readonly LagrangianTerm[], squares = true): Written {
   const terms: LagrangianTerm[] = [];
   let text = '';
   for (let i = 0; i < lagrangian.length; ) {
     const here = lagrangian.slice(i, i + (random.chance(15) ? 1 + random.below(3) : 1));
     i += here.length;
     const written =
-      here.length > 1 ? bracket(random, here) : random.chance(12) ? square(random, here[0]!) : one(random, here[0]!);
+      here.length > 1
+        ? bracket(random, here, squares)
+        : squares && random.chance(12)
+          ? square(random, here[0]!)
+          : one(random, here[0]!);
     terms.push(...written.terms);
     const negative = written.text.startsWith('-');
     const first = text === '';
@@ -122,8 +126,8 @@ function one(random: Random, term: LagrangianTerm): Written {
 }
 
 /** r M^n (L₁ + L₂ …). */
-function bracket(random: Random, terms: readonly LagrangianTerm[]): Written {
-  const inner = write(random, terms);
+function bracket(random: Random, terms: readonly LagrangianTerm[], squares: boolean): Written {
+  const inner = write(random, terms, squares);
   const coefficient = random.rational(true);
   const exponent = 1 + random.below(2);
   const front = `${show(coefficient)} M${exponent === 1 ? '' : '^2'}`;
@@ -133,14 +137,17 @@ function bracket(random: Random, terms: readonly LagrangianTerm[]): Written {
   };
 }
 
+type Symbols = LagrangianTerm['symbols'];
+
+function multiplied(...all: readonly Symbols[]): Symbols {
+  const powers = new Map<string, number>();
+  for (const [name, exponent] of all.flat()) powers.set(name, (powers.get(name) ?? 0) + exponent);
+  return [...powers].filter(([, exponent]) => exponent !== 0);
+}
+
 function times(term: LagrangianTerm, by: Q, name: string, exponent: number): LagrangianTerm {
-  const symbols = new Map(term.symbols);
-  symbols.set(name, (symbols.get(name) ?? 0) + exponent);
-  return {
-    coefficient: E.mul(term.coefficient, by),
-    symbols: [...symbols].filter(([, e]) => e !== 0),
-    factors: term.factors,
-  };
+  const symbols = multiplied(term.symbols, [[name, exponent]]);
+  return { coefficient: E.mul(term.coefficient, by), symbols, factors: term.factors };
 }
 
 /** (L₁)², when it has at most three tensors. */
@@ -150,7 +157,7 @@ function square(random: Random, term: LagrangianTerm): Written {
   const terms = inner.terms.flatMap((x) =>
     inner.terms.map((y) => ({
       coefficient: E.mul(x.coefficient, y.coefficient),
-      symbols: [...x.symbols, ...y.symbols],
+      symbols: multiplied(x.symbols, y.symbols),
       factors: [
         ...x.factors,
         ...y.factors.map((f) => ({ ...f, slots: f.slots.map((s) => ({ ...s, name: `${s.name}'` })) })),

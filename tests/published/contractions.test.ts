@@ -6,7 +6,9 @@ import { describe, expect, it } from 'vitest';
 import { Contraction } from '../oracle/contraction.js';
 import * as E from '../oracle/exact.js';
 import { fieldJets, frameOf, levi, type Point, RANGE } from '../oracle/geometry.js';
+import { atPoint } from '../oracle/infix.js';
 import type { Algebra, Jet } from '../oracle/jet.js';
+import { derived } from '../oracle/pipeline.js';
 import { firstSeed, Random, runs } from '../oracle/random.js';
 import { factorsOf } from '../oracle/reading.js';
 
@@ -130,6 +132,19 @@ describe('scalar contractions on that geometry (computed)', () => {
         expect(west.value(factors).equals(odd ? expected.negated() : expected), `seed ${seed}`).toBe(true);
       }
     });
+
+  for (const [text, value, odd] of TABLE)
+    for (const signature of ['-+++', '+---'] as const)
+      it(`${text}: through the program, ${signature}`, () => {
+        const json = derived({ lagrangian: `7/3 c1 ${text}`, constants: ['c1'], signature });
+        for (let run = 0; run < runs(2); run++) {
+          const point = new Random(firstSeed(64) + run).point('flrw', ['M', 'c1']);
+          const front = E.mul(E.q(odd && signature === '+---' ? -7 : 7, 3), point.constants.c1!);
+          const volume = E.mul(E.pow(point.fields.a![0]!, 3), point.fields.N![0]!);
+          const expected = value(invariants(point, { kSquared: point.k })).rationalAt(0);
+          expect(E.show(atPoint(json.lagrangian, point))).toBe(E.show(E.product(front, volume, expected)));
+        }
+      });
 
   it('the pruned enumeration agrees with all 4ⁿ assignments', () => {
     const { frame } = setUp(firstSeed(71));
