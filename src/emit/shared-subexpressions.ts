@@ -3,9 +3,18 @@
  * powers and products of two are computed once and used wherever they occur. Language-neutral; printers name the steps.
  * Invariant: a step refers to earlier steps only, and every step is referred to.
  */
-import { collect } from '../algebra/collect.js';
+import { type Collected, collect } from '../algebra/collect.js';
+import { remember } from '../algebra/memo.js';
 import { type Poly, type Term, termsOf } from '../algebra/poly.js';
-import { gcd, ONE, type Rational, rational } from '../algebra/rational.js';
+import {
+  divideRational,
+  gcd,
+  multiplyRational,
+  ONE,
+  printRational,
+  type Rational,
+  rational,
+} from '../algebra/rational.js';
 
 /** A value at hand: a generator of the ring by position, or the result of a step by its place in the plan. */
 export type Operand =
@@ -90,48 +99,119 @@ function splitRows(rows: readonly Row[]): { content: Rational; common: Map<Atom,
   return { content, common, rest };
 }
 
+/** Longest sum in one expression: compilers descend into long ones recursively. */
+const LONGEST_SUM = 100;
+
+const keyOf = (powers: Row['powers']): string => [...powers].map(([a, e]) => `${a}^${e}`).join('*');
+
 /** Collects sums, equal ones once. */
 class SumTable {
   readonly sums: Sum[] = [];
   private readonly known = new Map<string, Atom>();
 
-  constructor(private readonly isCoupling: (generator: number) => boolean) {}
-
   private atom(rows: readonly Row[], ofCouplings: boolean): Atom {
-    const key = rows
-      .map(({ factor, powers }) => `${factor.num}/${factor.den}*${[...powers].map(([a, e]) => `${a}^${e}`).sort()}`)
-      .join('+');
+    const short = this.shortened(rows, ofCouplings);
+    const key = short.map(({ factor, powers }) => `${printRational(factor)}*${keyOf(powers)}`).join('+');
     const found = this.known.get(key);
     if (found) return found;
-    const atom: Atom = `s${this.sums.push({ ofCouplings, rows }) - 1}`;
+    const atom: Atom = `s${this.sums.push({ ofCouplings, rows: short }) - 1}`;
     this.known.set(key, atom);
     return atom;
   }
 
+  /** The same sum with at most `LONGEST_SUM` rows, by partial sums. */
+  shortened(rows: readonly Row[], ofCouplings: boolean): readonly Row[] {
+    if (rows.length <= LONGEST_SUM) return rows;
+    const parts: Row[] = [];
+    for (let i = 0; i < rows.length; i += LONGEST_SUM) {
+      const part = rows.slice(i, i + LONGEST_SUM);
+      parts.push({ factor: ONE, powers: new Map([[this.atom(part, ofCouplings), 1]]) });
+    }
+    return this.shortened(parts, ofCouplings);
+  }
+
   /** A sum as content · powers, where a proper sum becomes an atom. */
-  private factored(rows: readonly Row[], ofCouplings: boolean): Row {
+  factored(rows: readonly Row[], ofCouplings: boolean): Row {
     if (rows.length === 1) return rows[0]!;
     const { content, common, rest } = splitRows(rows);
     return { factor: content, powers: timesPowers(common, [[this.atom(rest, ofCouplings), 1]]) };
   }
 
-  /** p as a sum over its coefficients in the couplings: Σ coefficient · (sum over monomials in everything else). */
-  output(p: Poly): Row[] {
+  /** The rows of one polynomial as a sum over its coefficients: Σ coefficient · (sum over monomials in the rest). */
+  output(rows: readonly CollectedRow[]): readonly Row[] {
     const groups = new Map<string, { coefficient: Row; rows: Row[] }>();
-    for (const { monomial, coefficient } of collect(p, (g) => !this.isCoupling(g))) {
-      const rows = termsOf(coefficient).map((t): Row => ({ factor: t.coefficient, powers: powersOf(t.exponents) }));
-      const whole = this.factored(rows, true);
-      const key = [...whole.powers].map(([a, e]) => `${a}^${e}`).join('*');
-      const group = groups.get(key) ?? { coefficient: whole, rows: [] };
-      group.rows.push({ factor: whole.factor, powers: powersOf(monomial) });
-      groups.set(key, group);
+    for (const { monomial, coefficient } of rows) {
+      const whole = this.factored(coefficient, true);
+      const group = remember(groups, keyOf(whole.powers), () => ({ coefficient: whole, rows: [] as Row[] }));
+      group.rows.push({ factor: whole.factor, powers: monomial });
     }
-    return [...groups.values()].flatMap(({ coefficient, rows }) => {
-      if (coefficient.powers.size === 0) return rows;
-      const { factor, powers } = this.factored(rows, false);
+    const terms = [...groups.values()].flatMap(({ coefficient, rows: parts }) => {
+      if (coefficient.powers.size === 0) return parts;
+      const { factor, powers } = this.factored(parts, false);
       return [{ factor, powers: timesPowers(coefficient.powers, powers) }];
     });
+    return this.shortened(terms, false);
   }
+}
+
+/** A monomial in everything but couplings, and its coefficient as a sum. */
+interface CollectedRow {
+  readonly monomial: Row['powers'];
+  readonly coefficient: readonly Row[];
+}
+
+/** A monomial in couplings and the rows in which it occurs, with its factor there. */
+interface Column {
+  readonly powers: Row['powers'];
+  readonly entries: (readonly [row: number, factor: Rational])[];
+}
+
+/**
+ * Couplings that occur in all rows in one proportion, together: Σ over classes of parallel columns. Many invariants
+ * reduce to one and the same function, so there are far fewer classes than couplings, and nothing cancels inside one.
+ */
+function parallelColumns(collected: readonly (readonly Collected[])[]): Column[][] {
+  const columns = new Map<string, Column>();
+  collected.flat().forEach(({ coefficient }, row) => {
+    for (const { coefficient: factor, exponents } of termsOf(coefficient)) {
+      const powers = powersOf(exponents);
+      remember(columns, keyOf(powers), (): Column => ({ powers, entries: [] })).entries.push([row, factor]);
+    }
+  });
+  const classes = new Map<string, Column[]>();
+  for (const column of columns.values()) {
+    const first = column.entries[0]![1];
+    const key = column.entries.map(([row, f]) => `${row}:${printRational(divideRational(f, first))}`).join(';');
+    remember(classes, key, (): Column[] => []).push(column);
+  }
+  return [...classes.values()];
+}
+
+/** Coefficients of the rows in terms of classes of parallel columns. */
+function collectedRows(table: SumTable, collected: readonly (readonly Collected[])[]): CollectedRow[][] {
+  const coefficients: Row[][] = collected.flat().map(() => []);
+  for (const members of parallelColumns(collected)) {
+    const { entries } = members[0]!;
+    const [, first] = entries[0]!;
+    const whole = table.factored(
+      members.map((m): Row => ({ factor: m.entries[0]![1], powers: m.powers })),
+      true,
+    );
+    for (const [row, factor] of entries) {
+      const ratio = multiplyRational(whole.factor, divideRational(factor, first));
+      coefficients[row]!.push({ factor: ratio, powers: whole.powers });
+    }
+  }
+  let row = 0;
+  return collected.map((rows) =>
+    rows.map(({ monomial }) => ({ monomial: powersOf(monomial), coefficient: coefficients[row++]! })),
+  );
+}
+
+/** Size of the plan of some polynomials, up to a small factor, without making it. */
+export function planSize(polynomials: readonly Poly[], isCoupling: (generator: number) => boolean): number {
+  const classes = parallelColumns(polynomials.map((p) => collect(p, (g) => !isCoupling(g))));
+  return classes.reduce((n, members) => n + members.length + members[0]!.entries.length, 0);
 }
 
 /**
@@ -140,8 +220,9 @@ class SumTable {
  * @param isCoupling which generators (by position) make up the coefficients that terms are grouped by.
  */
 export function planShared(polynomials: readonly Poly[], isCoupling: (generator: number) => boolean): Plan {
-  const table = new SumTable(isCoupling);
-  const outputs = polynomials.map((p) => table.output(p));
+  const table = new SumTable();
+  const collected = polynomials.map((p) => collect(p, (g) => !isCoupling(g)));
+  const outputs = collectedRows(table, collected).map((rows) => table.output(rows));
   const lists = [...table.sums.map((s) => s.rows), ...outputs];
   const tokens = new TokenTable();
   const products = lists.map((rows) => rows.map(({ powers }) => tokens.ofPowers(powers)));

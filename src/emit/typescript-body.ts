@@ -29,10 +29,15 @@ const OWN = (
 ).split(' ');
 const WIDTH = 110;
 
+/** Which generators are couplings: the constants of the theory. Scales, curvature and densities stand with the fields. */
+export function couplingTest(d: Derivation): (generator: number) => boolean {
+  const couplings = new Set(d.theory.symbols.filter((s) => s.role === 'constant').map((s) => s.name));
+  return (g) => couplings.has(d.ring.generators[g]!.name);
+}
+
 export function functionBody(d: Derivation, outputs: readonly Output[]): Body {
   const polynomials = outputs.flatMap((o) => [o.numerator, ...(o.denominator ?? []).map((f) => f.base)]);
-  const couplings = new Set(d.theory.symbols.filter((s) => s.role === 'constant').map((s) => s.name));
-  const plan = planShared(polynomials, (g) => couplings.has(d.ring.generators[g]!.name));
+  const plan = planShared(polynomials, couplingTest(d));
   const names = makeNameTable(OWN);
   const { lines, locals, usesCouplings, usesJets } = readLocals(d.ring, plan, names);
   const steps = new StepPrinter(locals, names);

@@ -8,12 +8,13 @@ import type { Poly } from '../algebra/poly.js';
 import type { BiScalarForm, Derivation, FriedmannForm } from '../derivation.js';
 import { commentText, propertyKey, stringLiteral } from './identifiers.js';
 import { dimensionsIn, dimensionsOf, modelParameters, type Parameter } from './parameters.js';
-import { type Body, functionBody, type Output, wrapped } from './typescript-body.js';
+import { planSize } from './shared-subexpressions.js';
+import { type Body, couplingTest, functionBody, type Output, wrapped } from './typescript-body.js';
 import { type JetOrders, jetOrders, tupleType } from './typescript-jets.js';
 
-/** Terms that one function computes; beyond, it calls others, since compilers give up on very long functions. */
-const MOST_TERMS = 600;
-const PART_TERMS = 300;
+/** Size of a plan that becomes one function; beyond, it calls others, since compilers give up on very long functions. */
+const MOST_TERMS = 1200;
+const PART_TERMS = 600;
 
 interface Writer {
   readonly derivation: Derivation;
@@ -127,24 +128,31 @@ function signature(name: string, type: string, body: Pick<Body, 'usesCouplings' 
 }
 
 function writeFunction(d: Derivation, f: FunctionText): string {
-  const size = f.outputs.reduce((n, o) => n + o.numerator.size, 0);
-  if (size > MOST_TERMS) return writeInParts(d, f);
+  const polynomials = f.outputs.flatMap((o) => [o.numerator, ...(o.denominator ?? []).map((factor) => factor.base)]);
+  const sizes = new Map(polynomials.map((p) => [p, p.size < MOST_TERMS ? p.size : planSize([p], couplingTest(d))]));
+  if ([...sizes.values()].reduce((a, b) => a + b, 0) > MOST_TERMS) return writeInParts(d, f, sizes);
   const body = functionBody(d, f.outputs);
   return `${doc(f.doc)}\nexport ${signature(f.name, f.type, body)}\n${body.text}\n}`;
 }
 
+/** A polynomial as a sum of at most `wanted` polynomials of about equal length; neighbouring terms stay together. */
+function pieces(p: Poly, wanted: number): Poly[] {
+  const count = Math.min(p.size, wanted);
+  const start = (i: number) => Math.floor((i * p.size) / count);
+  const rows = (from: number, to: number) => Array.from({ length: to - from }, (_, n) => from + n);
+  return Array.from({ length: count }, (_, i) => select(p, rows(start(i), start(i + 1))));
+}
+
 /** The same function as a sum over functions of some hundred terms each. */
-function writeInParts(d: Derivation, f: FunctionText): string {
+function writeInParts(d: Derivation, f: FunctionText, sizes: ReadonlyMap<Poly, number>): string {
   const helpers: string[] = [];
   const call = (p: Poly): string => {
-    const names: string[] = [];
-    for (let start = 0; start < p.size; start += PART_TERMS) {
-      const rows = Array.from({ length: Math.min(PART_TERMS, p.size - start) }, (_, i) => start + i);
-      const body = functionBody(d, [{ numerator: select(p, rows) }]);
+    const names = pieces(p, Math.ceil(sizes.get(p)! / PART_TERMS)).map((numerator) => {
+      const body = functionBody(d, [{ numerator }]);
       const name = `${f.name}Part${helpers.length + 1}`;
       helpers.push(`${signature(name, 'number', body)}\n${body.text}\n}`);
-      names.push(`${name}(couplings, jets)`);
-    }
+      return `${name}(couplings, jets)`;
+    });
     return names.length === 0 ? '0' : names.join(' +\n    ');
   };
   const value = ({ numerator, denominator = [] }: Output): string => {

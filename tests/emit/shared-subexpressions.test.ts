@@ -153,6 +153,30 @@ describe('planShared', () => {
     expect(inner?.op === 'sum' && inner.terms.map((t) => t.factor.den)).toContain(3n);
   });
 
+  it('adds up couplings that always occur in one proportion, once', () => {
+    const both = add(x('P'), monomial(ring, rational(2), [['S', 1]]));
+    const list = [
+      add(multiply(both, x('a')), multiply(x('W'), x('phi'))),
+      add(multiply(both, x('N')), multiply(add(both, x('c0')), x('psi'))),
+    ];
+    const plan = planShared(list, isCoupling);
+    const isP = (o: Operand) => o.kind === 'generator' && names[o.position] === 'P';
+    expect(operandsIn(plan).filter(isP).length).toBe(1);
+    expect(planSize(list, isCoupling)).toBeLessThan(list.reduce((n, p) => n + p.size, 0) + 3);
+  });
+
+  it('keeps every sum short', () => {
+    const wide = makeRing([...jetsOf('a', 0), ...constantsOf(Array.from({ length: 300 }, (_, i) => `g${i}`))]);
+    const many = sum(
+      wide,
+      wide.generators.map(({ name }) => generator(wide, name)),
+    );
+    const plan = planShared([many, power(generator(wide, 'a'), 2)], (g) => g > 0);
+    const lengths = plan.steps.map((s) => (s.op === 'sum' ? s.terms.length : 0));
+    expect(Math.max(...lengths)).toBeLessThanOrEqual(100);
+    expect(lengths.reduce((a, b) => a + b, 0)).toBeGreaterThanOrEqual(300);
+  });
+
   it('gives nothing for zero', () => {
     expect(planShared([zero(ring)], isCoupling)).toEqual({ steps: [], outputs: [[]] });
   });
