@@ -20,6 +20,7 @@ import {
   type Plan,
   type Product,
   planShared,
+  planSize,
 } from '../../src/emit/shared-subexpressions.js';
 
 const COUPLINGS = ['P', 'S', 'W', 'c0'];
