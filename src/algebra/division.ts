@@ -76,7 +76,6 @@ function divideFree(p: Poly, q: Poly): Poly | undefined {
   const by = exponentRange(ring, q.keys);
   const low = Array.from(of.low, (e, g) => e - by.low[g]!);
   const high = Array.from(of.high, (e, g) => e - by.high[g]!);
-  if (low.some((e, g) => e > high[g]!)) return undefined;
   const leading = unpackMonomial(ring, q.keys, 0);
   const terms: Poly[] = [];
   let rest = p;
