@@ -5,6 +5,7 @@ import { jetName } from '../algebra/ring.js';
 import type { Derivation } from '../derivation.js';
 import type { GeometrySymbol } from '../geometry/geometry.js';
 import { latexName } from '../notation/latex-symbol.js';
+import { widthOf } from './latex-width.js';
 
 /**
  * constant, scale: couplings; parameter: a constant of the geometry, such as k; density: of a fluid; length: a scale
@@ -26,11 +27,17 @@ export interface DisplaySymbol {
   readonly rank: number;
   /** Power of the scale factor that belongs to it on dimensional grounds: 2 for k. */
   readonly dimension: number;
+  /** Whether the LaTeX stands for a name that is too long for a formula. */
+  readonly isAbbreviated: boolean;
 }
 
+/** By generator. */
 export type SymbolTable = ReadonlyMap<string, DisplaySymbol>;
 
-const MAX_ORDER = 6;
+/** Highest time derivative that may be displayed: images of fields in other variables contain one of their own. */
+export const MAX_ORDER = 6;
+/** Points beyond which the LaTeX of a symbol would leave no room for anything else on a line. */
+const MAX_SYMBOL_WIDTH = 80;
 
 /**
  * All symbols of a derivation in some choice of fields.
@@ -42,8 +49,8 @@ export function symbolTable(
   rateField: (scale: string) => string,
 ): SymbolTable {
   const table = new Map<string, DisplaySymbol>();
-  const put = (symbol: Omit<DisplaySymbol, 'rank' | 'dimension' | 'order'> & Partial<DisplaySymbol>): void => {
-    table.set(symbol.generator, { order: 0, dimension: 0, rank: table.size, ...symbol });
+  const put = (symbol: Pick<DisplaySymbol, 'generator' | 'name' | 'latex' | 'role'> & Partial<DisplaySymbol>): void => {
+    table.set(symbol.generator, { order: 0, dimension: 0, rank: table.size, isAbbreviated: false, ...symbol });
   };
   fields.forEach((field, rank) => {
     const { name, latex } = field;
@@ -81,6 +88,10 @@ export function symbolTable(
       });
     else put({ generator: g.name, name: g.name, latex: latexName(g.name), role: 'scale' });
   }
+  let count = 0;
+  for (const [key, symbol] of table)
+    if (widthOf(symbol.latex) > MAX_SYMBOL_WIDTH)
+      table.set(key, { ...symbol, latex: `\\mathsf{s}_{${++count}}`, isAbbreviated: true });
   return table;
 }
 
@@ -89,6 +100,15 @@ export const componentTable = ({ geometry }: Derivation): SymbolTable =>
   new Map(
     geometry.components.map((c, rank): [string, DisplaySymbol] => [
       c.name,
-      { generator: c.name, name: c.name, latex: c.latex, role: 'component', order: 0, rank, dimension: 0 },
+      {
+        generator: c.name,
+        name: c.name,
+        latex: c.latex,
+        role: 'component',
+        order: 0,
+        rank,
+        dimension: 0,
+        isAbbreviated: false,
+      },
     ]),
   );

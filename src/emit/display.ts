@@ -12,7 +12,7 @@ import { constantsOf, exponentAt, jetName, jetsOf, makeRing, type Ring } from '.
 import type { Derivation } from '../derivation.js';
 import type { AlternativeVariables, GeometrySymbol } from '../geometry/geometry.js';
 import { compareBracketTerms, compareMonomials, inReadingOrder } from './display-order.js';
-import { type DisplaySymbol, type SymbolTable, symbolTable } from './display-symbols.js';
+import { type DisplaySymbol, MAX_ORDER, type SymbolTable, symbolTable } from './display-symbols.js';
 
 /** One symbol to an integer power other than zero. */
 export interface Factor {
@@ -60,8 +60,6 @@ export interface Viewer {
   readonly replaced: ReadonlyMap<string, DisplaySum>;
 }
 
-/** Highest time derivative that may be displayed: one more than those of equations of fourth order. */
-const MAX_ORDER = 6;
 /** Generator of a rate's jets; no name of a user can be spelled so. */
 const rateField = (scale: string): string => `rate of ${scale}`;
 

@@ -3,8 +3,9 @@
  * + and −, inside a bracket only when the whole term is too long for a line, and into several displays when one would be
  * taller than about half a page. Invariant: no line is wider than LINE_WIDTH unless a single symbol is.
  */
+import { remember } from '../algebra/memo.js';
 import { bracketsFor, inlineTex, type TexTerm, unsignedTex } from './latex-math.js';
-import { extentOf, widthOf } from './latex-width.js';
+import { type Extent, extentOf } from './latex-width.js';
 
 /** Points: the column of 246 less an equation number of three digits and the space before it. */
 export const LINE_WIDTH = 212;
@@ -14,6 +15,7 @@ export const DISPLAY_HEIGHT = 245;
 const INDENT = 10;
 
 export interface Equation {
+  /** Empty for a sum without a left side, `… = 0`. */
   readonly left: string;
   readonly terms: readonly TexTerm[];
   /** What follows the sum, for instance `= 0`; empty for nothing. */
@@ -29,26 +31,40 @@ interface Line {
   /** 0 for the first line of an equation, 1 for its continuation, 2 inside a bracket. */
   readonly indent: 0 | 1 | 2;
   readonly tex: string;
+  readonly height: number;
+  readonly depth: number;
 }
 
-const widths = new Map<string, number>();
+const extents = new Map<string, Extent>();
 
-/** Width of a text, remembered: the same terms are measured in several trial layouts. */
-function measured(tex: string): number {
-  let width = widths.get(tex);
-  if (width === undefined) {
-    if (widths.size > 20_000) widths.clear();
-    width = widthOf(tex);
-    widths.set(tex, width);
+/** Extent of a text, remembered: the same terms are measured in several trial layouts. */
+function measured(tex: string): Extent {
+  if (extents.size > 20_000) extents.clear();
+  return remember(extents, tex, () => extentOf(tex));
+}
+
+const widthOf = (tex: string): number => measured(tex).width;
+const joined = (...pieces: readonly string[]): string => pieces.filter((p) => p !== '').join(' ');
+
+const flatTexts = new WeakMap<TexTerm, string>();
+function flatTerm(term: TexTerm): string {
+  let text = flatTexts.get(term);
+  if (text === undefined) {
+    text = unsignedTex(term);
+    flatTexts.set(term, text);
   }
-  return width;
+  return text;
 }
 
 /** Fills lines of different widths, starting new ones on demand. */
 class Filler {
   readonly lines: Line[] = [];
+  /** While a long bracket is set in lines of even length: points by which lines are shorter. */
+  shortening = 0;
   private current: string[] = [];
   private used = 0;
+  private height = 0;
+  private depth = 0;
   private indent: Line['indent'] = 0;
 
   constructor(
@@ -56,27 +72,35 @@ class Filler {
     private readonly rest: number,
   ) {}
 
+  private available(indent: Line['indent']): number {
+    return (indent === 0 ? this.first : this.rest - (indent - 1) * INDENT) - this.shortening;
+  }
+
   get room(): number {
-    return (this.indent === 0 ? this.first : this.rest - (this.indent - 1) * INDENT) - this.used;
+    return this.available(this.indent) - this.used;
   }
 
   get isEmpty(): boolean {
     return this.current.length === 0;
   }
 
+  get isAtStart(): boolean {
+    return this.isEmpty && this.indent === 0;
+  }
+
   put(tex: string): void {
+    const { width, height, depth } = measured(tex);
     this.current.push(tex);
-    this.used += measured(tex);
+    this.used += width;
+    this.height = Math.max(this.height, height);
+    this.depth = Math.max(this.depth, depth);
   }
 
   newLine(indent: Line['indent']): void {
-    if (this.isEmpty && this.indent !== 0) {
-      this.indent = indent;
-      return;
-    }
-    this.lines.push({ indent: this.indent, tex: this.current.join(' ') });
+    const { indent: own, height, depth } = this;
+    if (!this.isEmpty || own === 0) this.lines.push({ indent: own, tex: this.current.join(' '), height, depth });
     this.current = [];
-    this.used = 0;
+    this.used = this.height = this.depth = 0;
     this.indent = indent;
   }
 
@@ -87,24 +111,19 @@ class Filler {
 
   /** Factors of one product; where it must be broken, the next line begins with a multiplication sign. */
   putProduct(sign: string, factors: readonly string[], reserve: number, indent: Line['indent']): void {
-    const whole = [sign, ...factors].filter((f) => f !== '').join(' ');
-    const available = this.rest - (indent - 1) * INDENT;
-    if (measured(whole) + reserve > this.room && measured(whole) + reserve <= available) this.newLine(indent);
-    if (measured(whole) + reserve <= this.room || factors.length === 1) {
-      if (measured(whole) + reserve > this.room && !this.isEmpty) this.newLine(indent);
+    const whole = joined(sign, ...factors);
+    const width = widthOf(whole) + reserve;
+    if (width > this.room && (!this.isEmpty || width <= this.available(indent))) this.newLine(indent);
+    if (width <= this.room || factors.length < 2) {
       this.put(whole);
       return;
     }
-    if (!this.isEmpty) this.newLine(indent);
     factors.forEach((factor, i) => {
-      const last = i === factors.length - 1 ? reserve : 0;
-      const text = i === 0 && sign !== '' ? `${sign} ${factor}` : factor;
-      if (this.isEmpty || measured(text) + last <= this.room) {
-        this.put(text);
-        return;
-      }
-      this.newLine(2);
-      this.put(`\\times ${factor}`);
+      const text = i === 0 ? joined(sign, factor) : factor;
+      if (!this.isEmpty && widthOf(text) + (i === factors.length - 1 ? reserve : 0) > this.room) {
+        this.newLine(2);
+        this.put(`\\times ${factor}`);
+      } else this.put(text);
     });
   }
 }
@@ -112,13 +131,13 @@ class Filler {
 /** Lines of a sum whose first line has another width than the rest. */
 function fillLines(terms: readonly TexTerm[], right: string, first: number, rest: number): Line[] {
   const filler = new Filler(first, rest);
-  const after = right === '' ? 0 : measured(right);
+  const after = right === '' ? 0 : widthOf(right);
   let fresh = false;
   terms.forEach((term, i) => {
     const sign = i === 0 ? (term.negative ? '-' : '') : term.negative ? '-' : '+';
     const reserve = i === terms.length - 1 ? after : 0;
-    const whole = [sign, unsignedTex(term)].filter((t) => t !== '').join(' ');
-    const width = measured(whole) + reserve;
+    const whole = joined(sign, flatTerm(term));
+    const width = widthOf(whole) + reserve;
     if (fresh) filler.newLine(1);
     fresh = false;
     if (width <= filler.room) filler.put(whole);
@@ -126,7 +145,8 @@ function fillLines(terms: readonly TexTerm[], right: string, first: number, rest
       filler.newLine(1);
       filler.put(whole);
     } else {
-      fillLongTerm(filler, sign, term, reserve);
+      if (!filler.isEmpty) filler.newLine(1);
+      fillLongTerm(filler, sign, term, reserve, rest);
       fresh = true;
     }
   });
@@ -137,60 +157,88 @@ function fillLines(terms: readonly TexTerm[], right: string, first: number, rest
   return filler.finish();
 }
 
-/** A term that does not fit on a line of its own: broken inside its bracket, or between factors. */
-function fillLongTerm(filler: Filler, sign: string, term: TexTerm, reserve: number): void {
+/** A term that does not fit on a line of its own: broken inside its bracket, in lines of even length, or between factors. */
+function fillLongTerm(filler: Filler, sign: string, term: TexTerm, reserve: number, rest: number): void {
   if (term.inner.length === 0) {
     filler.putProduct(sign, [...term.head, ...term.tail], reserve, 1);
     return;
   }
+  const linesNeeded = (shortening: number): number => {
+    const trial = new Filler(rest, rest);
+    trial.shortening = shortening;
+    fillBracket(trial, sign, term, reserve);
+    return trial.finish().length;
+  };
+  if (!filler.isAtStart) {
+    const least = linesNeeded(0);
+    const step = INDENT;
+    while (filler.shortening < rest / 2 && linesNeeded(filler.shortening + step) === least) filler.shortening += step;
+  }
+  fillBracket(filler, sign, term, reserve);
+  filler.shortening = 0;
+}
+
+function fillBracket(filler: Filler, sign: string, term: TexTerm, reserve: number): void {
   const [open, close] = bracketsFor(inlineTex(term.inner), true);
-  if (!filler.isEmpty) filler.newLine(1);
-  const closing = [close, ...term.tail].join(' ');
+  const closing = joined(close, ...term.tail);
   term.inner.forEach((inner, i) => {
     const isFirst = i === 0;
     const isLast = i === term.inner.length - 1;
-    const body = inner.inner.length > 0 ? [unsignedTex(inner)] : inner.head;
+    const body = inner.inner.length > 0 ? [flatTerm(inner)] : inner.head;
     const mark = inner.negative ? '-' : isFirst ? '' : '+';
-    const opening = isFirst ? [sign, ...term.head, open].filter((t) => t !== '').join(' ') : '';
-    const before = [opening, mark].filter((t) => t !== '').join(' ');
-    filler.putProduct(before, body, isLast ? measured(closing) + reserve : 0, isFirst ? 1 : 2);
+    const before = joined(isFirst ? joined(sign, ...term.head, open) : '', mark);
+    filler.putProduct(before, body, isLast ? widthOf(closing) + reserve : 0, isFirst ? 1 : 2);
   });
-  if (measured(closing) + reserve > filler.room && !filler.isEmpty) filler.newLine(2);
+  if (widthOf(closing) + reserve > filler.room && !filler.isEmpty) filler.newLine(2);
   filler.put(closing);
 }
 
-/** Points that a line takes, the space between lines included. */
-function heightOf(line: string): number {
-  const { height, depth } = extentOf(line);
-  return Math.max(8.4, height) + Math.max(3.6, depth) + 3.5;
-}
+/** Points that a line takes with the space below it: strut, \jot and a little. */
+const lineHeight = (height: number, depth: number): number => Math.max(8.4, height) + Math.max(3.6, depth) + 3.5;
 
 const INDENTS = ['', '\\quad ', '\\qquad '] as const;
 
-/** How an equation is aligned: at its relation sign, or with everything after the first line indented from the margin. */
 interface Layout {
   readonly lines: Lines;
   readonly height: number;
 }
 
+/** Lines with alignment marks: at the relation sign, or at the margin. */
 function assemble(left: string, lines: readonly Line[], aligned: boolean): Layout {
-  const start = aligned ? `${left} &=` : `&${left} =`;
+  const start = left === '' ? '&' : aligned ? `${left} &=` : `&${left} =`;
+  const own = measured(left);
   const texts = lines.map(({ indent, tex }, i) =>
-    i === 0 ? (tex === '' ? start : `${start} ${tex}`) : `&${INDENTS[indent]}${indent === 0 ? '' : leading(tex)}`,
+    i === 0 ? joined(start, tex.replace(/^- /, '-')).replace(/^& /, '&') : `&${INDENTS[indent]}${leading(tex)}`,
   );
-  return { lines: texts, height: texts.reduce((h, t) => h + heightOf(t), 0) };
+  const heights = lines.map(({ height, depth }, i) =>
+    i === 0 ? lineHeight(Math.max(height, own.height), Math.max(depth, own.depth)) : lineHeight(height, depth),
+  );
+  return { lines: texts, height: heights.reduce((a, b) => a + b, 0) };
 }
 
-/** A line that begins with a multiplication sign or relation gets an empty operand, so that the sign keeps its spaces. */
+/** A line that begins with a sign gets an empty operand, so that the sign keeps its spaces. */
 const leading = (tex: string): string => (/^[-+=]|^\\times/.test(tex) ? `{}${tex}` : tex);
 
+/** Whether a sum fits in so many points on one line. */
+function fits(terms: readonly TexTerm[], points: number): boolean {
+  let used = 0;
+  for (const term of terms) {
+    used += widthOf(`+ ${flatTerm(term)}`);
+    if (used > points) return false;
+  }
+  return true;
+}
+
 function layoutEquation({ left, terms, right = '' }: Equation): Layout {
-  const flat = [left, '=', inlineTex(terms), right].filter((t) => t !== '').join(' ');
-  if (measured(flat) <= LINE_WIDTH) return { lines: [flat], height: heightOf(flat) };
-  const start = measured(`${left} =`);
+  const start = left === '' ? 0 : widthOf(left) + widthOf('=');
+  if (fits(terms, LINE_WIDTH - start - (right === '' ? 0 : widthOf(right)))) {
+    const flat = joined(left, left === '' ? '' : '=', inlineTex(terms), right);
+    const { height, depth } = measured(flat);
+    return { lines: [flat], height: lineHeight(height, depth) };
+  }
   const hanging = fillLines(terms, right, LINE_WIDTH - start, LINE_WIDTH - INDENT);
-  const leftWidth = measured(left);
-  if (leftWidth < LINE_WIDTH / 3) {
+  const leftWidth = widthOf(left);
+  if (left !== '' && leftWidth < LINE_WIDTH / 3) {
     const aligned = fillLines(terms, right, LINE_WIDTH - start, LINE_WIDTH - leftWidth - INDENT);
     if (aligned.length <= Math.max(hanging.length, 2)) return assemble(left, aligned, true);
   }
@@ -231,18 +279,24 @@ function smaller(term: TexTerm, fits: (t: TexTerm) => boolean): TexTerm[] {
   return halves.flatMap((inner) => smaller({ ...term, inner }, fits));
 }
 
+const ZERO_TERM: TexTerm = { negative: false, head: ['0'], inner: [], tail: [] };
+
 /** Several short equations below each other, aligned at their relation signs when the left sides are short. */
 export function rowDisplays(rows: readonly Equation[]): Lines[] {
-  const leftWidth = Math.max(0, ...rows.map((r) => measured(r.left)));
-  const aligned = leftWidth < LINE_WIDTH / 3;
+  const leftWidth = Math.max(0, ...rows.map((r) => widthOf(r.left)));
+  const aligned = leftWidth < LINE_WIDTH / 3 && rows.every((r) => r.left !== '');
   const displays: string[][] = [];
   let height = 0;
-  for (const { left, terms, right = '' } of rows) {
-    const relation = measured('x =') - measured('x');
-    const first = LINE_WIDTH - (aligned ? leftWidth : measured(left)) - relation;
+  for (const equation of rows) {
+    const { left, terms, right = '' } = equation;
+    const first = LINE_WIDTH - (aligned ? leftWidth : widthOf(left)) - (left === '' ? 0 : widthOf('='));
     const rest = LINE_WIDTH - (aligned ? leftWidth : 0) - INDENT;
-    const filled = terms.length > 0 ? fillLines(terms, right, first, rest) : [{ indent: 0 as const, tex: '0' }];
-    const row = assemble(left, filled, aligned);
+    const row = assemble(left, fillLines(terms.length > 0 ? terms : [ZERO_TERM], right, first, rest), aligned);
+    if (row.height > DISPLAY_HEIGHT && equation.part) {
+      displays.push(...equationDisplays(equation).map((lines) => [...lines]));
+      height = DISPLAY_HEIGHT;
+      continue;
+    }
     if (displays.length === 0 || height + row.height > DISPLAY_HEIGHT) {
       displays.push([]);
       height = 0;

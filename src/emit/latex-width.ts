@@ -74,7 +74,7 @@ interface Box extends Extent {
 
 const EMPTY: Extent = { width: 0, height: 0, depth: 0 };
 const LETTER_HEIGHT = 7;
-const DEEP_LETTERS = /[gjpqyfQ]/;
+const DEEP_LETTERS = 'gjpqyfQ';
 
 /** A box from a width in thousandths of ten points. */
 const box = (kind: Kind, thousandths: number, height = LETTER_HEIGHT, depth = 2.5): Box => ({
@@ -155,7 +155,12 @@ class Reader {
     if ('=<>:'.includes(c)) return box('relation', 778 * size, 5.9, 0.9);
     if ('()[]|'.includes(c)) return box('ordinary', 390 * size, 7.5, 2.5);
     if (',;'.includes(c)) return box('ordinary', 278 * size + 167, 1, 2);
-    return box('ordinary', letterWidth(c, face) * size, LETTER_HEIGHT * size, DEEP_LETTERS.test(c) ? 2.2 * size : 0);
+    return box(
+      'ordinary',
+      letterWidth(c, face) * size,
+      LETTER_HEIGHT * size,
+      DEEP_LETTERS.includes(c) ? 2.2 * size : 0,
+    );
   }
 
   private command(style: number, face: Face): Box {

@@ -1,0 +1,145 @@
+/** The sections of results: reduced Lagrangian, field equations, Friedmann form, metric analogue, couplings, checks. */
+import { isZero } from '../algebra/poly.js';
+import type { FriedmannForm } from '../derivation.js';
+import { equationOf, type Passage, type Section, type Writer } from './latex-display.js';
+import { LINE_WIDTH, type Lines } from './latex-lines.js';
+import { inlineTex, productTex, sumTex } from './latex-math.js';
+import { math, prose } from './latex-text.js';
+import { widthOf } from './latex-width.js';
+
+/** The exact Lagrangian on the geometry, and the same without total derivatives. */
+export function reductionSection(writer: Writer): Section {
+  const { derivation, passage, latex, viewer } = writer;
+  const { geometry, lagrangian, reducedGravity, dropped } = derivation;
+  const lapse = latex(geometry.lapse);
+  const volume = productTex(viewer.sum(geometry.volume).divided);
+  const over = [lapse];
+  const passages = [
+    passage(
+      'reduced-lagrangian',
+      'Reduced Lagrangian',
+      {
+        text: [
+          prose`The Lagrangian times the volume ${math(`${lapse} ${volume}`)}, with the symmetry imposed and matter included, is`,
+        ],
+        remarks: [
+          prose`The lapse is in the volume and in every dot and rate; nothing else depends on it, as the invariance under changes of time demands. Imposing the symmetry before the variation is allowed here because the structure constants of the cobasis have no trace.`,
+        ],
+      },
+      equationOf(viewer, 'L', lagrangian, { over }),
+    ),
+  ];
+  if (isZero(dropped)) {
+    const text = prose`The gravitational part of it contains no total derivative that could be dropped.`;
+    passages.push(passage('total-derivatives', 'Total derivatives', { text: [text] }));
+  } else {
+    const text = prose`The gravitational part of it is ${math('L_{\\mathrm{red}} + \\mathrm{d} F / \\mathrm{d} t')}; the second part does not change the equations and is dropped:`;
+    passages.push(
+      passage('total-derivatives', 'Total derivatives', { text: [text] }, [
+        ...equationOf(viewer, 'L_{\\mathrm{red}}', reducedGravity, { over }),
+        ...equationOf(viewer, 'F', dropped),
+      ]),
+    );
+  }
+  return { id: 'reduction', title: 'Reduced Lagrangian', passages };
+}
+
+/** E_q = 0 for every field. */
+export function equationsSection(writer: Writer): Section {
+  const { derivation, passage, viewer, latex: texOf } = writer;
+  const { geometry, equations } = derivation;
+  const intro = prose`The Euler–Lagrange expressions ${math('E_{q} = \\partial L/\\partial q - \\mathrm{d}/\\mathrm{d} t \\, (\\partial L/\\partial \\dot{q})')} of the Lagrangian with matter are written at ${math(`${texOf(geometry.lapse)} = 1`)}, after the variation, with the power of the scale factor on the left divided out.`;
+  const replaced = viewer.variables
+    ? [prose`They are the equations of the original fields; only the variables in them are others.`]
+    : [];
+  return {
+    id: 'equations',
+    title: 'Field equations',
+    passages: [...equations].map(([q, value], i) => {
+      const { latex, meaning } = geometry.fields.find((f) => f.name === q)!;
+      const own = isZero(value)
+        ? prose`Variation of ${math(latex)} (${meaning}) gives nothing: this expression vanishes identically.`
+        : prose`Variation of ${math(latex)} (${meaning}):`;
+      const lines = equationOf(viewer, `E_{${latex}}`, value, { right: isZero(value) ? '' : '= 0' });
+      return passage(
+        `equation-${q}`,
+        `Equation of the ${meaning}`,
+        { text: [...(i === 0 ? [intro, ...replaced] : []), own] },
+        lines,
+      );
+    }),
+  };
+}
+
+/** ρ_T, p_T, w_T. */
+export function friedmannSection(writer: Writer): Section | undefined {
+  const { derivation, passage, latex, viewer } = writer;
+  const { friedmann, geometry, fluids } = derivation;
+  if (!friedmann || !geometry.isotropic) return undefined;
+  const { scale, curvature } = geometry.isotropic;
+  const h = latex(`rate of ${scale}`);
+  const planck = `${latex('M')}^{2}`;
+  const curved = `\\frac{${latex(curvature)}}{${latex(scale)}^{2}}`;
+  const [density, pressure] = fluids.length > 0 ? ['\\rho + \\rho_{T}', 'p + p_{T}'] : ['\\rho_{T}', 'p_{T}'];
+  const first: Lines = [
+    `3 ${planck} \\Bigl( ${h}^{2} + ${curved} \\Bigr) &= ${density}`,
+    `-${planck} \\Bigl( 2 \\dot{${h}} + 3 ${h}^{2} + ${curved} \\Bigr) &= ${pressure}`,
+  ];
+  const passages = [
+    passage(
+      'friedmann',
+      'Friedmann form',
+      {
+        text: [
+          prose`Everything that differs from general relativity is moved to the right-hand side. The equations of the lapse and of the scale factor are then those of general relativity,`,
+        ],
+        remarks: [
+          prose`with an effective energy density and pressure of torsion and curvature. On the equations of the connection they are conserved, ${math(`\\dot{\\rho}_{T} + 3 ${h} (\\rho_{T} + p_{T}) = 0`)}.`,
+        ],
+      },
+      [first],
+    ),
+    passage(
+      'rho-T',
+      'Effective energy density',
+      {},
+      equationOf(viewer, '\\rho_{T}', friedmann.rhoT, { divide: false }),
+    ),
+    passage('p-T', 'Effective pressure', {}, equationOf(viewer, 'p_{T}', friedmann.pT, { divide: false })),
+  ];
+  if (!isZero(friedmann.rhoT)) passages.push(equationOfState(writer, friedmann));
+  return { id: 'friedmann', title: 'Friedmann form', passages };
+}
+
+/** Terms of numerator and denominator beyond which the quotient says no more than p_T/ρ_T. */
+const LONG_QUOTIENT = 60;
+
+function equationOfState(writer: Writer, friedmann: FriedmannForm): Passage {
+  const name = 'w_{T} = \\frac{p_{T}}{\\rho_{T}}';
+  const quotient = shortQuotient(writer, friedmann);
+  const whole = `${name} = ${quotient}`;
+  const shown = quotient !== undefined && widthOf(whole) <= LINE_WIDTH ? whole : name;
+  return writer.passage('w-T', 'Effective equation of state', {}, [[shown]]);
+}
+
+/** p_T/ρ_T in lowest terms; undefined when it is long or a power of the scale factor would be left over. */
+function shortQuotient({ viewer }: Writer, friedmann: FriedmannForm): string | undefined {
+  if (friedmann.rhoT.size > LONG_QUOTIENT || friedmann.pT.size > LONG_QUOTIENT) return undefined;
+  const ratio = friedmann.wT;
+  if (!ratio) return undefined;
+  const top = viewer.sum(ratio.numerator);
+  const bottoms = ratio.denominator.map(({ base, power }) => ({ ...viewer.sum(base), power }));
+  const left = new Map<string, number>();
+  for (const { divided, power } of [{ ...top, power: -1 }, ...bottoms])
+    for (const { symbol, exponent } of divided)
+      left.set(symbol.generator, (left.get(symbol.generator) ?? 0) + power * exponent);
+  if ([...left.values()].some((e) => e !== 0)) return undefined;
+  const above = inlineTex(sumTex(top));
+  if (bottoms.length === 0) return above;
+  const [only] = bottoms;
+  const below =
+    bottoms.length === 1 && only!.power === 1
+      ? inlineTex(sumTex(only!))
+      : bottoms.map((b) => `(${inlineTex(sumTex(b))})${b.power === 1 ? '' : `^{${b.power}}`}`).join(' ');
+  return `\\frac{${above}}{${below}}`;
+}

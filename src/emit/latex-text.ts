@@ -1,0 +1,202 @@
+/**
+ * Running text with mathematics in it, and plain text made safe for LaTeX. Invariant: what `escapeText` returns is ASCII,
+ * contains no command but accents and signs, and reads like the text it was given.
+ */
+
+/** Plain text, or a formula to be set in the line. */
+export type Inline = string | { readonly math: string };
+/** One paragraph. */
+export type Prose = readonly Inline[];
+
+export const math = (tex: string): Inline => ({ math: tex });
+
+/** A paragraph written as a template: strings in it are plain text, formulas are `math(…)`, lists are spliced in. */
+export function prose(texts: TemplateStringsArray, ...values: readonly (Inline | Prose)[]): Prose {
+  const out: Inline[] = [];
+  texts.forEach((text, i) => {
+    if (text !== '') out.push(text.replace(/\s+/g, ' '));
+    const value = values[i];
+    if (value === undefined) return;
+    if (typeof value === 'string' || 'math' in value) out.push(value);
+    else out.push(...value);
+  });
+  return out;
+}
+
+/** `x, y and z`. */
+export function enumerated(items: readonly Inline[]): Prose {
+  return items.flatMap((item, i) => (i === 0 ? [item] : [i === items.length - 1 ? ' and ' : ', ', item]));
+}
+
+const SPECIAL: ReadonlyMap<string, string> = new Map([
+  ['\\', '\\textbackslash{}'],
+  ['{', '\\{'],
+  ['}', '\\}'],
+  ['%', '\\%'],
+  ['#', '\\#'],
+  ['&', '\\&'],
+  ['$', '\\$'],
+  ['_', '\\_'],
+  ['^', '\\textasciicircum{}'],
+  ['~', '\\textasciitilde{}'],
+  ['<', '$<$'],
+  ['>', '$>$'],
+  ['|', '$|$'],
+  ['"', "''"],
+  ['`', '\\textasciigrave{}'],
+]);
+
+/** Signs beyond ASCII that LaTeX writes with a command or a ligature. */
+const SIGNS: ReadonlyMap<string, string> = new Map(
+  Object.entries({
+    '\u00a0': '~',
+    '\u00ad': '\\-',
+    '–': '--',
+    '—': '---',
+    '‘': '`',
+    '’': "'",
+    '“': '``',
+    '”': "''",
+    '„': ',,',
+    '…': '\\dots{}',
+    '§': '\\S{}',
+    '©': '\\copyright{}',
+    '£': '\\pounds{}',
+    '†': '\\dag{}',
+    ß: '\\ss{}',
+    æ: '\\ae{}',
+    Æ: '\\AE{}',
+    œ: '\\oe{}',
+    Œ: '\\OE{}',
+    ø: '\\o{}',
+    Ø: '\\O{}',
+    ł: '\\l{}',
+    Ł: '\\L{}',
+    ı: '\\i{}',
+    '−': '$-$',
+    '·': '$\\cdot$',
+    '×': '$\\times$',
+    '±': '$\\pm$',
+    '≠': '$\\neq$',
+    '≤': '$\\leq$',
+    '≥': '$\\geq$',
+    '≈': '$\\approx$',
+    '∝': '$\\propto$',
+    '→': '$\\to$',
+    '∞': '$\\infty$',
+    '∂': '$\\partial$',
+    '∇': '$\\nabla$',
+    '√': '$\\surd$',
+    '½': '$\\tfrac{1}{2}$',
+    '°': '$^{\\circ}$',
+  }),
+);
+const SUPERSCRIPTS = '⁰¹²³⁴⁵⁶⁷⁸⁹';
+/** In the order of the code points from alpha. */
+const GREEK =
+  'alpha beta gamma delta epsilon zeta eta theta iota kappa lambda mu nu xi o pi rho varsigma sigma tau upsilon phi chi psi omega'.split(
+    ' ',
+  );
+const GREEK_CAPITALS = new Set('Gamma Delta Theta Lambda Xi Pi Sigma Upsilon Phi Psi Omega'.split(' '));
+/** Combining marks. */
+const ACCENTS: ReadonlyMap<string, string> = new Map([
+  ['\u0300', '`'],
+  ['\u0301', "'"],
+  ['\u0302', '^'],
+  ['\u0303', '~'],
+  ['\u0304', '='],
+  ['\u0306', 'u'],
+  ['\u0307', '.'],
+  ['\u0308', '"'],
+  ['\u030a', 'r'],
+  ['\u030b', 'H'],
+  ['\u030c', 'v'],
+  ['\u0323', 'd'],
+  ['\u0327', 'c'],
+]);
+
+function greekTex(c: string): string | undefined {
+  const code = c.codePointAt(0)!;
+  if (code >= 0x3b1 && code <= 0x3c9) return GREEK[code - 0x3b1];
+  if (code < 0x391 || code > 0x3a9) return undefined;
+  const small = GREEK[code - 0x391]!;
+  const capital = small[0]!.toUpperCase() + small.slice(1);
+  return GREEK_CAPITALS.has(capital) ? capital : undefined;
+}
+
+/** Long words get places where they may be broken. */
+const BREAK_EVERY = 18;
+
+/**
+ * Plain text for LaTeX. Letters with accents become accent commands; what LaTeX cannot set with its standard fonts
+ * becomes its code point in square brackets.
+ */
+export function escapeText(text: string): string {
+  let out = '';
+  let run = 0;
+  const points = [...text.normalize('NFD')];
+  for (let i = 0; i < points.length; i++) {
+    const c = points[i]!;
+    if (/\s/.test(c) && c !== '\u00a0') {
+      if (!out.endsWith(' ')) out += ' ';
+      run = 0;
+      continue;
+    }
+    let piece = escapeSign(c);
+    while (points[i + 1] !== undefined && ACCENTS.has(points[i + 1]!)) {
+      const body = piece === 'i' || piece === 'j' ? `\\${piece}` : piece;
+      piece = `\\${ACCENTS.get(points[++i]!)}{${body}}`;
+    }
+    if (++run % BREAK_EVERY === 0) out += '\\allowbreak{}';
+    out += piece;
+  }
+  return out.trim();
+}
+
+function escapeSign(c: string): string {
+  const known = SPECIAL.get(c) ?? SIGNS.get(c);
+  if (known !== undefined) return known;
+  if (c >= '!' && c <= '~') return c;
+  const power = SUPERSCRIPTS.indexOf(c);
+  if (power >= 0) return `$^{${power}}$`;
+  const greek = greekTex(c);
+  if (greek !== undefined) return greek === 'o' ? 'o' : `$\\${greek}$`;
+  const code = c.codePointAt(0)!;
+  return code < 32 || (code >= 0x7f && code < 0xa0) || (code >= 0x200b && code <= 0x200f)
+    ? ''
+    : `[U+${code.toString(16).toUpperCase().padStart(4, '0')}]`;
+}
+
+/** A name with a subscript in text that this program wrote, such as `ρ_T` or `E_N`, is a formula. */
+const SUBSCRIPTED = /([A-Za-z\u03b1-\u03c9])_([A-Za-z0-9])(?![A-Za-z0-9])/g;
+
+/** Text of this program (never of a user) with its subscripted names as formulas. */
+export function withFormulas(text: string): Prose {
+  const out: Inline[] = [];
+  let end = 0;
+  for (const match of text.matchAll(SUBSCRIPTED)) {
+    const letter = greekTex(match[1]!);
+    if (match.index > end) out.push(text.slice(end, match.index));
+    out.push(math(`${letter === undefined ? match[1] : `\\${letter}`}_{${match[2]}}`));
+    end = match.index + match[0].length;
+  }
+  if (end < text.length) out.push(text.slice(end));
+  return out;
+}
+
+/** A paragraph in LaTeX. */
+export const proseTex = (paragraph: Prose): string =>
+  paragraph
+    .map((piece) => {
+      if (typeof piece !== 'string') return `$${piece.math}$`;
+      const text = escapeText(piece);
+      return `${/^\s/.test(piece) ? ' ' : ''}${text}${/\s$/.test(piece) && text !== '' ? ' ' : ''}`;
+    })
+    .join('');
+
+/** The text as ASCII on one line, for a comment of a TeX file. */
+export const commentText = (text: string): string =>
+  [...text.normalize('NFKD').replace(/\s+/g, ' ')]
+    .filter((c) => c >= ' ' && c <= '~')
+    .join('')
+    .trim();
