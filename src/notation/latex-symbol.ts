@@ -12,7 +12,7 @@ const MAX_LATEX = 100;
 const MAX_GROUPS = 8;
 /** Macros with one braced argument. */
 const WRAPPERS: ReadonlySet<string> = new Set([
-  ...['mathrm', 'mathcal', 'mathsf', 'mathbf', 'mathit', 'mathtt', 'boldsymbol'],
+  ...['mathrm', 'mathcal', 'mathsf', 'mathbf', 'mathit', 'mathtt'],
   ...['hat', 'tilde', 'bar', 'dot', 'ddot', 'vec', 'check', 'breve', 'acute', 'grave', 'overline', 'underline'],
   ...['widehat', 'widetilde'],
 ]);
@@ -92,12 +92,13 @@ class LatexReader {
       if (mark === "'") continue;
       this.skipSpaces();
       if (this.at >= this.text.length) return this.fault(start, this.at, `${mark} lacks its argument`, 'add one');
-      const fault = this.atom(depth);
+      const fault = this.atom(depth, true);
       if (fault !== undefined) return fault;
     }
   }
 
-  private atom(depth: number): LatexFault | undefined {
+  /** One letter, macro or group; as the argument of a script a macro with an argument of its own needs braces. */
+  private atom(depth: number, inScript = false): LatexFault | undefined {
     const start = this.at;
     const c = this.text[this.at] ?? '';
     if (/[A-Za-z0-9,]/.test(c)) {
@@ -113,7 +114,12 @@ class LatexReader {
         'allowed are Greek letters and \\mathrm, \\mathcal, \\mathsf, \\mathbf, \\hat, \\tilde, \\bar and their like';
       if (!WRAPPERS.has(name))
         return this.fault(start, Math.max(this.at, start + 2), `\\${name} is not allowed in a LaTeX name`, hint);
+      if (inScript) return this.fault(start, this.at, `\\${name} as a script needs braces around it`, `{\\${name}{x}}`);
       this.skipSpaces();
+      if (/[A-Za-z0-9]/.test(this.text[this.at] ?? '')) {
+        this.at++;
+        return undefined;
+      }
       if (this.text[this.at] !== '{')
         return this.fault(start, this.at, `\\${name} needs an argument in braces`, `\\${name}{x}`);
       return this.braced(depth);

@@ -8,7 +8,7 @@ import { type Diagnostic, InputError } from './diagnostics.js';
 import { MAX_DIGITS, MAX_EXPONENT } from './limits.js';
 import type { Passage } from './passage.js';
 import type { Expression, Factor, Summand } from './syntax.js';
-import { parseTensor } from './tensor-syntax.js';
+import { indicesFollow, parseTensor } from './tensor-syntax.js';
 import { isGreek, type Token, tokenize } from './tokens.js';
 import { headAt, type JoinedName, joinName, macroName, reportUnknown, type Vocabulary } from './vocabulary.js';
 
@@ -294,8 +294,8 @@ function parseBracket(cursor: Cursor, vocabulary: Vocabulary): Expression {
     );
   }
   // `{R^a}_{bcd}`: a braced tensor may go on collecting indices.
-  if (opening.text === '{' && value.kind === 'tensor') {
-    return parseTensor(cursor, value.head, value);
+  if (opening.text === '{' && value.kind === 'tensor' && indicesFollow(cursor, 0)) {
+    return parseTensor(cursor, value.head, { ...value, start: opening.start });
   }
   return { ...value, start: opening.start, end: cursor.lastEnd };
 }

@@ -40,9 +40,18 @@ export function multiplyScalarTerms(a: ScalarTerm, b: ScalarTerm): ScalarTerm {
   const coefficient = multiplyRational(a.coefficient, b.coefficient);
   if (a.powers.length === 0) return { coefficient, powers: b.powers };
   if (b.powers.length === 0) return { coefficient, powers: a.powers };
-  const exponents = new Map(a.powers);
-  for (const [name, exponent] of b.powers) exponents.set(name, (exponents.get(name) ?? 0) + exponent);
-  const powers = [...exponents].filter(([, exponent]) => exponent !== 0).sort(([x], [y]) => compareNames(x, y));
+  const powers: (readonly [string, number])[] = [];
+  let j = 0;
+  for (const power of a.powers) {
+    while (j < b.powers.length && b.powers[j]![0] < power[0]) powers.push(b.powers[j++]!);
+    const other = b.powers[j];
+    if (other?.[0] !== power[0]) powers.push(power);
+    else {
+      j++;
+      if (power[1] + other[1] !== 0) powers.push([power[0], power[1] + other[1]]);
+    }
+  }
+  for (; j < b.powers.length; j++) powers.push(b.powers[j]!);
   return { coefficient, powers };
 }
 

@@ -20,6 +20,14 @@ export const SLOT_COUNTS: Readonly<Record<TensorHead, readonly number[]>> = {
 
 const shownHead = (head: TensorHead): string => (head.length === 1 ? head : `\\${head}`);
 
+/** Whether the token `ahead` places further on begins a group of indices or a spacer {}. */
+export function indicesFollow(cursor: Cursor, ahead: number): boolean {
+  if (cursor.isMark('^', ahead)) return !isPowerAt(cursor, ahead);
+  const inner = ahead + 1;
+  const braced = cursor.isMark('}', inner) || cursor.isMark('^', inner) || cursor.isMark('_', inner);
+  return cursor.isMark('_', ahead) || (cursor.isMark('{', ahead) && braced);
+}
+
 interface Begun extends Span {
   readonly slots: readonly SlotNode[];
 }
@@ -46,8 +54,7 @@ export function parseTensor(cursor: Cursor, head: TensorHead, begun: Begun): Exp
   }
   const span = { start: begun.start, end: Math.max(begun.end, cursor.lastEnd) };
   // In `{R^a}_{bcd}` the rest of the indices stands behind the brace.
-  const goesOn = cursor.isMark('}') && (cursor.isMark('^', 1) || cursor.isMark('_', 1) || cursor.isMark('{', 1));
-  if (!goesOn || begun.slots.length > 0) checkCount(cursor, head, slots, span);
+  if (!cursor.isMark('}') || !indicesFollow(cursor, 1)) checkCount(cursor, head, slots, span);
   return { kind: 'tensor', head, slots, ...span };
 }
 
