@@ -23,7 +23,7 @@ export function latexFault(passage: Passage): Diagnostic | undefined {
   const { text } = passage;
   const fail = (start: number, end: number, message: string, hint: string): Diagnostic =>
     errorAt(passage.locate(start, end), 'bad-latex', message, hint);
-  if (text.trim() === '') return fail(0, text.length, 'the LaTeX name is empty', "for example '\\alpha_0'");
+  if (!/[A-Za-z0-9]/.test(text)) return fail(0, text.length, 'the LaTeX name has no letter', "for example '\\alpha_0'");
   if (text.length > MAX_LATEX) {
     return fail(0, text.length, `the LaTeX name has more than ${MAX_LATEX} characters`, 'choose a shorter one');
   }

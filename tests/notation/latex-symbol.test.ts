@@ -78,7 +78,7 @@ describe('latexFault', () => {
   });
 
   it.each([
-    ['}{', '} closes no brace'],
+    ['}c{', '} closes no brace'],
     ['{c', '{ is never closed'],
     ['c_1_2', 'a second subscript'],
     ['c^1^2', 'a second superscript'],
@@ -89,8 +89,8 @@ describe('latexFault', () => {
     ['c%', '"%" is not allowed'],
     ['a & b', '"&" is not allowed'],
     ['<b>', '"<" is not allowed'],
-    ['\\\\', 'is not allowed'],
-    ['\\', 'is not allowed'],
+    ['c\\\\', 'is not allowed'],
+    ['c\\', 'is not allowed'],
     ['\\input{x}', '\\input is not allowed'],
     ['\\href{x}{y}', '\\href is not allowed'],
     ['\\mathrm', '\\mathrm needs an argument in braces'],
@@ -98,9 +98,10 @@ describe('latexFault', () => {
     ['c_\\hat{x}', '\\hat as a script needs braces around it'],
     ['\\boldsymbol{c}', '\\boldsymbol is not allowed'],
     ['\\omicron', '\\omicron is not allowed'],
-    ['é', 'is not allowed'],
+    ['cé', 'is not allowed'],
     ['c#1', '"#" is not allowed'],
-    ['', 'the LaTeX name is empty'],
+    ['', 'the LaTeX name has no letter'],
+    ['{}', 'the LaTeX name has no letter'],
     ['x'.repeat(101), 'more than 100 characters'],
     ['{{{{{{{{{x}}}}}}}}}', 'nested more than 8 deep'],
   ])('%j: %s', (latex, message) => {

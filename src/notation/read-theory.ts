@@ -1,0 +1,210 @@
+/**
+ * A theory file → Theory: YAML, declarations, Lagrangian, relations, matter. Independent faults are reported together;
+ * what only follows from another fault (a name unknown because its declaration is broken) is not.
+ */
+import { type Diagnostic, errorAt, InputError, warningAt } from './diagnostics.js';
+import { readLagrangian } from './lagrangian.js';
+import { MAX_DIAGNOSTICS, MAX_TEXT } from './limits.js';
+import { reservedMeaning } from './names.js';
+import { type Passage, plainPassage } from './passage.js';
+import { readMatter } from './read-matter.js';
+import { type Declarations, namedSymbols, readConstants, readScales } from './read-symbols.js';
+import { parseRelation } from './scalar.js';
+import { slugOf } from './slug.js';
+import type { LagrangianTerm, MatterComponent, Relation, Theory, TheorySymbol } from './theory.js';
+import { asRecord, asText } from './yaml-shape.js';
+import { readYaml, type YamlNode } from './yaml-source.js';
+import { passageOf } from './yaml-text.js';
+
+const KEYS = {
+  required: ['untwist', 'name', 'lagrangian'],
+  optional: ['conventions', 'constants', 'scales', 'impose', 'matter', 'geometry', 'symbols'],
+};
+const DEFAULT_GEOMETRY = 'flrw';
+const MAX_TITLE = 200;
+
+export interface TheoryOptions {
+  /** Relations of the command line (`--set`), applied after those of the file. */
+  readonly set?: readonly string[];
+}
+
+/**
+ * The theory that a file describes.
+ * @param file its name, for messages.
+ * @throws InputError with every error found, at most MAX_DIAGNOSTICS; codes in docs/errors.md.
+ */
+export function readTheory(text: string, file: string, options: TheoryOptions = {}): Theory {
+  const problems: Diagnostic[] = [];
+  const warnings: Diagnostic[] = [];
+  const values = asRecord(readYaml(text, file), 'a theory file', KEYS, problems);
+  const read = <T>(key: string, reader: (node: YamlNode) => T, otherwise: T): T => {
+    const node = values.get(key);
+    return node === undefined ? otherwise : reader(node);
+  };
+  read('untwist', (node) => checkVersion(node, problems), undefined);
+  const name = read('name', (node) => readName(node, problems), 'theory');
+  const signature = read('conventions', (node) => readSignature(node, problems), '-+++' as const);
+  const declarations: Declarations = new Map();
+  read('constants', (node) => readConstants(node, declarations, problems), undefined);
+  read('scales', (node) => readScales(node, declarations, problems), undefined);
+  const matter = read('matter', (node) => readMatter(node, declarations, problems), []);
+  const geometry = read('geometry', (node) => readGeometryName(node, problems), DEFAULT_GEOMETRY);
+
+  // An unknown name may only follow from a fault among the declarations, or from a misspelt key.
+  const declarationsStand = !problems.some((p) => CAN_HIDE_NAMES.has(p.code));
+  const keep = (found: readonly Diagnostic[]): void => {
+    problems.push(...found.filter((p) => declarationsStand || p.code !== 'unknown-symbol'));
+  };
+  const symbols = namedSymbols(values.get('symbols'), declarations, problems, warnings);
+  const lagrangian = read('lagrangian', (node) => readTerms(node, symbols, keep, warnings), []);
+  const relations = readRelations(values.get('impose'), options.set ?? [], symbols, matter, keep);
+  if (problems.length > 0) throw new InputError(limited(inOrder(problems)));
+  warnings.push(...unusedWarnings(declarations, lagrangian, relations));
+  const slug = slugOf(name);
+  return { name, slug, signature, symbols, lagrangian, relations, matter, geometry, warnings: inOrder(warnings) };
+}
+
+const CAN_HIDE_NAMES = new Set(['unknown-key', 'wrong-kind', 'bad-name', 'unknown-matter', 'missing-key']);
+
+function checkVersion(node: YamlNode, problems: Diagnostic[]): void {
+  const version = asText(node, 'untwist', problems)?.text.trim();
+  if (version === undefined || version === '1') return;
+  const message = `untwist: ${version.slice(0, 40)} is not a version of the file format`;
+  problems.push(errorAt(node.origin, 'bad-version', message, 'write untwist: 1'));
+}
+
+function readName(node: YamlNode, problems: Diagnostic[]): string {
+  const name = asText(node, 'name', problems)?.text.trim().replace(/\s+/g, ' ') ?? 'theory';
+  const fault = (message: string, hint: string): void => {
+    problems.push(errorAt(node.origin, 'bad-title', message, hint));
+  };
+  if (name.length > MAX_TITLE) fault(`the name has more than ${MAX_TITLE} characters`, 'choose a shorter one');
+  if (/\p{Cc}/u.test(name)) fault('the name contains a control character', 'remove it');
+  return name;
+}
+
+function readSignature(node: YamlNode, problems: Diagnostic[]): Theory['signature'] {
+  const value = asRecord(node, 'conventions', { required: [], optional: ['signature'] }, problems).get('signature');
+  const typed = value === undefined ? '-+++' : asText(value, 'signature', problems)?.text;
+  const signature = typed?.replace(/[−–]/g, '-').replace(/[\s,()]/g, '');
+  if (signature === '-+++' || signature === '+---') return signature;
+  if (value !== undefined && typed !== undefined) {
+    const message = `${JSON.stringify(typed.slice(0, 40))} is not a signature`;
+    problems.push(errorAt(value.origin, 'bad-signature', message, 'write "-+++" or "+---"'));
+  }
+  return '-+++';
+}
+
+function readGeometryName(node: YamlNode, problems: Diagnostic[]): string {
+  const name = asText(node, 'geometry', problems)?.text.trim() ?? DEFAULT_GEOMETRY;
+  if (!/^[a-z0-9-]{1,64}$/.test(name)) {
+    const message = `${JSON.stringify(name.slice(0, 40))} is not the name of a geometry`;
+    problems.push(
+      errorAt(node.origin, 'bad-geometry', message, 'a name in small letters, digits and hyphens, such as flrw'),
+    );
+  }
+  return name;
+}
+
+function readTerms(
+  node: YamlNode,
+  symbols: readonly TheorySymbol[],
+  keep: (found: readonly Diagnostic[]) => void,
+  warnings: Diagnostic[],
+): readonly LagrangianTerm[] {
+  const problems: Diagnostic[] = [];
+  const empty = node.kind === 'text' && node.text.trim() === '';
+  const text = empty ? node : asText(node, 'lagrangian', problems);
+  keep(problems);
+  if (text === undefined) return [];
+  try {
+    const reading = readLagrangian(passageOf(text), symbols);
+    warnings.push(...reading.warnings);
+    return reading.terms;
+  } catch (error) {
+    if (!(error instanceof InputError)) throw error;
+    keep(error.diagnostics);
+    return [];
+  }
+}
+
+function readRelations(
+  impose: YamlNode | undefined,
+  set: readonly string[],
+  symbols: readonly TheorySymbol[],
+  matter: readonly MatterComponent[],
+  keep: (found: readonly Diagnostic[]) => void,
+): readonly Relation[] {
+  const problems: Diagnostic[] = [];
+  const passages: Passage[] = [];
+  for (const node of impose?.kind === 'list' ? impose.items : impose === undefined ? [] : [impose]) {
+    const text = asText(node, 'a relation', problems);
+    if (text !== undefined) passages.push(passageOf(text));
+  }
+  for (const text of set) {
+    if (text.length <= MAX_TEXT) passages.push(plainPassage(text, '--set'));
+    else
+      problems.push({
+        code: 'size-limit',
+        severity: 'error',
+        message: `a relation has more than ${MAX_TEXT} characters`,
+        file: '--set',
+      });
+  }
+  const names = [...symbols.map((s) => s.name), ...matter.map((m) => m.density), 'k'];
+  const known = new Set(names);
+  const options = {
+    isSymbol: (name: string) => known.has(name),
+    names,
+    explain: (name: string) => {
+      const meaning = reservedMeaning(name);
+      if (meaning === undefined) return undefined;
+      if (name.startsWith('rho_')) return `${name} is not the density of a matter component of this theory`;
+      return `${name} stands for ${meaning}; a relation is between constants`;
+    },
+  };
+  const relations: Relation[] = [];
+  for (const passage of passages) {
+    try {
+      relations.push(parseRelation(passage, options));
+    } catch (error) {
+      if (!(error instanceof InputError)) throw error;
+      problems.push(...error.diagnostics);
+    }
+  }
+  keep(problems);
+  return relations;
+}
+
+/** Constants and scales that occur neither in the Lagrangian nor in a relation. */
+function unusedWarnings(
+  declarations: Declarations,
+  lagrangian: readonly LagrangianTerm[],
+  relations: readonly Relation[],
+): readonly Diagnostic[] {
+  const used = new Set<string>();
+  const scalars = [...lagrangian.map((t) => t.scalar), ...relations.flatMap((r) => [...r.left, ...r.right])];
+  for (const { powers } of scalars) for (const [name] of powers) used.add(name);
+  const unused = [...declarations.values()].filter(
+    // M defines the Friedmann form whether the Lagrangian contains it or not.
+    ({ name, role }) => !used.has(name) && role !== 'vacuum' && !(role === 'scale' && name === 'M'),
+  );
+  return unused.map(({ name, role, origin }) =>
+    warningAt(origin, 'unused-symbol', `the ${role} ${name} is declared but not used`, 'remove it, or use it'),
+  );
+}
+
+/** Those of the file by place, then those of --set. */
+function inOrder(diagnostics: readonly Diagnostic[]): readonly Diagnostic[] {
+  const late = (d: Diagnostic): number => (d.file === '--set' ? 1 : 0);
+  return [...diagnostics].sort((a, b) => late(a) - late(b) || (late(a) === 0 ? (a.start ?? 0) - (b.start ?? 0) : 0));
+}
+
+function limited(diagnostics: readonly Diagnostic[]): readonly Diagnostic[] {
+  const rest = diagnostics.length - MAX_DIAGNOSTICS;
+  if (rest <= 0) return diagnostics;
+  const { file } = diagnostics[0]!;
+  const message = `${rest} more errors are not shown`;
+  const more: Diagnostic = { code: 'more-errors', severity: 'error', message, ...(file === undefined ? {} : { file }) };
+  return [...diagnostics.slice(0, MAX_DIAGNOSTICS), more];
+}
