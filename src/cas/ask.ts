@@ -1,0 +1,39 @@
+/**
+ * Asks a computer algebra package one question, in a thread of its own and with a time limit.
+ * Invariant: the packages are loaded in that thread only and only when asked; every fault comes back as a value, none is
+ * thrown. What is asked of them and whether a reply is believed is not decided here.
+ */
+import { Worker } from 'node:worker_threads';
+import type { Answer, Question } from './worker.js';
+
+export type { Answer, Question } from './worker.js';
+
+/** Megabytes of heap after which the thread is given up. */
+const MEMORY_LIMIT_MB = 512;
+
+/** A thread loads plain JavaScript only: where this file is run as source, as in tests, the compiled worker serves it. */
+const WORKER = new URL(import.meta.url.endsWith('.ts') ? '../../dist/cas/worker.js' : './worker.js', import.meta.url);
+
+/** The answer to a question, or the fault `time limit` after so many milliseconds, loading included. */
+export function ask(question: Question, timeLimitMs: number): Promise<Answer> {
+  return new Promise((resolve) => {
+    const worker = new Worker(WORKER, {
+      workerData: question,
+      // Options of the process, such as --input-type, are not for a file.
+      execArgv: [],
+      stdout: true,
+      stderr: true,
+      resourceLimits: { maxOldGenerationSizeMb: MEMORY_LIMIT_MB },
+    });
+    const finish = (answer: Answer): void => {
+      clearTimeout(timer);
+      // Of several reports only the first counts; a promise is settled once.
+      resolve(answer);
+      void worker.terminate();
+    };
+    const timer = setTimeout(() => finish({ fault: 'time limit' }), timeLimitMs);
+    worker.once('message', finish);
+    worker.once('error', (error) => finish({ fault: error instanceof Error ? error.message : String(error) }));
+    worker.once('exit', () => finish({ fault: 'no answer' }));
+  });
+}
