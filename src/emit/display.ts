@@ -61,7 +61,7 @@ export interface Viewer {
 }
 
 /** Generator of a rate's jets; no name of a user can be spelled so. */
-const rateField = (scale: string): string => `rate of ${scale}`;
+export const rateField = (scale: string): string => `rate of ${scale}`;
 
 /**
  * A viewer of a derivation.

@@ -10,8 +10,9 @@ import {
   type Section,
   type Writer,
 } from './latex-display.js';
-import { type Equation, LINE_WIDTH, type Lines, rowDisplays } from './latex-lines.js';
-import { enumerated, type Inline, math, type Prose, prose, withFormulas } from './latex-text.js';
+import { type Equation, type Lines, rowDisplays, SINGLE_LINE } from './latex-lines.js';
+import { rateTex } from './latex-math.js';
+import { enumerated, math, type Prose, prose, withFormulas } from './latex-text.js';
 import { widthOf } from './latex-width.js';
 
 const ON_THE_BACKGROUND: Prose = prose`The equivalence holds on the homogeneous and isotropic background. Signs in the kinetic matrix say nothing about the particle spectrum of the torsion theory.`;
@@ -37,11 +38,11 @@ export function analogueSection(writer: Writer): Section {
 function actionLines(pieces: readonly string[]): Lines {
   const start = '\\frac{\\mathcal{L}_{\\mathrm{ST}}}{\\sqrt{-g}}';
   const flat = `${start} = ${pieces.join(' ')}`;
-  if (widthOf(flat) <= LINE_WIDTH) return [flat];
+  if (widthOf(flat) <= SINGLE_LINE) return [flat];
   const lines: string[] = [];
   let current = `${start} &=`;
   for (const piece of pieces) {
-    if (widthOf(`${current} ${piece}`) > LINE_WIDTH) {
+    if (widthOf(`${current} ${piece}`) > SINGLE_LINE) {
       lines.push(current);
       current = `&\\quad {}${piece}`;
     } else current = `${current} ${piece}`;
@@ -67,12 +68,11 @@ function biScalarPassages(writer: Writer, form: BiScalarForm): Passage[] {
     ...kinetic.map(([key]) => `+ K_{${indices(key)}} X^{${indices(key)}}`),
     ...(current.length > 0 ? ['+ \\sqrt{| J_{\\mu} J^{\\mu} |}'] : []),
     ...(isZero(form.potential) ? [] : ['- V']),
-    '+ \\mathcal{L}_{\\mathrm{m}}',
+    ...(derivation.fluids.length > 0 ? ['+ \\mathcal{L}_{\\mathrm{m}}'] : []),
   ];
-  pieces[0] = pieces[0]!.replace(/^\+ /, '');
+  if (pieces.length === 0) pieces.push('0');
+  pieces[0] = pieces[0]!.replace(/^\+ /, '').replace(/^- /, '-');
   const names = enumerated(scalars.map((s) => math(s.latex)));
-  const where: Inline[] = [];
-  if (!isZero(form.g4)) where.push(math('\\mathring{R}'), ', the curvature of the metric');
   const definitions: Equation[] = [];
   if (kinetic.length > 0)
     definitions.push(fixedRow('X^{AB}', '-\\tfrac{1}{2} \\partial_{\\mu} A \\, \\partial^{\\mu} B'));
@@ -80,12 +80,12 @@ function biScalarPassages(writer: Writer, form: BiScalarForm): Passage[] {
     definitions.push(
       fixedRow('J_{\\mu}', current.map(([q]) => `J_{${texOf.get(q)}} \\partial_{\\mu} ${texOf.get(q)}`).join(' + ')),
     );
-  const rate = current.map(([q]) => `J_{${texOf.get(q)}} \\dot{${texOf.get(q)}}`).join(' + ');
-  const branch = prose`On the background ${math('J_{\\mu}')} is timelike and the root is ${math(`| ${rate} |`)}; the theory corresponds to the branch on which it enters as ${math(rate)}, whatever its sign. Where ${math('J_{\\mu}')} vanishes, surfaces of the scalars are singular.`;
+  const rate = current.map(([q]) => `J_{${texOf.get(q)}} ${rateTex(texOf.get(q)!)}`).join(' + ');
+  const branch = prose`On the background ${math('J_{\\mu}')} is timelike and the root is ${math(`| ${rate} |`)}; the theory corresponds to the branch on which it enters as ${math(rate)}, whatever its sign. Its zeros are singular surfaces.`;
   const domain =
     form.validFor === 'every k'
       ? prose`The form holds for every value of ${math(latex(geometry.isotropic!.curvature))}.`
-      : prose`The form holds at ${math(`${latex(geometry.isotropic!.curvature)} = 0`)}; what it lacks otherwise is given below.`;
+      : prose`The form holds at ${math(`${latex(geometry.isotropic!.curvature)} = 0`)}; what it lacks otherwise is stated below.`;
   const functions = (rows: readonly (readonly [string, Poly])[]): Lines[] => rowDisplays(polyRows(plain, rows));
   const passages = [
     passage(
@@ -93,9 +93,8 @@ function biScalarPassages(writer: Writer, form: BiScalarForm): Passage[] {
       'Covariant form',
       {
         text: [
-          prose`With the scalars ${names} on a space-time without torsion, metric ${math('g_{\\mu\\nu}')}${where.length > 0 ? ' and ' : ''}${where}, the same equations of the background follow from`,
+          prose`With the scalars ${names} on a space-time without torsion, with a metric of signature ${math('(-,+,+,+)')} and its curvature scalar ${math('\\mathring{R}')}, the same equations of the background follow from`,
         ],
-        remarks: [domain, ON_THE_BACKGROUND],
       },
       [actionLines(pieces)],
     ),
@@ -113,7 +112,7 @@ function biScalarPassages(writer: Writer, form: BiScalarForm): Passage[] {
     passage(
       'G4',
       'Coupling to curvature',
-      { text: [prose`The functions of the scalars are`] },
+      { text: [prose`The functions of the scalars are the coupling to curvature`] },
       functions([['G_{4}', form.g4]]),
     ),
   );
@@ -122,7 +121,7 @@ function biScalarPassages(writer: Writer, form: BiScalarForm): Passage[] {
       passage(
         'kinetic',
         'Kinetic matrix',
-        {},
+        { text: [prose`the kinetic matrix, each pair of scalars once,`] },
         functions([...form.kinetic].map(([key, value]) => [`K_{${indices(key)}}`, value] as const)),
       ),
     );
@@ -130,10 +129,11 @@ function biScalarPassages(writer: Writer, form: BiScalarForm): Passage[] {
     passage(
       'current',
       'Current',
-      {},
+      { text: [prose`the current`] },
       functions([...form.current].map(([q, value]) => [`J_{${texOf.get(q)}}`, value] as const)),
     ),
-    passage('potential', 'Potential', {}, functions([['V', form.potential]])),
+    passage('potential', 'Potential', { text: [prose`and the potential`] }, functions([['V', form.potential]])),
+    passage('validity', 'Validity', { text: [[...domain, ' ', ...ON_THE_BACKGROUND]] }),
     passage(
       'curvature-obstruction',
       'Curvature obstruction',
@@ -175,10 +175,13 @@ export function couplingsSection({ derivation, passage, plain, latex }: Writer):
   return { id: 'couplings', title: 'What the background sees of the couplings', passages };
 }
 
+/** `dd = 0` keeps its small letters. */
+const sentenceCase = (text: string): string => text.replace(/^[a-z](?=[a-z]{2})/, (c) => c.toUpperCase());
+
 /** The statements that were tested. */
 export function checksSection({ derivation, passage }: Writer): Section {
   const text = derivation.checks.map(
-    ({ name, detail, holds }): Prose => [`${name}: `, ...withFormulas(detail), holds ? '.' : ' (fails).'],
+    ({ name, detail, holds }): Prose => [`${sentenceCase(name)}: `, ...withFormulas(detail), holds ? '.' : ' (fails).'],
   );
   const intro = prose`Each of these statements was tested by exact algebra:`;
   return { id: 'checks', title: 'Checks', passages: [passage('checks', 'Checks', { text: [intro, ...text] })] };

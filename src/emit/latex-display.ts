@@ -6,7 +6,7 @@ import type { Poly } from '../algebra/poly.js';
 import type { Derivation } from '../derivation.js';
 import { latexTerms } from '../notation/print.js';
 import type { LagrangianTerm, TheorySymbol } from '../notation/theory.js';
-import { type DisplaySum, type Viewer, type ViewOptions, viewerOf } from './display.js';
+import { type DisplaySum, rateField, type Viewer, type ViewOptions, viewerOf } from './display.js';
 import { displayBody, type Equation, equationDisplays, type Lines, numberedDisplay } from './latex-lines.js';
 import { overTex, sumTex, type TexTerm } from './latex-math.js';
 import type { Prose } from './latex-text.js';
@@ -52,8 +52,10 @@ export interface Writer {
   readonly plain: Viewer;
   /** Declared symbols with the LaTeX that fits into formulas. */
   readonly symbols: readonly TheorySymbol[];
-  /** LaTeX of a symbol of the display: a coupling, `a`, `k`, a field. */
+  /** LaTeX of a coupling, a parameter or a field of the geometry. */
   latex(name: string): string;
+  /** LaTeX of the logarithmic rate of a scale factor. */
+  rate(scale: string): string;
   passage(
     id: string,
     title: string,
@@ -73,6 +75,7 @@ export function writerOf(derivation: Derivation, options: LatexOptions = {}): Wr
     viewer,
     plain,
     latex,
+    rate: (scale) => viewer.symbols.get(rateField(scale))!.latex,
     symbols: derivation.theory.symbols.map((s) => ({ ...s, latex: latex(s.name) })),
     passage: (id, title, { text = [], remarks = [] }, lines = []) => ({
       id,
@@ -103,7 +106,7 @@ export function sumDisplays(name: string, sum: DisplaySum, right = '', over: rea
     left: overTex(name, sum.divided, over),
     terms: sumTex(sum),
     right,
-    part: (n) => `${withoutScripts(name)}^{(${n})}`,
+    part: (n) => `${withoutScripts(name)}^{[${n}]}`,
   });
 }
 
@@ -115,7 +118,7 @@ export const polyRows = (viewer: Viewer, rows: Iterable<readonly [left: string, 
   [...rows].map(([left, value]) => ({
     left,
     terms: sumTex(viewer.sum(value, { divide: false })),
-    part: (n) => `${withoutScripts(left)}^{(${n})}`,
+    part: (n) => `${withoutScripts(left)}^{[${n}]}`,
   }));
 
 /** Rows `polynomial = 0`. */

@@ -42,14 +42,18 @@ function levelOf(latex: string): Level {
 
 const DOTS = ['', '\\dot', '\\ddot', '\\dddot'];
 
-/** A symbol with its dots: the dot sits on the letter, not on letter and subscript together. */
-function symbolPiece({ latex, order }: DisplaySymbol): Piece {
+/** The n-th time derivative: the dots sit on the letter, not on letter and subscript together. */
+function dotted(latex: string, order: number): Piece {
   if (order === 0) return { tex: latex, level: levelOf(latex) };
-  const [, letter, scripts] = /^(\\[A-Za-z]+|[A-Za-z])( *_.*)?$/.exec(latex) ?? [undefined, latex, ''];
-  if (order < DOTS.length) return { tex: `${DOTS[order]}{${letter}}${scripts ?? ''}`, level: PRECEDENCE.atom };
-  return { tex: `${letter}${scripts ?? ''}^{(${order})}`, level: PRECEDENCE.power };
+  const [, letter, scripts = ''] = /^(\\[A-Za-z]+|[A-Za-z])( *_.*)?$/.exec(latex) ?? [undefined, latex];
+  if (order < DOTS.length) return { tex: `${DOTS[order]}{${letter}}${scripts}`, level: PRECEDENCE.atom };
+  return { tex: `${letter}${scripts}^{(${order})}`, level: PRECEDENCE.power };
 }
 
+/** LaTeX of the time derivative of a quantity. */
+export const rateTex = (latex: string): string => dotted(latex, 1).tex;
+
+const symbolPiece = ({ latex, order }: DisplaySymbol): Piece => dotted(latex, order);
 export const symbolTex = (symbol: DisplaySymbol): string => symbolPiece(symbol).tex;
 
 /** base^exponent. */

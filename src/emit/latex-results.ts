@@ -1,9 +1,9 @@
 /** The sections of results: reduced Lagrangian, field equations, Friedmann form, metric analogue, couplings, checks. */
 import { isZero } from '../algebra/poly.js';
 import type { FriedmannForm } from '../derivation.js';
-import { equationOf, type Passage, type Section, type Writer } from './latex-display.js';
-import { LINE_WIDTH, type Lines } from './latex-lines.js';
-import { inlineTex, productTex, sumTex } from './latex-math.js';
+import { equationOf, fixedRow, type Passage, type Section, type Writer } from './latex-display.js';
+import { type Lines, rowDisplays, SINGLE_LINE } from './latex-lines.js';
+import { inlineTex, productTex, rateTex, sumTex } from './latex-math.js';
 import { math, prose } from './latex-text.js';
 import { widthOf } from './latex-width.js';
 
@@ -31,14 +31,25 @@ export function reductionSection(writer: Writer): Section {
   ];
   if (isZero(dropped)) {
     const text = prose`The gravitational part of it contains no total derivative that could be dropped.`;
-    passages.push(passage('total-derivatives', 'Total derivatives', { text: [text] }));
+    passages.push(passage('total-derivative', 'Total derivatives', { text: [text] }));
   } else {
-    const text = prose`The gravitational part of it is ${math('L_{\\mathrm{red}} + \\mathrm{d} F / \\mathrm{d} t')}; the second part does not change the equations and is dropped:`;
     passages.push(
-      passage('total-derivatives', 'Total derivatives', { text: [text] }, [
-        ...equationOf(viewer, 'L_{\\mathrm{red}}', reducedGravity, { over }),
-        ...equationOf(viewer, 'F', dropped),
-      ]),
+      passage(
+        'reduced-gravity',
+        'Without total derivatives',
+        {
+          text: [
+            prose`Its gravitational part is ${math('L_{\\mathrm{red}} + \\mathrm{d} F / \\mathrm{d} t')}. The derivative contributes nothing to the equations and is dropped, which leaves`,
+          ],
+        },
+        equationOf(viewer, 'L_{\\mathrm{red}}', reducedGravity, { over }),
+      ),
+      passage(
+        'total-derivative',
+        'Total derivative',
+        { text: [prose`The function in the derivative is`] },
+        equationOf(viewer, 'F', dropped),
+      ),
     );
   }
   return { id: 'reduction', title: 'Reduced Lagrangian', passages };
@@ -46,44 +57,43 @@ export function reductionSection(writer: Writer): Section {
 
 /** E_q = 0 for every field. */
 export function equationsSection(writer: Writer): Section {
-  const { derivation, passage, viewer, latex: texOf } = writer;
+  const { derivation, passage, viewer, latex } = writer;
   const { geometry, equations } = derivation;
-  const intro = prose`The Euler–Lagrange expressions ${math('E_{q} = \\partial L/\\partial q - \\mathrm{d}/\\mathrm{d} t \\, (\\partial L/\\partial \\dot{q})')} of the Lagrangian with matter are written at ${math(`${texOf(geometry.lapse)} = 1`)}, after the variation, with the power of the scale factor on the left divided out.`;
-  const replaced = viewer.variables
-    ? [prose`They are the equations of the original fields; only the variables in them are others.`]
-    : [];
-  return {
-    id: 'equations',
-    title: 'Field equations',
-    passages: [...equations].map(([q, value], i) => {
-      const { latex, meaning } = geometry.fields.find((f) => f.name === q)!;
-      const own = isZero(value)
-        ? prose`Variation of ${math(latex)} (${meaning}) gives nothing: this expression vanishes identically.`
-        : prose`Variation of ${math(latex)} (${meaning}):`;
-      const lines = equationOf(viewer, `E_{${latex}}`, value, { right: isZero(value) ? '' : '= 0' });
-      return passage(
-        `equation-${q}`,
-        `Equation of the ${meaning}`,
-        { text: [...(i === 0 ? [intro, ...replaced] : []), own] },
-        lines,
-      );
-    }),
-  };
+  const definition = fixedRow(
+    'E_{q}',
+    '\\frac{\\partial L}{\\partial q} - \\frac{\\mathrm{d}}{\\mathrm{d} t} \\frac{\\partial L}{\\partial \\dot{q}}',
+  );
+  const remark = prose`in which ${math(`${latex(geometry.lapse)} = 1`)} after the variation. The power of the scale factor on the left is divided out.${viewer.variables ? ' They are the equations of the original fields; only the variables in them are others.' : ''}`;
+  const intro = passage(
+    'euler-lagrange',
+    'Variation',
+    { text: [prose`The equations of the Lagrangian with matter are the vanishing of`], remarks: [remark] },
+    rowDisplays([definition]),
+  );
+  const each = [...equations].map(([q, value]) => {
+    const field = geometry.fields.find((f) => f.name === q)!;
+    const text = isZero(value)
+      ? prose`The variation of ${math(field.latex)} (${field.meaning}) gives nothing: this expression vanishes identically.`
+      : prose`Variation of ${math(field.latex)} (${field.meaning}):`;
+    const lines = equationOf(viewer, `E_{${field.latex}}`, value, { right: isZero(value) ? '' : '= 0' });
+    return passage(`equation-${q}`, `Equation of the ${field.meaning}`, { text: [text] }, lines);
+  });
+  return { id: 'equations', title: 'Field equations', passages: [intro, ...each] };
 }
 
 /** ρ_T, p_T, w_T. */
 export function friedmannSection(writer: Writer): Section | undefined {
-  const { derivation, passage, latex, viewer } = writer;
+  const { derivation, passage, latex, rate, viewer } = writer;
   const { friedmann, geometry, fluids } = derivation;
   if (!friedmann || !geometry.isotropic) return undefined;
   const { scale, curvature } = geometry.isotropic;
-  const h = latex(`rate of ${scale}`);
+  const h = rate(scale);
   const planck = `${latex('M')}^{2}`;
   const curved = `\\frac{${latex(curvature)}}{${latex(scale)}^{2}}`;
   const [density, pressure] = fluids.length > 0 ? ['\\rho + \\rho_{T}', 'p + p_{T}'] : ['\\rho_{T}', 'p_{T}'];
   const first: Lines = [
     `3 ${planck} \\Bigl( ${h}^{2} + ${curved} \\Bigr) &= ${density}`,
-    `-${planck} \\Bigl( 2 \\dot{${h}} + 3 ${h}^{2} + ${curved} \\Bigr) &= ${pressure}`,
+    `-${planck} \\Bigl( 2 ${rateTex(h)} + 3 ${h}^{2} + ${curved} \\Bigr) &= ${pressure}`,
   ];
   const passages = [
     passage(
@@ -102,10 +112,15 @@ export function friedmannSection(writer: Writer): Section | undefined {
     passage(
       'rho-T',
       'Effective energy density',
-      {},
+      { text: [prose`The effective energy density is`] },
       equationOf(viewer, '\\rho_{T}', friedmann.rhoT, { divide: false }),
     ),
-    passage('p-T', 'Effective pressure', {}, equationOf(viewer, 'p_{T}', friedmann.pT, { divide: false })),
+    passage(
+      'p-T',
+      'Effective pressure',
+      { text: [prose`The effective pressure is`] },
+      equationOf(viewer, 'p_{T}', friedmann.pT, { divide: false }),
+    ),
   ];
   if (!isZero(friedmann.rhoT)) passages.push(equationOfState(writer, friedmann));
   return { id: 'friedmann', title: 'Friedmann form', passages };
@@ -118,8 +133,8 @@ function equationOfState(writer: Writer, friedmann: FriedmannForm): Passage {
   const name = 'w_{T} = \\frac{p_{T}}{\\rho_{T}}';
   const quotient = shortQuotient(writer, friedmann);
   const whole = `${name} = ${quotient}`;
-  const shown = quotient !== undefined && widthOf(whole) <= LINE_WIDTH ? whole : name;
-  return writer.passage('w-T', 'Effective equation of state', {}, [[shown]]);
+  const shown = quotient !== undefined && widthOf(whole) <= SINGLE_LINE ? whole : name;
+  return writer.passage('w-T', 'Effective equation of state', { text: [prose`Their ratio is`] }, [[shown]]);
 }
 
 /** p_T/ρ_T in lowest terms; undefined when it is long or a power of the scale factor would be left over. */

@@ -24,8 +24,11 @@ export function prose(texts: TemplateStringsArray, ...values: readonly (Inline |
 }
 
 /** `x, y and z`. */
-export function enumerated(items: readonly Inline[]): Prose {
-  return items.flatMap((item, i) => (i === 0 ? [item] : [i === items.length - 1 ? ' and ' : ', ', item]));
+export function enumerated(items: readonly (Inline | Prose)[]): Prose {
+  return items.flatMap((item, i): Prose => {
+    const own = typeof item === 'string' || 'math' in item ? [item] : item;
+    return i === 0 ? own : [i === items.length - 1 ? ' and ' : ', ', ...own];
+  });
 }
 
 const SPECIAL: ReadonlyMap<string, string> = new Map([
@@ -167,17 +170,31 @@ function escapeSign(c: string): string {
     : `[U+${code.toString(16).toUpperCase().padStart(4, '0')}]`;
 }
 
-/** A name with a subscript in text that this program wrote, such as `ρ_T` or `E_N`, is a formula. */
-const SUBSCRIPTED = /([A-Za-z\u03b1-\u03c9])_([A-Za-z0-9])(?![A-Za-z0-9])/g;
+/** `ρ_T`, `E_N` and the letters N, H, k on their own, in text that this program wrote, are formulas. */
+const FORMULA = /([A-Za-z\u03b1-\u03c9])_([A-Za-z0-9])(?![A-Za-z0-9])|(?<![A-Za-z0-9_])[NHk](?![A-Za-z0-9_])/g;
 
-/** Text of this program (never of a user) with its subscripted names as formulas. */
+/** Text of this program (never of a user) with its symbols as formulas. */
 export function withFormulas(text: string): Prose {
+  return spliced(text, FORMULA, ([whole, base, script]) => {
+    if (base === undefined) return whole;
+    const letter = greekTex(base);
+    return `${letter === undefined ? base : `\\${letter}`}_{${script}}`;
+  });
+}
+
+/** Text with the given words, such as `phi`, as the formulas that they name. */
+export function withNames(text: string, names: ReadonlyMap<string, string>): Prose {
+  return spliced(text, /[A-Za-z][A-Za-z0-9_]+/g, ([word]) => names.get(word));
+}
+
+function spliced(text: string, pattern: RegExp, tex: (match: RegExpMatchArray) => string | undefined): Prose {
   const out: Inline[] = [];
   let end = 0;
-  for (const match of text.matchAll(SUBSCRIPTED)) {
-    const letter = greekTex(match[1]!);
+  for (const match of text.matchAll(pattern)) {
+    const formula = tex(match);
+    if (formula === undefined) continue;
     if (match.index > end) out.push(text.slice(end, match.index));
-    out.push(math(`${letter === undefined ? match[1] : `\\${letter}`}_{${match[2]}}`));
+    out.push(math(formula));
     end = match.index + match[0].length;
   }
   if (end < text.length) out.push(text.slice(end));

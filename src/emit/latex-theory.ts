@@ -14,13 +14,19 @@ import {
   type Writer,
 } from './latex-display.js';
 import { type Equation, equationDisplays, rowDisplays } from './latex-lines.js';
-import { pulledOutTex, sumTex, type TexTerm, termTex } from './latex-math.js';
-import { enumerated, type Inline, math, type Prose, prose } from './latex-text.js';
+import { pulledOutTex, rateTex, sumTex, type TexTerm, termTex } from './latex-math.js';
+import { enumerated, math, type Prose, prose, withNames } from './latex-text.js';
+import { widthOf } from './latex-width.js';
+
+/** Points beyond which a product of tensors gets a name, since it could not be a left side. */
+const WIDE_PRODUCT = 150;
 
 /** Definitions that every other formula rests on. */
 function conventions({ derivation, passage }: Writer): ReturnType<Writer['passage']> {
   const signs = derivation.geometry.tensors.metric.join(', ');
   const rows = [
+    fixedRow('\\eta_{ab}', `\\mathrm{diag}(${signs})`),
+    fixedRow('\\Gamma_{ab}', '-\\Gamma_{ba}'),
     fixedRow(
       'T^{a}',
       '\\mathrm{d} e^{a} + \\Gamma^{a}{}_{b} \\wedge e^{b} = \\tfrac{1}{2} T^{a}{}_{bc} \\, e^{b} \\wedge e^{c}',
@@ -32,7 +38,7 @@ function conventions({ derivation, passage }: Writer): ReturnType<Writer['passag
     fixedRow('R_{ab}', 'R^{c}{}_{acb}, \\quad R = \\eta^{ab} R_{ab}, \\quad T_{a} = T^{b}{}_{ab}'),
     fixedRow('A^{a}', '\\epsilon^{abcd} T_{bcd}, \\quad \\epsilon_{0123} = +1'),
   ];
-  const text = prose`In an orthonormal coframe ${math('e^{a}')} with ${math(`\\eta_{ab} = \\mathrm{diag}(${signs})`)} a connection ${math('\\Gamma^{a}{}_{b}')} that is compatible with the metric, ${math('\\Gamma_{ab} = -\\Gamma_{ba}')}, has the torsion and the curvature`;
+  const text = prose`With a coframe ${math('e^{a}')} that is orthonormal with respect to ${math('\\eta_{ab}')} and a connection ${math('\\Gamma^{a}{}_{b}')} that is compatible with it, torsion and curvature are defined by`;
   const units = prose`Units are those in which ${math('c = \\hbar = 1')}; ${math('M')} is the reduced Planck mass, and general relativity has the Lagrangian ${math(`${signs.startsWith('1') ? '-' : ''}\\tfrac{1}{2} M^{2} R`)}.`;
   return passage('conventions', 'Conventions', { text: [text], remarks: [units] }, rowDisplays(rows));
 }
@@ -55,16 +61,16 @@ export function theorySection(writer: Writer): Section {
   const { theory, relations, fluids } = derivation;
   const passages = [conventions(writer)];
   const typed = typedTerms(latexTerms(theory.lagrangian, symbols));
-  const part = (n: number): string => `\\mathcal{L}^{(${n})}`;
+  const part = (n: number): string => `\\mathcal{L}^{[${n}]}`;
   const abbreviated = [...viewer.symbols.values()].filter((s) => s.isAbbreviated && s.order === 0);
-  const names = abbreviated.flatMap((s, i): Inline[] => [i === 0 ? '' : ', ', math(s.latex), ' for ', s.name]);
+  const names = abbreviated.map((s): Prose => [math(s.latex), ' for ', s.name]);
   passages.push(
     passage(
       'lagrangian',
       'The Lagrangian',
       {
         text: [prose`The Lagrangian, as it was understood from the theory file, is`],
-        remarks: abbreviated.length > 0 ? [prose`Long names are abbreviated: ${names}.`] : [],
+        remarks: abbreviated.length > 0 ? [prose`Long names are abbreviated: ${enumerated(names)}.`] : [],
       },
       equationDisplays({ left: '\\mathcal{L}', terms: typed, part }),
     ),
@@ -112,22 +118,11 @@ function matterPassage(writer: Writer): ReturnType<Writer['passage']> {
     fluids.flatMap((f) => [...sumTex(viewer.sum(f[of], { divide: false }))]);
   const each = theory.matter.map((m): Prose => {
     const fluid = fluids.find((f) => f.name === m.name);
-    const density = fluid?.isSource
-      ? 'with the density '
-      : m.kind === 'vacuum'
-        ? 'with the constant density '
-        : 'with, at unit scale factor, the density ';
-    return [
-      m.kind === 'vacuum' ? 'vacuum energy' : m.name,
-      ' (',
-      math(`w = ${printRational(m.w)}`),
-      `, ${density}`,
-      math(latex(m.density)),
-      ')',
-    ];
+    const isConstant = fluid?.isSource === true || m.kind === 'vacuum';
+    const name = m.kind === 'vacuum' ? 'vacuum energy' : m.name;
+    return prose`${name} (${math(`w = ${printRational(m.w)}`)}, density ${math(latex(m.density))}${isConstant ? '' : ' at unit scale factor'})`;
   });
-  const list = each.flatMap((item, i): Inline[] => [i === 0 ? '' : i === each.length - 1 ? ' and ' : ', ', ...item]);
-  const text = prose`Matter enters as minus its energy density per volume, conserved on its own: ${list}. In total`;
+  const text = prose`Matter enters as minus its energy density per volume and is conserved on its own: ${enumerated(each)}. In total`;
   const rows: Equation[] = [
     { left: '\\rho', terms: total('rho') },
     { left: 'p', terms: total('pressure') },
@@ -137,35 +132,26 @@ function matterPassage(writer: Writer): ReturnType<Writer['passage']> {
 
 /** Values of the invariants, in components of torsion and curvature. */
 export function geometrySection(writer: Writer): Section {
-  const { derivation, viewer, passage, latex } = writer;
+  const { derivation, viewer, passage, latex, rate } = writer;
   const { geometry, invariants } = derivation;
-  const { lapse, rates, variables } = {
-    lapse: latex(geometry.lapse),
-    rates: geometry.rates,
-    variables: viewer.variables,
-  };
+  const { variables } = viewer;
   const components = componentTable(derivation);
-  const rateText = [...rates].map(([a]): Inline => {
-    const rate = latex(`rate of ${a}`);
-    return math(
-      `${rate} = \\dot{${geometry.fields.find((f) => f.name === a)!.latex}}/${geometry.fields.find((f) => f.name === a)!.latex}`,
-    );
-  });
-  const shown = viewer.fields.map((f): Prose => [math(f.latex), ` (${f.meaning})`]);
-  const list = shown.flatMap((item, i): Inline[] => [i === 0 ? '' : i === shown.length - 1 ? ' and ' : ', ', ...item]);
+  const rates = [...geometry.rates.keys()].map((a) => math(`${rate(a)} = ${rateTex(latex(a))}/${latex(a)}`));
+  const fields = viewer.fields.map((f): Prose => prose`${math(f.latex)} (${f.meaning})`);
+  const names = new Map([...geometry.fields, ...geometry.parameters].map((s) => [s.name, s.latex]));
   const passages = [
     passage('fields', 'Geometry', {
       text: [
-        prose`The geometry is ${geometry.title} (${geometry.source}). ${geometry.why} Its functions of time are ${list}.`,
-        prose`A dot is a derivative with respect to cosmic time, ${math(`${lapse} \\, \\mathrm{d} t`)}${rateText.length > 0 ? ', and ' : ''}${enumerated(rateText)}.`,
+        prose`The geometry is ${geometry.title} (${geometry.source}). ${withNames(geometry.why, names)} The functions of time are ${enumerated(fields)}.`,
+        prose`A dot is a derivative with respect to cosmic time, ${math(`${latex(geometry.lapse)} \\, \\mathrm{d} t`)}${rates.length > 0 ? ', and ' : ''}${enumerated(rates)}.`,
       ],
     }),
   ];
   if (variables) {
     const rows = [...viewer.replaced].map(
-      ([name, sum]): Equation => ({ left: geometry.fields.find((f) => f.name === name)!.latex, terms: sumTex(sum) }),
+      ([name, sum]): Equation => ({ left: names.get(name) ?? name, terms: sumTex(sum) }),
     );
-    const text = prose`All equations below are printed in other variables, which are put into them for`;
+    const text = prose`The equations are those of the original fields, with these expressions put in:`;
     passages.push(passage('variables', 'Variables', { text: [text] }, rowDisplays(rows)));
   }
   const definitions = polyRows(
@@ -180,12 +166,16 @@ export function geometrySection(writer: Writer): Section {
       rowDisplays(definitions),
     ),
   );
-  const rows = invariants.map(
-    ({ factors, value }): Equation => ({
-      left: tensorsTex(factors),
-      terms: isZero(value) ? [] : pulledOutTex(sumOf(value, components, false)),
-    }),
-  );
+  const rows = invariants.flatMap(({ factors, value }, i): Equation[] => {
+    const tensors = tensorsTex(factors);
+    const terms = isZero(value) ? [] : pulledOutTex(sumOf(value, components, false));
+    if (widthOf(tensors) <= WIDE_PRODUCT) return [{ left: tensors, terms }];
+    const name = `\\mathcal{I}_{${i + 1}}`;
+    return [
+      { left: name, terms: typedTerms([tensors]) },
+      { left: name, terms },
+    ];
+  });
   if (rows.length > 0)
     passages.push(
       passage(

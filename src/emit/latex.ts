@@ -51,6 +51,7 @@ const PREAMBLE = `\\documentclass{article}
 % The same file fits a two-column journal; only the line above changes, for instance to
 %   \\documentclass[aps,prd,twocolumn]{revtex4-2}
 \\usepackage{amsmath}
+\\allowdisplaybreaks
 \\setlength{\\emergencystretch}{3em}
 \\raggedbottom`;
 
@@ -62,7 +63,7 @@ export function derivationTex(derivation: Derivation, options: LatexOptions = {}
     '\\begin{document}',
     `\\title{Background equations of ${escapeText(derivation.theory.name)}}`,
     '\\author{}',
-    '\\date{}',
+    '\\date{\\today}',
     '\\maketitle',
     '',
     ...sections,
@@ -72,15 +73,27 @@ export function derivationTex(derivation: Derivation, options: LatexOptions = {}
 }
 
 function sectionTex({ id, title, passages }: Section): string {
-  const body = id === 'checks' ? passages.map(listTex) : passages.map(passageTex);
-  return [`\\section{${escapeText(title)}}`, ...body, ''].join('\n');
+  const body = id === 'checks' ? passages.map(listTex).join('\n') : paragraphs(passages.flatMap(blocksOf));
+  return [`\\section{${escapeText(title)}}`, body, ''].join('\n');
 }
 
-/** Text, displays and remarks; a display belongs to the paragraph before it. */
-function passageTex({ text, displays, remarks }: Passage): string {
-  const lines = [...text.map(proseTex).join('\n\n').split('\n'), ...displays.map((d) => d.copyTex)];
-  const after = remarks.map(proseTex).join('\n\n');
-  return [...lines.filter((l, i) => l !== '' || i > 0), ...(after === '' ? [] : [after]), ''].join('\n');
+interface Block {
+  readonly tex: string;
+  readonly isDisplay: boolean;
+}
+
+const blocksOf = ({ text, displays, remarks }: Passage): Block[] => [
+  ...text.map((p) => ({ tex: proseTex(p), isDisplay: false })),
+  ...displays.map((d) => ({ tex: d.copyTex, isDisplay: true })),
+  ...remarks.map((p) => ({ tex: proseTex(p), isDisplay: false })),
+];
+
+/** A display belongs to the paragraph before it, and text that begins in lower case goes on with the paragraph. */
+function paragraphs(blocks: readonly Block[]): string {
+  let out = '';
+  for (const [i, { tex, isDisplay }] of blocks.entries())
+    out += `${i === 0 ? '' : isDisplay || /^[a-z]/.test(tex) ? '\n' : '\n\n'}${tex}`;
+  return out;
 }
 
 /** The first paragraph, then the others as a list. */
