@@ -48,7 +48,7 @@ const STYLES = {
 /**
  * The content of a YAML text.
  * @throws InputError `size-limit`, `yaml-depth`, `yaml-empty`, `yaml-syntax`, `yaml-duplicate-key`, `yaml-anchor`,
- * `yaml-tag`, `yaml-key`, `yaml-documents`: all that are found, except that the first two stop the reading.
+ * `yaml-tag`, `yaml-key`, `yaml-escape`, `yaml-documents`: all that are found, except that the first two stop the reading.
  */
 export function readYaml(source: string, file: string): YamlNode {
   const place = (start: number, end: number): Origin => ({ file, source, start, end });
@@ -112,6 +112,7 @@ function convert(
   }
   if (isScalar(node)) {
     const style = STYLES[(node.type ?? Scalar.PLAIN) as keyof typeof STYLES];
+    if (style === 'double') reportEscapes(origin, problems);
     return { kind: 'text', text: String(node.value ?? ''), style, origin };
   }
   if (isSeq(node)) {
@@ -146,10 +147,34 @@ const lowerFirst = (text: string): string => text.slice(0, 1).toLowerCase() + te
 
 function syntaxHint(code: string, source: string, start: number): string {
   if (code === 'TAB_AS_INDENT') return 'indent with spaces';
-  const line = source.slice(source.lastIndexOf('\n', start - 1) + 1, start + 1);
-  if (/: .*: /.test(line)) return 'a text that contains ": " must be quoted';
-  if (code === 'BAD_DQ_ESCAPE') return 'in double quotes \\ starts an escape; use single quotes for LaTeX';
+  if (code === 'BAD_DQ_ESCAPE') return DOUBLE_QUOTES;
+  const begin = source.lastIndexOf('\n', start - 1) + 1;
+  const newline = source.indexOf('\n', start);
+  const line = source.slice(begin, Math.min(newline === -1 ? source.length : newline, begin + LONGEST_LINE));
+  if (/^\s*[^\s:]+:\s+(?:- |[[{*&@!%`])/.test(line)) {
+    return 'a value that begins with this character needs single quotes, or stands in a block below |';
+  }
+  if (/: .*:(?: |$)/.test(line)) return 'a text that contains a colon and a space must be quoted';
+  if (code === 'MULTILINE_IMPLICIT_KEY') return 'a key is followed by a colon and a space';
+  if (code === 'MISSING_CHAR') return 'close the quotes; indent the lines of a block below its key';
   return 'check the indentation, the brackets and the quotes around this place';
+}
+
+const LONGEST_LINE = 500;
+const DOUBLE_QUOTES = 'in double quotes \\ begins an escape; use single quotes for LaTeX, or write \\\\';
+
+/**
+ * Reports control escapes that run into a letter: "\\nu" and "\\frac" are legal YAML, but silently a line end and `u`, a form
+ * feed and `rac`.
+ */
+function reportEscapes(origin: Origin, problems: Diagnostic[]): void {
+  const { source, start, end } = origin;
+  for (let i = source.indexOf('\\', start); i !== -1 && i < end; i = source.indexOf('\\', i + 2)) {
+    if (!/^[abefnrtvNLP][A-Za-z]/.test(source.slice(i + 1, i + 3))) continue;
+    const macro = /^[A-Za-z]{1,20}/.exec(source.slice(i + 1, end))![0];
+    const message = `"\\${macro}" begins with the escape \\${macro[0]}, which is not LaTeX`;
+    problems.push(errorAt({ ...origin, start: i, end: i + 1 + macro.length }, 'yaml-escape', message, DOUBLE_QUOTES));
+  }
 }
 
 /**

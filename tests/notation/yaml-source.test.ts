@@ -78,8 +78,31 @@ describe('readYaml', () => {
         'hint: indent with spaces',
       ].join('\n'),
     );
-    expect(errors('name: a: b\n')).toContain('hint: check the indentation');
+    expect(errors('name: a: b\n')).toContain('hint: a text that contains a colon and a space must be quoted');
+    expect(errors('name: a\n  b: c\n')).toContain('hint: check the indentation');
+    for (const value of ['- 1/2 R', '{c0} R', '[c0] R', '@x', '*x R']) {
+      expect(errors(`lagrangian: ${value}\n`)).toContain(
+        'hint: a value that begins with this character needs single quotes',
+      );
+    }
+    expect(errors('a: |\nR + R\nb: 1')).toContain('hint: close the quotes; indent the lines of a block');
+    expect(errors('constants [c0]\na: b')).toContain('hint: a key is followed by a colon and a space');
     expect(errors('a: "\\q"\n')).toContain('use single quotes for LaTeX');
+  });
+
+  it('refuses LaTeX in double quotes that would silently be an escape', () => {
+    expect(errors('a: "x \\\\frac \\nu_1 R"\n')).toBe(
+      [
+        'f.yaml:1:14: error: "\\nu" begins with the escape \\n, which is not LaTeX',
+        '    a: "x \\\\frac \\nu_1 R"',
+        '                 ^^^',
+        'hint: in double quotes \\ begins an escape; use single quotes for LaTeX, or write \\\\',
+      ].join('\n'),
+    );
+    for (const macro of ['alpha', 'beta', 'epsilon', 'frac', 'nu', 'rho', 'tau', 'varepsilon', 'Lambda', 'Phi']) {
+      expect(errorCodes(() => read(`a: "\\${macro}"`))).toEqual(['yaml-escape']);
+    }
+    expect(plain(read('a: "x\\n y\\t\\\\nu \\"q\\""'))).toEqual([['a', 'x\n y\t\\nu "q"']]);
   });
 
   it.each([

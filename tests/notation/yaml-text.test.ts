@@ -25,7 +25,7 @@ describe('passageOf', () => {
     ['plain over lines', 'k: ab\n  cd\n\n  XY ef\n'],
     ['single quotes', "k: 'it''s XY'\n"],
     ['single quotes over lines', "k: 'it''s\n\n   a XY'\n"],
-    ['double quotes', 'k: "a\\tb \\u0041\\x41 \\\\ XY"\n'],
+    ['double quotes', 'k: "a\\t b \\u0041\\x41 \\\\ XY"\n'],
     ['double quotes over lines', 'k: "a \\\n   b\n\n  \\  c XY"\n'],
     ['literal', 'k: |\n  ab\n    cd\n\n  e XY\n'],
     ['literal, strip', 'k: |-\n  ab\n  XY\n\n\n'],
