@@ -93,19 +93,23 @@ export interface Written {
   readonly text: string;
 }
 
-/** Text of a Lagrangian; it may bracket several terms or square one, and `terms` says what it then means. */
-export function write(random: Random, lagrangian: readonly LagrangianTerm[], squares = true): Written {
+/** What the writer may do to the meaning: square terms and form brackets, only form brackets, or nothing. */
+export type Liberty = 'squares' | 'brackets' | 'none';
+
+/** Text of a Lagrangian; `terms` says what it means, which with liberty `none` is the Lagrangian given. */
+export function write(random: Random, lagrangian: readonly LagrangianTerm[], liberty: Liberty = 'squares'): Written {
   const terms: LagrangianTerm[] = [];
   let text = '';
   for (let i = 0; i < lagrangian.length; ) {
-    const here = lagrangian.slice(i, i + (random.chance(15) ? 1 + random.below(3) : 1));
+    const together = liberty !== 'none' && random.chance(15) ? 1 + random.below(3) : 1;
+    const here = lagrangian.slice(i, i + together);
     i += here.length;
     const written =
       here.length > 1
-        ? bracket(random, here, squares)
-        : squares && random.chance(12)
+        ? bracket(random, here, liberty)
+        : liberty === 'squares' && random.chance(12)
           ? square(random, here[0]!)
-          : one(random, here[0]!);
+          : one(random, here[0]!, liberty);
     terms.push(...written.terms);
     const negative = written.text.startsWith('-');
     const first = text === '';
@@ -115,9 +119,9 @@ export function write(random: Random, lagrangian: readonly LagrangianTerm[], squ
   return { terms, text };
 }
 
-function one(random: Random, term: LagrangianTerm): Written {
+function one(random: Random, term: LagrangianTerm, liberty: Liberty): Written {
   const [negative, front] = frontOf(random, term);
-  const [product, terms] = productOf(random, term);
+  const [product, terms] = productOf(random, term, liberty !== 'none');
   const pieces = [front, product].filter((x) => x !== '').join(random.chance(10) ? '\n  ' : ' ');
   return {
     terms,
@@ -126,8 +130,8 @@ function one(random: Random, term: LagrangianTerm): Written {
 }
 
 /** r M^n (L₁ + L₂ …). */
-function bracket(random: Random, terms: readonly LagrangianTerm[], squares: boolean): Written {
-  const inner = write(random, terms, squares);
+function bracket(random: Random, terms: readonly LagrangianTerm[], liberty: Liberty): Written {
+  const inner = write(random, terms, liberty);
   const coefficient = random.rational(true);
   const exponent = 1 + random.below(2);
   const front = `${show(coefficient)} M${exponent === 1 ? '' : '^2'}`;
@@ -152,8 +156,8 @@ function times(term: LagrangianTerm, by: Q, name: string, exponent: number): Lag
 
 /** (L₁)², when it has at most three tensors. */
 function square(random: Random, term: LagrangianTerm): Written {
-  if (term.factors.length > 3) return one(random, term);
-  const inner = one(random, term);
+  if (term.factors.length > 3) return one(random, term, 'squares');
+  const inner = one(random, term, 'squares');
   const terms = inner.terms.flatMap((x) =>
     inner.terms.map((y) => ({
       coefficient: E.mul(x.coefficient, y.coefficient),
@@ -198,7 +202,7 @@ function frontOf(random: Random, { coefficient, symbols }: LagrangianTerm): [neg
   return [negative, `${words.join(' ')}${below.map((x) => `${random.chance(50) ? '/' : ' / '}${x}`).join('')}`];
 }
 
-function productOf(random: Random, term: LagrangianTerm): [text: string, terms: LagrangianTerm[]] {
+function productOf(random: Random, term: LagrangianTerm, brackets: boolean): [text: string, terms: LagrangianTerm[]] {
   const { factors } = term;
   const scalars = factors.filter((f) => f.slots.length === 0);
   const tensors = random.shuffled(factors.filter((f) => f.slots.length > 0));
@@ -207,7 +211,7 @@ function productOf(random: Random, term: LagrangianTerm): [text: string, terms: 
     words.push(random.chance(50) ? `R^${scalars.length}` : `R^{${scalars.length}}`);
   else words.push(...scalars.map(() => 'R'));
   let expanded: LagrangianTerm[] = [term];
-  if (tensors.length > 0 && random.chance(20)) {
+  if (brackets && tensors.length > 0 && random.chance(20)) {
     // One tensor X becomes the bracket (X − r X' ) with X' the same tensor, two of its indices exchanged.
     const chosen = random.pick(tensors);
     const ratio = random.rational(true);

@@ -3,14 +3,16 @@
  * random exact points.
  */
 import { describe, expect, it } from 'vitest';
+import type { LagrangianTerm } from '../oracle/contraction.js';
 import type { Q } from '../oracle/exact.js';
 import * as E from '../oracle/exact.js';
-import type { GeometryName } from '../oracle/geometry.js';
+import type { GeometryName, Point } from '../oracle/geometry.js';
 import { atPoint } from '../oracle/infix.js';
+import { CONSTANTS, randomTerm, write } from '../oracle/lagrangian.js';
 import { circumstances, derived, equationsAt, shown } from '../oracle/pipeline.js';
 import { firstSeed, Random, runs } from '../oracle/random.js';
 import { torsionTheory } from '../oracle/variation.js';
-import { randomTheory, SYMBOLS } from './wanted.js';
+import { NAMED, randomTheory, SYMBOLS } from './wanted.js';
 
 const CASES: readonly (readonly [geometry: GeometryName, degree: readonly [number, number], count: number])[] = [
   ['flrw', [1, 2], 20],
@@ -27,7 +29,8 @@ describe('Euler–Lagrange expressions of a random theory with matter', () => {
         for (let run = 0; run < runs(count); run++) {
           const seed = firstSeed(10_000 * (row + 6)) + run;
           const random = new Random(seed);
-          const { wanted, oracle } = randomTheory(random, { geometry, degree, terms: 4, matter: 30 });
+          const liberty = geometry === 'flrw' ? 'squares' : 'brackets';
+          const { wanted, oracle } = randomTheory(random, { geometry, degree, terms: 4, matter: 30, liberty });
           const json = derived(wanted);
           expect(json.checks.every((c) => c.holds)).toBe(true);
           const point = random.point(geometry, SYMBOLS);
@@ -42,6 +45,59 @@ describe('Euler–Lagrange expressions of a random theory with matter', () => {
   });
 });
 
+/** How many metrics the contraction contains, mod 2: whether it changes its sign with the signature. */
+function flips({ factors }: LagrangianTerm): boolean {
+  const natural: Readonly<Record<string, readonly boolean[]>> = {
+    R4: [true, false, false, false],
+    R2: [false, false],
+    R0: [],
+    T3: [true, false, false],
+    T1: [false],
+    A1: [true],
+    epsilon4: [false, false, false, false],
+    eta2: [false, false],
+    delta2: [true, false],
+  };
+  let metrics = 0;
+  for (const { head, slots } of factors) {
+    const heights = natural[`${head}${slots.length}`]!;
+    metrics += slots.filter((slot, i) => slot.up !== heights[i]).length;
+    // R = η^ab R_ab; A^a = ε^abcd T_bcd lowers one index of T^b_cd and raises four of ε; η is itself.
+    if (['R0', 'A1', 'eta2'].includes(`${head}${slots.length}`)) metrics++;
+  }
+  return metrics % 2 === 1;
+}
+
+describe('signature', () => {
+  it(
+    'a theory written in (+−−−), its odd coefficients flipped, has the same equations',
+    () => {
+      for (let run = 0; run < runs(16); run++) {
+        const seed = firstSeed(150_000) + run;
+        const random = new Random(seed);
+        const geometry = random.pick(['flrw', 'flrw', 'bianchi-i'] as const);
+        const wishes = {
+          degree: [1, geometry === 'flrw' ? 4 : 2] as const,
+          epsilon: 35,
+          metric: 20,
+          constants: CONSTANTS,
+        };
+        const terms = Array.from({ length: 1 + random.below(4) }, () => randomTerm(random, wishes));
+        const texts = [terms, terms.map((t) => (flips(t) ? { ...t, coefficient: E.neg(t.coefficient) } : t))].map(
+          (lagrangian) => write(random, lagrangian, 'none').text,
+        );
+        const [east, west] = (['-+++', '+---'] as const).map((signature, i) =>
+          derived({ ...NAMED, lagrangian: texts[i]!, signature, geometry }),
+        );
+        expect(west!.equations, `seed ${seed}\n${texts.join('\n\n')}`).toEqual(east!.equations);
+        expect(west!.lagrangian).toBe(east!.lagrangian);
+        expect(west!.scalarTensor).toEqual(east!.scalarTensor);
+      }
+    },
+    runs(60_000),
+  );
+});
+
 describe('Friedmann form of a random theory', () => {
   it(
     '3M²(H² + k/a²) = ρ + ρ_T and −M²(2Ḣ + 3H² + k/a²) = p + p_T say the same as E_N = 0 and E_a = 0',
@@ -51,8 +107,8 @@ describe('Friedmann form of a random theory', () => {
         const random = new Random(seed);
         const { wanted, oracle } = randomTheory(random, { geometry: 'flrw', degree: [1, 3], terms: 4, matter: 0 });
         const json = derived(wanted);
-        const random1 = random.point('flrw', SYMBOLS);
-        const point = { ...random1, fields: { ...random1.fields, N: [E.ONE, E.ZERO, E.ZERO] } };
+        const drawn = random.point('flrw', SYMBOLS);
+        const point: Point = { ...drawn, fields: { ...drawn.fields, N: [E.ONE, E.ZERO, E.ZERO] } };
         const { equations } = torsionTheory(oracle, point);
         const [a, velocity, acceleration] = point.fields.a as [Q, Q, Q];
         const H2 = E.pow(E.div(velocity, a), 2);

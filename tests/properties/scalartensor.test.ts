@@ -9,7 +9,8 @@ import * as E from '../oracle/exact.js';
 import type { Point } from '../oracle/geometry.js';
 import { circumstances, type DerivedJson, derived, equationsAt, shown } from '../oracle/pipeline.js';
 import { firstSeed, Random, runs } from '../oracle/random.js';
-import { biScalarValues } from '../oracle/scalar-tensor.js';
+import { factorsOf } from '../oracle/reading.js';
+import { type BiScalarTexts, biScalarValues } from '../oracle/scalar-tensor.js';
 import { torsionTheory } from '../oracle/variation.js';
 import { type RandomTheory, randomTheory, SYMBOLS } from './wanted.js';
 
@@ -94,7 +95,23 @@ function compare(seed: number, random: Random, { wanted, oracle }: RandomTheory)
   expect(shown(biScalarValues(form, point, true).equations), about).toEqual(
     shown(torsionTheory(gravity, point).equations),
   );
+  if (form.curvatureObstruction.includes('D(')) expect(needsVelocities(form, random), about).toBe(true);
   return 'bi-scalar';
+}
+
+/** Whether the equations of the obstruction depend on velocities at lapse 1: if not, a total derivative removes them. */
+function needsVelocities(form: BiScalarTexts, random: Random): boolean {
+  const first = random.point('flrw', SYMBOLS, 4);
+  const second = random.point('flrw', SYMBOLS, 4);
+  const movable = ['a', 'phi', 'psi'];
+  const [one, other] = [first, second].map((speeds) => {
+    const fields: Record<string, readonly Q[]> = { N: [E.ONE, ...Array<Q>(4).fill(E.ZERO)] };
+    for (const name of movable) fields[name] = [first.fields[name]![0]!, ...speeds.fields[name]!.slice(1)];
+    const point = { ...first, k: E.q(3, 2), fields };
+    const [without, included] = [false, true].map((flag) => biScalarValues(form, point, flag).equations);
+    return movable.map((name) => E.show(E.sub(included![name]!, without![name]!)));
+  });
+  return JSON.stringify(one) !== JSON.stringify(other);
 }
 
 describe('scalar-tensor form of a random theory', () => {
@@ -104,7 +121,13 @@ describe('scalar-tensor form of a random theory', () => {
       for (let run = 0; run < runs(16); run++) {
         const seed = firstSeed(310_000) + run;
         const random = new Random(seed);
-        const theory = randomTheory(random, { geometry: 'flrw', degree: [1, 2], terms: 5, matter: 20, squares: false });
+        const theory = randomTheory(random, {
+          geometry: 'flrw',
+          degree: [1, 2],
+          terms: 5,
+          matter: 20,
+          liberty: 'brackets',
+        });
         expect(compare(seed, random, theory), `seed ${seed}`).toBe('bi-scalar');
       }
     },
@@ -125,4 +148,20 @@ describe('scalar-tensor form of a random theory', () => {
     },
     runs(60_000),
   );
+
+  it('of higher degree with an obstruction that keeps a velocity: 6912 k φψψ̇/a² for Gauss–Bonnet times A_a A^a', () => {
+    const wanted = { lagrangian: '(R^2 - 4 R_{ab} R^{ba} + R_{abcd} R^{cdab}) A_e A^e' };
+    const form = derived(wanted).scalarTensor;
+    if (form.form === 'none') throw new Error(form.reason);
+    expect(form.curvatureObstruction).toContain('D(');
+    const parts = [['R R', 1] as const, ['R_{ab} R^{ba}', -4] as const, ['R_{abcd} R^{cdab}', 1] as const];
+    const lagrangian = parts.map(([pair, n]) => ({
+      coefficient: E.q(n),
+      symbols: [],
+      factors: factorsOf(`${pair} A_e A^e`),
+    }));
+    const theory = { wanted, oracle: { geometry: 'flrw', signature: '-+++', lagrangian, matter: [] } as const };
+    for (let run = 0; run < runs(3); run++)
+      expect(compare(firstSeed(330_000) + run, new Random(firstSeed(330_000) + run), theory)).toBe('bi-scalar');
+  });
 });

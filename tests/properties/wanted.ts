@@ -5,7 +5,7 @@
 import type { Signature } from '../oracle/contraction.js';
 import * as E from '../oracle/exact.js';
 import type { GeometryName } from '../oracle/geometry.js';
-import { CONSTANTS, randomTerm, write } from '../oracle/lagrangian.js';
+import { CONSTANTS, type Liberty, randomTerm, write } from '../oracle/lagrangian.js';
 import type { Wanted } from '../oracle/pipeline.js';
 import type { Random } from '../oracle/random.js';
 import type { Fluid, OracleTheory } from '../oracle/variation.js';
@@ -24,6 +24,12 @@ const FLUIDS: readonly (readonly [text: string, fluid: Fluid])[] = [
 /** Every symbol a random theory may use, for the points. */
 export const SYMBOLS: readonly string[] = [...CONSTANTS, ...FLUIDS.map(([, { density }]) => density)];
 
+/** The symbols of a random theory, declared. */
+export const NAMED = {
+  constants: CONSTANTS.filter((name) => !SCALES.has(name)),
+  scales: CONSTANTS.filter((name) => SCALES.has(name)),
+} as const;
+
 export interface RandomTheory {
   readonly wanted: Wanted;
   readonly oracle: OracleTheory;
@@ -35,20 +41,21 @@ export interface Shape {
   readonly terms: number;
   /** Chance in percent of each fluid. */
   readonly matter: number;
-  /** Whether a term may be squared; default yes. */
-  readonly squares?: boolean;
+  readonly liberty?: Liberty;
 }
 
-export function randomTheory(random: Random, { geometry, degree, terms, matter, squares = true }: Shape): RandomTheory {
+export function randomTheory(
+  random: Random,
+  { geometry, degree, terms, matter, liberty = 'squares' }: Shape,
+): RandomTheory {
   const signature: Signature = random.pick(['-+++', '+---'] as const);
   const wishes = { degree, epsilon: 35, metric: 10, constants: CONSTANTS };
   const drawn = Array.from({ length: 1 + random.below(terms) }, () => randomTerm(random, wishes));
-  const { terms: lagrangian, text } = write(random, drawn, squares);
+  const { terms: lagrangian, text } = write(random, drawn, liberty);
   const fluids = FLUIDS.filter(() => random.chance(matter));
   const wanted: Wanted = {
     lagrangian: text,
-    constants: CONSTANTS.filter((name) => !SCALES.has(name)),
-    scales: CONSTANTS.filter((name) => SCALES.has(name)),
+    ...NAMED,
     signature,
     geometry,
     ...(fluids.length > 0 ? { matter: fluids.map(([line]) => line) } : {}),
