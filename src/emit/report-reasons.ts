@@ -1,0 +1,89 @@
+/** What the margin of the report says beside each step: why the step is allowed, and the rule or source behind it. */
+import type { Derivation } from '../derivation.js';
+import { math, type Prose, prose } from './latex-text.js';
+
+export interface Reasons {
+  readonly allowed: readonly Prose[];
+  readonly rule: readonly Prose[];
+}
+
+const NONE: Reasons = { allowed: [], rule: [] };
+
+/** The reasons of a section of the derivation, by its id; empty for a section that is no step of reasoning. */
+export function reasonsOf(sectionId: string, d: Derivation): Reasons {
+  switch (sectionId) {
+    case 'theory':
+      return {
+        allowed: [
+          prose`Every index of every term occurs once up and once down, so each term is a scalar. Relations come first because they define the theory: putting them in later would vary what they fix.`,
+        ],
+        rule: [
+          prose`Einstein's summation rule. A relation with one symbol alone on its left eliminates that symbol; otherwise the last constant that occurs linearly with a number as its coefficient goes.`,
+        ],
+      };
+    case 'geometry':
+      return {
+        allowed: [
+          prose`Torsion and curvature are computed from the coframe and the connection by exterior algebra, and ${math('\\mathrm{d}\\mathrm{d} = 0')} is checked on the cobasis. A product of tensors is the sum over its components, those that vanish left out.`,
+        ],
+        rule: [prose`Cartan's structure equations.`, prose`${d.geometry.source}.`],
+      };
+    case 'reduction':
+      return {
+        allowed: [
+          prose`A Lagrangian may be varied after the symmetry has been imposed when the structure constants of the cobasis have zero trace; this geometry was checked for it. A total derivative has identically vanishing Euler–Lagrange expressions.`,
+        ],
+        rule: [
+          prose`Symmetric criticality, Commun. Math. Phys. 69 (1979) 19. The split is checked by differentiating the dropped expression and by varying what is left.`,
+        ],
+      };
+    case 'equations':
+      return {
+        allowed: [
+          prose`The lapse is varied like every other field and set to one afterwards, so the constraint is kept. By the Noether identity the equation of one field that varies follows from those of the others.`,
+        ],
+        rule: [
+          prose`Euler–Lagrange equations. Invariance under changes of time makes the Noether identity hold for any functions, solutions or not.`,
+        ],
+      };
+    case 'friedmann':
+      return {
+        allowed: [
+          prose`This is a definition: terms are moved to the other side of two equations, nothing is solved or dropped. Conservation of the effective fluid is a result, checked on the equations of the connection.`,
+        ],
+        rule: [prose`Einstein's equations of a homogeneous and isotropic universe.`],
+      };
+    case 'scalar-tensor':
+      if (d.scalarTensor.form === 'none')
+        return {
+          allowed: [
+            prose`The reduced Lagrangian is compared with everything that a form of this class can produce. What is left over has no counterpart, so none is given.`,
+          ],
+          rule: [],
+        };
+      return {
+        allowed: [
+          prose`The form is found by comparing coefficients in the reduced Lagrangian, then reduced again from its covariant form on the metric geometry; both must have the same Euler–Lagrange expressions.`,
+        ],
+        rule: [
+          prose`A unit timelike vector ${math('n^{\\mu}')} in ${math('n^{\\mu} J_{\\mu} + \\lambda (n^{2} + 1)')} can be integrated out and leaves ${math('\\pm\\sqrt{-J^{2}}')}, a quadratic cuscuton in the simplest case, Phys. Rev. D 75 (2007) 083513.`,
+        ],
+      };
+    case 'couplings':
+      return {
+        allowed: [
+          prose`The coefficients of the field monomials in the reduced Lagrangian span a linear space; its dimension is the number of combinations that can matter.`,
+        ],
+        rule: [prose`Linear algebra over the rational numbers.`],
+      };
+    case 'checks':
+      return {
+        allowed: [
+          prose`A statement holds when a difference is zero as an exact expression in all its symbols. One that failed would have stopped the derivation.`,
+        ],
+        rule: [],
+      };
+    default:
+      return NONE;
+  }
+}
