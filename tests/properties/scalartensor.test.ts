@@ -16,6 +16,15 @@ import { type RandomTheory, randomTheory, SYMBOLS } from './wanted.js';
 
 const still = (x: Q): Q[] => [x, E.ZERO, E.ZERO];
 
+/** A point without the value 0, where a condition may hold by accident. */
+function nowhereZero(random: Random, derivatives: number): Point {
+  const point = random.point('flrw', SYMBOLS, derivatives);
+  const fields = Object.entries(point.fields).map(
+    ([name, jet]) => [name, jet.map(() => random.rational(true))] as const,
+  );
+  return { ...point, fields: Object.fromEntries(fields) };
+}
+
 /** The Hessian of L in (ȧ, φ̇, ψ̇): minus the coefficients of the accelerations in the equations. */
 function hessian(json: DerivedJson, point: Point): Record<string, Q> {
   const names = ['a', 'phi', 'psi'];
@@ -44,11 +53,8 @@ function slope(values: readonly Q[]): Q {
 /** Whether no Lagrangian of the class has these equations at k = 0, lapse 1. */
 function isOutsideTheClass(json: DerivedJson, random: Random): boolean {
   const at = (): Point => {
-    const point = random.point('flrw', SYMBOLS);
-    // No value 0, where a condition may hold by accident.
-    const fields = Object.fromEntries(
-      Object.entries(point.fields).map(([name, jet]) => [name, jet.map(() => random.rational(true))]),
-    );
+    const point = nowhereZero(random, 2);
+    const { fields } = point;
     return {
       ...point,
       k: E.ZERO,
@@ -101,8 +107,8 @@ function compare(seed: number, random: Random, { wanted, oracle }: RandomTheory)
 
 /** Whether the equations of the obstruction depend on velocities at lapse 1: if not, a total derivative removes them. */
 function needsVelocities(form: BiScalarTexts, random: Random): boolean {
-  const first = random.point('flrw', SYMBOLS, 4);
-  const second = random.point('flrw', SYMBOLS, 4);
+  const first = nowhereZero(random, 4);
+  const second = nowhereZero(random, 4);
   const movable = ['a', 'phi', 'psi'];
   const [one, other] = [first, second].map((speeds) => {
     const fields: Record<string, readonly Q[]> = { N: [E.ONE, ...Array<Q>(4).fill(E.ZERO)] };
