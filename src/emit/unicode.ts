@@ -57,8 +57,14 @@ function termText({ content, common, bracket, monomial }: DisplayTerm): { negati
 }
 
 /** One text for each term with its sign, ready to be wrapped; `0` alone for the empty sum. */
-export const unicodeTerms = ({ terms }: DisplaySum): string[] =>
-  terms.length === 0 ? ['0'] : joined(terms.map(termText));
+export function unicodeTerms({ terms }: DisplaySum): string[] {
+  const [first] = terms;
+  if (!first) return ['0'];
+  // A sum of couplings alone needs no brackets around it.
+  const bare = terms.length === 1 && first.content.num === first.content.den && first.bracket.length > 0;
+  if (bare && first.common.length + first.monomial.length === 0) return [bracketText(first.bracket)];
+  return joined(terms.map(termText));
+}
 
 /** Powers that were divided out, as a divisor of what stands on the left: `/a³`. */
 export const dividedText = ({ divided }: DisplaySum): string => {
