@@ -24,7 +24,8 @@ export async function factorFunctions(d: Derivation): Promise<FactoredFunction[]
   for (const [name, p] of wanted) {
     if (isZero(p) || p.size < 2) continue;
     const found = await factor(p, { timeLimitMs: TIME_LIMIT_MS });
-    if (!found) continue;
+    // An irreducible function has nothing to show.
+    if (!found || found.factors.reduce((n, f) => n + f.power, 0) < 2) continue;
     const factors = found.factors.map(({ base, power }) => `(${infix(base)})${power === 1 ? '' : `^${power}`}`);
     const unit = infix(found.unit);
     out.push({ name, text: [...(unit === '1' && factors.length > 0 ? [] : [unit]), ...factors].join('*') });

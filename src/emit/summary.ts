@@ -75,10 +75,7 @@ export function summary(d: Derivation, options: SummaryOptions): string {
     );
   section('Friedmann form', friedmannLines(d, viewer));
   section('Metric analogue', analogueLines(d, viewer));
-  section(
-    'In factors',
-    (options.factored ?? []).map(({ name, text }) => `${name} = ${text}`),
-  );
+  section('In factors', factoredLines(options.factored));
   section('Combinations of couplings that the background sees', d.combinations.map(scalar));
   if (d.screening)
     section('Spatial curvature', [screeningText(d.screening, d.geometry.isotropic?.curvature ?? 'k', scalar)]);
@@ -91,6 +88,13 @@ function screeningText(conditions: readonly Poly[], k: string, scalar: (p: Poly)
   if (conditions.length === 0) return `${k} drops out of the equations`;
   if (conditions.some((p) => symbolsOf(p).length === 0)) return `${k} cannot drop out, whatever the couplings`;
   return `${k} drops out exactly when ${conditions.map((p) => `${scalar(p)} = 0`).join(' and ')}`;
+}
+
+function factoredLines(factored: SummaryOptions['factored']): string[] {
+  if (!factored) return [];
+  return factored.length === 0
+    ? ['no function of the metric analogue splits into factors']
+    : factored.map(({ name, text }) => `${name} = ${text}`);
 }
 
 function invariantTable(d: Derivation): string[] {
