@@ -46,8 +46,8 @@ export function derive(theory: Theory, onStep: (what: string) => void = () => {}
   const isParameter = (name: string): boolean => geometry.parameters.some((p) => p.name === name);
   const inCouplings = new Map([...relations.eliminated].filter(([name]) => !isParameter(name)));
   const inParameters = new Map([...relations.eliminated].filter(([name]) => isParameter(name)));
-  const couple = (p: Poly): Poly => applyImposed(p, inCouplings, undefined);
-  const fix = (p: Poly): Poly => applyImposed(p, inParameters, undefined);
+  const couple = (p: Poly): Poly => applyImposed(p, inCouplings, relations.origins);
+  const fix = (p: Poly): Poly => applyImposed(p, inParameters, relations.origins);
 
   const terms = collectTerms(ring, theory.lagrangian, couple);
   const gravity = sum(
