@@ -20,11 +20,37 @@ export type FrameMetric = readonly [number, number, number, number];
 
 /** More components than this in an intermediate product are refused rather than waited for. */
 export const MAX_COMPONENTS = 400_000;
+/** More terms than this, added up over all products of components of one contraction, are refused as well. */
+export const MAX_WORK = 4_000_000;
 
-/** Thrown when a product would need more intermediate components than the stated limit. */
+/** Thrown when a product of tensors would exceed a stated limit. */
 export class ContractionLimitError extends RangeError {
-  constructor() {
-    super(`a product of tensors needs more than ${MAX_COMPONENTS} intermediate components`);
+  constructor(what: string) {
+    super(`a product of tensors needs more than ${what}`);
+    this.name = 'ContractionLimitError';
+  }
+}
+
+/** Products of components, each formed once, and how much work they have been. */
+class Products {
+  private readonly memo = new Map<Poly, Map<Poly, Poly>>();
+  private readonly negatives = new Map<Poly, Poly>();
+  private work = 0;
+
+  /** ±x·y. Signs are kept out of the memo, so that products that differ only in sign are formed once. */
+  signed(x: Poly, y: Poly, sign: number): Poly {
+    const row = remember(this.memo, x, () => new Map<Poly, Poly>());
+    const value = remember(row, y, () => {
+      this.count(x.size * y.size);
+      return multiply(x, y);
+    });
+    this.count(1 + value.size);
+    return sign > 0 ? value : remember(this.negatives, value, () => negate(value));
+  }
+
+  private count(terms: number): void {
+    this.work += terms;
+    if (this.work > MAX_WORK) throw new ContractionLimitError(`${MAX_WORK} terms in products of components`);
   }
 }
 
@@ -51,7 +77,7 @@ export function trace(placed: Placed, metric: FrameMetric): Placed {
 }
 
 /** Product of two traced tensors, summed over the names they share. */
-function join(a: Placed, b: Placed, metric: FrameMetric, multiplyOnce: (x: Poly, y: Poly) => Poly): Placed {
+function join(a: Placed, b: Placed, metric: FrameMetric, products: Products): Placed {
   const shared = a.names.flatMap((n, s) => (b.names.includes(n) ? [[s, b.names.indexOf(n)] as const] : []));
   const freeA = a.names.flatMap((_, s) => (shared.some(([x]) => x === s) ? [] : [s]));
   const freeB = b.names.flatMap((_, s) => (shared.some(([, y]) => y === s) ? [] : [s]));
@@ -72,9 +98,8 @@ function join(a: Placed, b: Placed, metric: FrameMetric, multiplyOnce: (x: Poly,
     if (!matches) continue;
     const sign = shared.reduce((s, [x]) => s * metric[indices[x]!]!, 1);
     const left = freeA.reduce((n, s) => n * DIMENSION + indices[s]!, 0) * shift;
-    const signed = sign < 0 ? negate(value) : value;
-    for (const { free, value: right } of matches) builder.put(left + free, multiplyOnce(signed, right));
-    if (builder.size > MAX_COMPONENTS) throw new ContractionLimitError();
+    for (const { free, value: right } of matches) builder.put(left + free, products.signed(value, right, sign));
+    if (builder.size > MAX_COMPONENTS) throw new ContractionLimitError(`${MAX_COMPONENTS} intermediate components`);
   }
   return {
     tensor: builder.build(),
@@ -91,14 +116,10 @@ function joinCost(a: Placed, b: Placed): number {
 /**
  * Full contraction of a product in which every name occurs exactly twice.
  * @returns a polynomial in the ring of the components.
- * @throws ContractionLimitError beyond the stated number of intermediate components.
+ * @throws ContractionLimitError beyond the stated number of components or amount of work.
  */
 export function contract(ring: Ring, factors: readonly Placed[], metric: FrameMetric): Poly {
-  const memo = new Map<Poly, Map<Poly, Poly>>();
-  const multiplyOnce = (x: Poly, y: Poly): Poly => {
-    const row = remember(memo, x, () => new Map<Poly, Poly>());
-    return remember(row, y, () => multiply(x, y));
-  };
+  const products = new Products();
   let rest = factors.map((f) => trace(f, metric));
   while (rest.length > 1) {
     let best: [number, number] = [0, 1];
@@ -114,7 +135,7 @@ export function contract(ring: Ring, factors: readonly Placed[], metric: FrameMe
         }
       }
     const [i, j] = best;
-    const joined = trace(join(rest[i]!, rest[j]!, metric, multiplyOnce), metric);
+    const joined = trace(join(rest[i]!, rest[j]!, metric, products), metric);
     rest = [...rest.filter((_, s) => s !== i && s !== j), joined];
     if (joined.tensor.entries.size === 0) return constant(ring, 0);
   }
