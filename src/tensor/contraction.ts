@@ -118,7 +118,11 @@ function joinCost(a: Placed, b: Placed): number {
  * @returns a polynomial in the ring of the components.
  * @throws ContractionLimitError beyond the stated number of components or amount of work.
  */
-export function contract(ring: Ring, factors: readonly Placed[], metric: FrameMetric): Poly {
+export const contract = (ring: Ring, factors: readonly Placed[], metric: FrameMetric): Poly =>
+  contractOpen(ring, factors, metric).tensor.entries.get(0) ?? constant(ring, 0);
+
+/** The same for a product with free indices: names that occur once stay as slots of the result, all lowered. */
+export function contractOpen(ring: Ring, factors: readonly Placed[], metric: FrameMetric): Placed {
   const products = new Products();
   let rest = factors.map((f) => trace(f, metric));
   while (rest.length > 1) {
@@ -137,11 +141,10 @@ export function contract(ring: Ring, factors: readonly Placed[], metric: FrameMe
     const [i, j] = best;
     const joined = trace(join(rest[i]!, rest[j]!, metric, products), metric);
     rest = [...rest.filter((_, s) => s !== i && s !== j), joined];
-    if (joined.tensor.entries.size === 0) return constant(ring, 0);
+    // Nothing is left of the product; which slots it would have had no longer matters.
+    if (joined.tensor.entries.size === 0) return joined;
   }
-  const last = rest[0];
-  if (!last) return constant(ring, 1);
-  return last.tensor.entries.get(0) ?? constant(ring, 0);
+  return rest[0] ?? { tensor: { rank: 0, entries: new Map([[0, constant(ring, 1)]]) }, names: [] };
 }
 
 /** Index names of typed slots; heights are implied, since a pair is one up and one down and components are lowered. */
