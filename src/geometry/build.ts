@@ -83,6 +83,8 @@ export function buildGeometry(id: string, file: GeometryFile, metric: FrameMetri
     variables: file.variables,
     components: named,
     tensors: { ring: symbols, metric, torsion: symbolic(torsion), curvature: symbolic(curvature) },
+    frame,
+    connection,
     volume,
     spatialVolume: product(file.ring, [volume, generator(file.ring, file.lapse, -1)]),
     metricCurvature: metricCurvature(frame),

@@ -5,6 +5,7 @@
 import type { Poly } from '../algebra/poly.js';
 import type { Ring } from '../algebra/ring.js';
 import type { GeometricTensors } from '../tensor/invariants.js';
+import type { Connection, FrameData } from './cartan.js';
 
 /** A function of time (a field), or a constant of the geometry (a parameter, for instance k). */
 export interface GeometrySymbol {
@@ -59,6 +60,9 @@ export interface Geometry {
   readonly components: readonly ComponentSymbol[];
   /** Torsion and curvature over the ring of component symbols. */
   readonly tensors: GeometricTensors;
+  /** Cobasis, coframe and connection themselves, in `ring`. */
+  readonly frame: FrameData;
+  readonly connection: Connection;
   /** Determinant of the coframe, in `ring`: a³N on an isotropic geometry. */
   readonly volume: Poly;
   /** The same without the lapse. */

@@ -22,6 +22,8 @@ export interface GeometricTensors {
 export interface InvariantEvaluator {
   /** Value of the product of the factors, scalar coefficient not included. */
   value(factors: readonly TensorFactor[]): Poly;
+  /** Components of one tensor, all indices lowered. */
+  tensor(factor: TensorFactor): SparseTensor;
 }
 
 /** Sign of a permutation of 0..n-1, or 0 when an entry repeats. */
@@ -100,6 +102,7 @@ export function makeEvaluator(tensors: GeometricTensors): InvariantEvaluator {
 
   const values = new Map<string, Poly>();
   return {
+    tensor: tensorOf,
     value(factors) {
       return remember(values, dummyFreeKey(factors), () => {
         const placed = factors.map((f): Placed => ({ tensor: tensorOf(f), names: namesOf(f.slots) }));

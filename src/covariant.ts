@@ -1,0 +1,78 @@
+/**
+ * Covariant field equations of a theory, checked on every bundled geometry: their components must equal the reduced
+ * Euler–Lagrange expressions wherever varying after symmetry reduction is legitimate.
+ */
+import { eulerLagrange } from './algebra/calculus.js';
+import { moveTo } from './algebra/collect.js';
+import { constant, equals, multiply, type Poly, sum } from './algebra/poly.js';
+import { constantsOf, makeRing, type Ring } from './algebra/ring.js';
+import type { Check, Derivation } from './derivation.js';
+import { geometryNames, loadGeometry } from './geometry/build.js';
+import { componentEvaluator, equationComponents, projected } from './geometry/covariant-components.js';
+import type { Geometry } from './geometry/geometry.js';
+import { density } from './geometry/reduction.js';
+import { canonicalSum, type TensorSum } from './tensor/expression.js';
+import {
+  type CovariantEquations,
+  fieldEquations,
+  fieldMomenta,
+  type Momenta,
+  momentumSymbols,
+  variationKinds,
+} from './tensor/variation.js';
+
+export interface CovariantTheory {
+  /** The Lagrangian in canonical form, in the ring of the derivation. */
+  readonly lagrangian: TensorSum;
+  /** P_abc = ∂L/∂T^abc and Q_abcd = ∂L/∂R^abcd, free indices a, b, c(, d). */
+  readonly momenta: Momenta;
+  /** E_ab and E_abc with the momenta expanded. */
+  readonly equations: CovariantEquations;
+  /** The same with P and Q kept as symbols. */
+  readonly withMomenta: CovariantEquations;
+  readonly checks: readonly Check[];
+}
+
+/**
+ * Field equations of the Lagrangian of a derivation.
+ * @throws Error when a component differs from the reduced equations on some geometry: the program would be wrong.
+ */
+export function covariantTheory(d: Derivation, onStep: (what: string) => void = () => {}): CovariantTheory {
+  const kinds = variationKinds();
+  const lagrangian = canonicalSum(d.terms, kinds);
+  const momenta = fieldMomenta(lagrangian, kinds);
+  const equations = fieldEquations(lagrangian, momenta, kinds);
+  const symbols = momentumSymbols(momenta, constant(d.ring, 1));
+  const withMomenta = fieldEquations(lagrangian, symbols, kinds);
+  const checks = geometryNames().flatMap((id): Check[] => {
+    onStep(`comparing components on ${id}`);
+    const geometry = loadGeometry(id, d.theory.signature);
+    const names = componentMismatches(d, geometry, equations);
+    if (names.length > 0) throw new Error(`the covariant equations differ from the reduced ones of ${names} on ${id}`);
+    const detail = `their components on the geometry ${id} equal the reduced Euler–Lagrange expressions`;
+    return [{ name: 'covariant field equations', holds: true, detail }];
+  });
+  return { lagrangian, momenta, equations, withMomenta, checks };
+}
+
+/** Jets of a geometry and every constant of a derivation. */
+function ringWith(geometry: Geometry, d: Derivation): Ring {
+  const known = new Set(geometry.ring.generators.map((g) => g.name));
+  const constants = d.ring.generators.filter((g) => g.kind === 'constant' && !known.has(g.name)).map((g) => g.name);
+  return makeRing([...geometry.ring.generators, ...constantsOf(constants)]);
+}
+
+/** Fields whose reduced equation differs from the projection of the covariant ones. */
+function componentMismatches(d: Derivation, geometry: Geometry, equations: CovariantEquations): string[] {
+  const ring = ringWith(geometry, d);
+  const reduced: Poly = sum(
+    ring,
+    d.terms.map(({ coefficient, factors }) =>
+      multiply(moveTo(coefficient, ring), moveTo(density(geometry, factors), ring)),
+    ),
+  );
+  const components = equationComponents(equations, componentEvaluator(geometry, ring));
+  return [...projected(geometry, ring, components)]
+    .filter(([q, e]) => !equals(e, eulerLagrange(reduced, q)))
+    .map(([q]) => q);
+}
