@@ -62,13 +62,13 @@ interface Face {
 }
 
 function readFace(body: string): Face {
-  const property = (name: string) => new RegExp(`${name}:([^;]*)`).exec(body)?.[1]?.trim() ?? '';
+  const property = (name: string) => new RegExp(`${name}:([^;]*)`).exec(body)?.[1]?.replaceAll('"', '').trim() ?? '';
   const file = /url\(([^)]*\.woff2)\)/.exec(body)?.[1] ?? '';
   return { family: property('font-family'), style: property('font-style'), weight: property('font-weight'), file };
 }
 
 /** Faces that MathML and the page itself are set in, besides those that classes ask for. */
-const ALWAYS = new Set(['KaTeX_Main normal 400', 'KaTeX_Math italic 400', 'KaTeX_Size1 normal 400']);
+const ALWAYS = ['KaTeX_Main italic 400', 'KaTeX_Main normal 400', 'KaTeX_Math italic 400', 'KaTeX_Size1 normal 400'];
 
 /** Faces of MathML's variants of letters, which browsers leave to style sheets. */
 const VARIANTS: ReadonlyMap<string, string> = new Map([
