@@ -40,7 +40,9 @@ export function modelParameters(d: Derivation): Parameter[] {
   learn('M', PLANCK_MASS, 1);
   for (const p of d.geometry.parameters) learn(p.name, p.meaning, p.dimension);
   for (const { density, name, isSource } of d.fluids) {
-    const when = isSource ? 'now, a function of time' : `at ${d.geometry.isotropic?.scale ?? 'scale factor'} = 1`;
+    const { isotropic } = d.geometry;
+    const then = isotropic ? `at ${isotropic.scale} = 1` : 'at unit spatial volume';
+    const when = isSource ? 'now, a function of time' : then;
     learn(density, `energy density of ${name} ${when}`, 4, isSource);
   }
   for (const g of d.ring.generators) {

@@ -40,7 +40,7 @@ describe('BlockWriter', () => {
   });
 
   it('shows vanishing products as zero', () => {
-    const odd = deriveText('untwist: 1\nname: x\nlagrangian: "R^2 + \\epsilon^{abcd} R_{ab} T_c A_d"\n');
+    const odd = deriveText('untwist: 1\nname: x\nlagrangian: |\n  R^2 + \\epsilon^{abcd} R_{ab} T_c A_d\n');
     expect(odd.invariants.some((i) => i.value.size === 0)).toBe(true);
     expect(blocks().invariants(odd)).toContain('<mn>0</mn>');
   });
