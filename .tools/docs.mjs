@@ -16,7 +16,12 @@ const faults = [];
 
 const words = (line) => [...line.matchAll(/'([^']*)'|"([^"]*)"|(\S+)/g)].map((m) => m[1] ?? m[2] ?? m[3]);
 const run = (args, input) =>
-  spawnSync(process.execPath, [bin, ...args], { cwd: root, input, encoding: 'utf8', env: { ...process.env, NO_COLOR: '1' } });
+  spawnSync(process.execPath, [bin, ...args], {
+    cwd: root,
+    input,
+    encoding: 'utf8',
+    env: { ...process.env, NO_COLOR: '1' },
+  });
 
 /** Whether the lines of a text match a pattern in which a line "…" stands for any number of lines. */
 function matches(pattern, lines) {

@@ -11,8 +11,8 @@ export type { Answer, Question } from './worker.js';
 /** Megabytes of heap after which the thread is given up. */
 const MEMORY_LIMIT_MB = 512;
 
-/** A thread loads plain JavaScript only: where this file is run as source, as in tests, the compiled worker serves it. */
-const WORKER = new URL(import.meta.url.endsWith('.ts') ? '../../dist/cas/worker.js' : './worker.js', import.meta.url);
+/** The compiled worker, seen alike from src/cas, dist/cas and the bundle in dist/chunks: a thread loads plain JavaScript only. */
+const WORKER = new URL('../../dist/cas/worker.js', import.meta.url);
 
 /** The answer to a question, or the fault `time limit` after so many milliseconds, loading included. */
 export function ask(question: Question, timeLimitMs: number): Promise<Answer> {
