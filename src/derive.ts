@@ -8,22 +8,33 @@ import { moveTo, symbolsOf } from './algebra/collect.js';
 import { fraction } from './algebra/fraction.js';
 import { remember } from './algebra/memo.js';
 import { add, equals, generator, isZero, monomial, multiply, negate, type Poly, scale, sum } from './algebra/poly.js';
-import { addRational, multiplyRational, negateRational, ONE, type Rational, rational } from './algebra/rational.js';
+import {
+  addRational,
+  multiplyRational,
+  negateRational,
+  ONE,
+  printRational,
+  type Rational,
+  rational,
+} from './algebra/rational.js';
 import { constantsOf, exponentAt, type Generator, jetsOf, makeRing, type Ring } from './algebra/ring.js';
 import type { Check, Derivation, FluidValue, FriedmannForm, ScalarTensorForm } from './derivation.js';
 import { loadGeometry } from './geometry/build.js';
 import type { Geometry } from './geometry/geometry.js';
 import { MAX_JET_ORDER } from './geometry/read-geometry.js';
-import { density, symbolicValue } from './geometry/reduction.js';
+import { density, MAX_REDUCED_TERMS, ReductionLimitError, symbolicValue } from './geometry/reduction.js';
 import { couplingCombinations, screeningConditions } from './mechanics/couplings.js';
 import { conservationResidual, friedmannForm } from './mechanics/friedmann.js';
 import { noetherResidual } from './mechanics/identities.js';
 import { dropTotalDerivatives } from './mechanics/total-derivatives.js';
 import { InputError } from './notation/diagnostics.js';
 import { applyImposed, solveRelations } from './notation/impose.js';
+import { printLagrangian } from './notation/print.js';
 import { polyOfScalar } from './notation/scalar-poly.js';
+import { UNIT } from './notation/scalar-term.js';
 import type { LagrangianTerm, MatterComponent, Theory } from './notation/theory.js';
 import { biScalarForm } from './scalartensor/biscalar.js';
+import { ContractionLimitError } from './tensor/contraction.js';
 import { dummyFreeKey } from './tensor/invariants.js';
 
 /** Symbol of the reduced Planck mass in the Friedmann form. */
@@ -39,6 +50,7 @@ export function derive(theory: Theory, onStep: (what: string) => void = () => {}
   const geometry = loadGeometry(theory.geometry, theory.signature);
   refuseFieldNames(theory, geometry);
   const fluidsWanted = theory.matter.map((m) => ({ ...m, exponents: dilution(geometry, m) }));
+  refuseSteepDilution(fluidsWanted);
   const ring = ringOf(theory, geometry, fluidsWanted);
   const constants = theory.symbols.filter((s) => s.role === 'constant').map((s) => s.name);
   const relations = solveRelations(ring, theory.relations, constants);
@@ -50,11 +62,17 @@ export function derive(theory: Theory, onStep: (what: string) => void = () => {}
   const fix = (p: Poly): Poly => applyImposed(p, inParameters, relations.origins);
 
   const terms = collectTerms(ring, theory.lagrangian, couple);
+  let size = 0;
   const gravity = sum(
     ring,
     terms.map(({ coefficient, factors }, i) => {
       onStep(`contracting product ${i + 1} of ${terms.length}`);
-      return multiply(coefficient, moveTo(density(geometry, factors), ring));
+      return withinLimits(factors, () => {
+        const value = moveTo(density(geometry, factors), ring);
+        size += coefficient.size * value.size;
+        if (size > MAX_REDUCED_TERMS) throw new ReductionLimitError(MAX_REDUCED_TERMS);
+        return multiply(coefficient, value);
+      });
     }),
   );
   const fluids = fluidsWanted.map((m) => fluidValue(ring, m, couple));
@@ -132,6 +150,7 @@ export function derive(theory: Theory, onStep: (what: string) => void = () => {}
 /** Users may not name a constant like a field or parameter of their geometry. */
 function refuseFieldNames(theory: Theory, geometry: Geometry): void {
   const taken = new Map([...geometry.fields, ...geometry.parameters].map((s) => [s.name, s.meaning]));
+  for (const [field, rate] of geometry.rates) taken.set(rate, `expansion rate of ${field}`);
   const clashes = theory.symbols.filter((s) => taken.has(s.name));
   if (clashes.length === 0) return;
   throw new InputError(
@@ -142,6 +161,19 @@ function refuseFieldNames(theory: Theory, geometry: Geometry): void {
       hint: 'choose another name',
     })),
   );
+}
+
+/** A limit that is exceeded while a product is reduced is the theory's fault, and the product is named. */
+function withinLimits(factors: LagrangianTerm['factors'], reduce: () => Poly): Poly {
+  try {
+    return reduce();
+  } catch (error) {
+    if (!(error instanceof ReductionLimitError || error instanceof ContractionLimitError)) throw error;
+    const product = printLagrangian([{ scalar: UNIT, factors }]);
+    const message = `the product ${product} is too large for this program: ${error.message}`;
+    const hint = 'lower the degree of the Lagrangian, use fewer couplings, or a geometry with more symmetry';
+    throw new InputError([{ code: 'terms-limit', severity: 'error', message, hint }]);
+  }
 }
 
 type Fluid = MatterComponent & { readonly exponents: ReadonlyMap<string, Rational> };
@@ -155,6 +187,24 @@ function dilution(geometry: Geometry, { w }: MatterComponent): ReadonlyMap<strin
     if (n !== 0) out.set(g.name, multiplyRational(power, rational(n)));
   });
   return out;
+}
+
+/** The kernel has powers up to ±511, and the equations need a few more than the density itself. */
+const MAX_DILUTION = 500;
+
+function refuseSteepDilution(fluids: readonly Fluid[]): void {
+  const steep = fluids.filter(
+    (f) => hasPowerLaw(f) && [...f.exponents.values()].some((e) => Math.abs(Number(e.num)) > MAX_DILUTION),
+  );
+  if (steep.length === 0) return;
+  throw new InputError(
+    steep.map(({ name, w }) => ({
+      code: 'exponent-limit',
+      severity: 'error',
+      message: `the density of ${name} with w = ${printRational(w)} goes with a power of the scale factor beyond ${MAX_DILUTION}`,
+      hint: 'choose a smaller w',
+    })),
+  );
 }
 
 const hasPowerLaw = (fluid: Fluid): boolean => [...fluid.exponents.values()].every((e) => e.den === 1n);
