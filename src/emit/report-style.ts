@@ -57,6 +57,7 @@ button { display: none; }
 .scripted button { display: inline-block; }
 button, summary { padding: 0.2rem 0.5rem; border: 1px solid var(--line); border-radius: 3px; background: var(--paper); color: var(--accent); font: 500 0.8125rem/1.5 var(--label); cursor: pointer; }
 button:hover, summary:hover { border-color: var(--accent); }
+details { min-width: 0; max-width: 100%; }
 details[open] { flex-basis: 100%; }
 summary { display: inline-block; list-style: none; }
 summary::-webkit-details-marker { display: none; }

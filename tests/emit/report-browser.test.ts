@@ -83,6 +83,8 @@ describe.skipIf(!existsSync(CHROMIUM) && !process.env.CI)('report in a browser',
       });
       expect(faults).toEqual([]);
       expect(await page.title()).not.toBe('run');
+      // Sources opened, too.
+      await page.evaluate("document.querySelectorAll('details').forEach((d) => { d.open = true; })");
       const width = await page.evaluate('document.documentElement.scrollWidth');
       expect(width).toBe(375);
       expect(await page.locator('.display').count()).toBeGreaterThan(5);
