@@ -13,8 +13,10 @@ import { escapeHtml } from './report-text.js';
 const MAX_EXPAND = 1e6;
 /** Characters of the TeX of a formula that is still laid out by KaTeX, which makes about seventy times as many of it. */
 const LONGEST_TEX = 2000;
-/** Characters of all markup in KaTeX's own layout: what keeps the page quick to open. */
-const LARGEST_TOTAL = 1_500_000;
+/** Characters of all markup in KaTeX's own layout, and of all of it: what keeps the page quick to open. */
+const LARGEST_LAYOUT = 1_500_000;
+const LARGEST_TOTAL = 4_000_000;
+const LEFT_OUT = '<p class="left-out">Not shown, to keep this page quick to open; the source is complete.</p>';
 
 export interface Typesetter {
   /** A formula within a line. */
@@ -23,17 +25,21 @@ export interface Typesetter {
   display(tex: string): string;
 }
 
-/** Markup of TeX; a formula that KaTeX does not know is shown as its source. */
+/**
+ * Markup of TeX; a formula that KaTeX does not know is shown as its source. Very many displays are more than a browser
+ * should be given: beyond a limit they are left out with a note.
+ */
 export function makeTypesetter(): Typesetter {
   const known = new Map<string, string>();
   let total = 0;
   const set = (tex: string, displayMode: boolean): string => {
-    const output = tex.length > LONGEST_TEX || total > LARGEST_TOTAL ? 'mathml' : 'htmlAndMathml';
+    if (displayMode && total > LARGEST_TOTAL) return LEFT_OUT;
+    const output = tex.length > LONGEST_TEX || total > LARGEST_LAYOUT ? 'mathml' : 'htmlAndMathml';
     try {
       const markup = withoutSource(
         katex.renderToString(tex, { displayMode, output, maxExpand: MAX_EXPAND, throwOnError: true, strict: false }),
       );
-      if (output === 'htmlAndMathml') total += markup.length;
+      total += markup.length;
       return markup;
     } catch {
       return `<code class="source-only">${escapeHtml(tex)}</code>`;

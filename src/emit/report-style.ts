@@ -74,6 +74,7 @@ th { font: 500 0.8125rem/1.5 var(--label); color: var(--muted); }
 .caution p:last-child, .caution ul { margin-bottom: 0; }
 .caution ul { padding-left: 1.1rem; }
 .visually-hidden { position: absolute; width: 1px; height: 1px; overflow: hidden; clip-path: inset(50%); white-space: nowrap; }
+.left-out { margin: 0; font-size: 0.9375rem; color: var(--muted); }
 .source-only { white-space: pre-wrap; }
 
 .work .katex, .reasons .katex, .facts .katex { font-size: 1.08em; }

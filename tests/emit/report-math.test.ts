@@ -31,6 +31,16 @@ describe('makeTypesetter', () => {
     expect(kinds.lastIndexOf(true)).toBeLessThan(kinds.indexOf(false));
   });
 
+  it('leaves displays out when there are far too many, but no formula in a line', () => {
+    const { inline, display } = makeTypesetter();
+    const formula = (n: number) => Array.from({ length: 180 }, (_, i) => `x_{${i}}^{${n}}`).join('+');
+    const shown = Array.from({ length: 400 }, (_, n) => display(formula(n)).includes('<math'));
+    expect(shown[0]).toBe(true);
+    expect(shown.at(-1)).toBe(false);
+    expect(display(formula(400))).toContain('the source is complete');
+    expect(inline('x')).toContain('<math');
+  });
+
   it('shows the source of what KaTeX does not know, as text', () => {
     expect(makeTypesetter().inline('\\unknown<b>')).toBe('<code class="source-only">\\unknown&lt;b&gt;</code>');
   });
