@@ -1,6 +1,7 @@
 /**
  * Dummy indices of two monomials kept apart when they are multiplied. Names that do not meet are left as the user typed
- * them; a dummy that meets another index gets the first free Latin letter, then a Greek one.
+ * them; a dummy that meets another index gets the first free Latin letter, then a Greek one. An index variable `?a` of a
+ * pattern stays a variable.
  */
 
 import type { TensorFactor } from './theory.js';
@@ -22,9 +23,9 @@ function occurrences(factors: readonly TensorFactor[]): Map<string, number> {
 
 function renamed(factors: readonly TensorFactor[], names: ReadonlyMap<string, string>): readonly TensorFactor[] {
   if (names.size === 0) return factors;
-  return factors.map(({ head, slots }) => ({
-    head,
-    slots: slots.map((slot) => ({ name: names.get(slot.name) ?? slot.name, up: slot.up })),
+  return factors.map((factor) => ({
+    ...factor,
+    slots: factor.slots.map((slot) => ({ name: names.get(slot.name) ?? slot.name, up: slot.up })),
   }));
 }
 
@@ -36,15 +37,16 @@ export function renamedApart(a: readonly TensorFactor[], b: readonly TensorFacto
   const inA = occurrences(a);
   const inB = occurrences(b);
   const used = new Set([...inA.keys(), ...inB.keys()]);
-  const fresh = (): string => {
-    // Every index occupies two of at most 4 · MAX_FACTORS slots, so the list cannot run out.
-    const name = FRESH.find((candidate) => !used.has(candidate))!;
-    used.add(name);
-    return name;
+  const fresh = (instead: string): string => {
+    // The slots of a product are fewer than the letters (MAX_FACTORS times MAX_SLOTS), so the list cannot run out.
+    const sigil = instead.startsWith('?') ? '?' : '';
+    const letter = FRESH.find((candidate) => !used.has(sigil + candidate))!;
+    used.add(sigil + letter);
+    return sigil + letter;
   };
   const namesA = new Map<string, string>();
   const namesB = new Map<string, string>();
-  for (const [name, count] of inB) if (count === 2 && inA.has(name)) namesB.set(name, fresh());
-  for (const [name, count] of inA) if (count === 2 && inB.get(name) === 1) namesA.set(name, fresh());
+  for (const [name, count] of inB) if (count === 2 && inA.has(name)) namesB.set(name, fresh(name));
+  for (const [name, count] of inA) if (count === 2 && inB.get(name) === 1) namesA.set(name, fresh(name));
   return [...renamed(a, namesA), ...renamed(b, namesB)];
 }

@@ -41,7 +41,8 @@ class Expansion {
         return [{ scalar: symbolTerm(node.name), factors: [] }];
       case 'tensor': {
         const slots = node.slots.map(({ name, up }) => ({ name, up }));
-        return [{ scalar: UNIT, factors: [{ head: node.head, slots }] }];
+        const part = node.part === undefined ? {} : { part: node.part };
+        return [{ scalar: UNIT, factors: [{ head: node.head, ...part, slots }] }];
       }
       case 'sum': {
         const all: LagrangianTerm[] = [];
@@ -196,6 +197,8 @@ const negated = (term: LagrangianTerm): LagrangianTerm => ({
 
 /** Equal for terms that differ in the coefficient or in the order of factors only. */
 function termKey({ scalar, factors }: LagrangianTerm): string {
-  const tensors = factors.map(({ head, slots }) => head + slots.map((s) => (s.up ? '^' : '_') + s.name).join(''));
-  return `${powersKey(scalar.powers)}|${tensors.sort().join(' ')}`;
+  const tensors = factors.map(
+    ({ head, part, slots }) => `${head} ${part ?? ''} ${slots.map((s) => (s.up ? '^' : '_') + s.name).join('')}`,
+  );
+  return `${powersKey(scalar.powers)}|${tensors.sort().join('|')}`;
 }

@@ -13,9 +13,16 @@ type Free = ReadonlyMap<string, SlotNode> | undefined;
 const NONE: Free = new Map();
 const TIMES = ['', 'once', 'twice', 'three times', 'four times', 'five times', 'six times'];
 
-/** Every offence against the rule, in the order of the text; at most one for each index of a term. */
-export function checkIndices(expression: Expression, passage: Passage): readonly Diagnostic[] {
+/**
+ * Every offence against the rule, in the order of the text; at most one for each index of a term.
+ * @param allowFree whether the whole may have free indices, the same in every summand.
+ */
+export function checkIndices(expression: Expression, passage: Passage, allowFree = false): readonly Diagnostic[] {
   const checker = new IndexChecker(passage);
+  if (allowFree) {
+    checker.free(expression);
+    return checker.problems;
+  }
   const summands = expression.kind === 'sum' ? expression.summands.map((s) => s.value) : [expression];
   for (const summand of summands) checker.requireScalar(checker.free(summand));
   return checker.problems;
@@ -94,7 +101,7 @@ class IndexChecker {
       if (free === undefined) failed = true;
       if (i === 0) first = free;
       else if (free !== undefined && first !== undefined && !sameIndices(first, free)) {
-        const message = `the summands of one bracket differ in their free indices: ${list(free)} here, ${list(first)} in the first`;
+        const message = `the summands differ in their free indices: ${list(free)} here, ${list(first)} in the first`;
         this.report(
           'free-indices-differ',
           value,

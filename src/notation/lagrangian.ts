@@ -1,16 +1,15 @@
 /**
- * The text of a Lagrangian → its terms: syntax, Einstein's rule, expansion, and a look at mass dimensions. The one
- * entry for Lagrangian texts; imports the stages of this folder.
+ * The text of a Lagrangian → its terms, none of them with free indices, and a look at mass dimensions. The one entry for
+ * Lagrangian texts.
  */
 import { type Diagnostic, errorAt, InputError, warningAt } from './diagnostics.js';
 import { expand } from './expand.js';
-import { checkIndices } from './indices.js';
-import { reservedMeaning } from './names.js';
-import { parseExpression } from './parser.js';
 import type { Passage } from './passage.js';
 import { printLagrangian } from './print.js';
 import type { Expression } from './syntax.js';
-import type { LagrangianTerm, TensorHead, TheorySymbol } from './theory.js';
+import { readTensorExpression } from './tensor-expression.js';
+import { isBuiltIn } from './tensor-syntax.js';
+import type { DeclaredTensor, LagrangianTerm, TensorHead, TheorySymbol } from './theory.js';
 import { clip } from './tokens.js';
 
 export interface LagrangianReading {
@@ -24,42 +23,31 @@ export interface LagrangianReading {
  * @throws InputError with every fault found: one syntax error at most, every unknown symbol and wrong number of indices;
  * when there is none, every offence against Einstein's rule; when there is none of these, the first limit exceeded.
  */
-export function readLagrangian(passage: Passage, symbols: readonly TheorySymbol[]): LagrangianReading {
+export function readLagrangian(
+  passage: Passage,
+  symbols: readonly TheorySymbol[],
+  tensors: readonly DeclaredTensor[] = [],
+): LagrangianReading {
   const { text } = passage;
   if (text.trim() === '') {
     const place = passage.locate(0, text.length);
     throw new InputError([errorAt(place, 'empty-lagrangian', 'the Lagrangian is empty', 'for example 1/2 M^2 R')]);
   }
-  const names = symbols.map((s) => s.name);
-  const declared = new Set(names);
-  const problems: Diagnostic[] = [];
-  const vocabulary = {
-    tensors: true,
-    jets: false,
-    isSymbol: (name: string) => declared.has(name),
-    names,
-    explain: (name: string) => {
-      const meaning = reservedMeaning(name);
-      return meaning === undefined ? undefined : `${name} stands for ${meaning} and cannot occur in a Lagrangian`;
-    },
-  };
-  const tree = parseExpression(passage, vocabulary, problems);
-  if (tree !== undefined) problems.push(...checkIndices(tree, passage));
-  if (tree === undefined || problems.length > 0) throw new InputError(problems);
-  const terms = expand(tree, passage);
+  const { tree, terms } = readTensorExpression(passage, { symbols, tensors });
   if (terms.length === 0) {
     const place = passage.locate(tree.start, tree.end);
     throw new InputError([errorAt(place, 'empty-lagrangian', 'the Lagrangian is zero', 'its terms cancel')]);
   }
-  return { terms, warnings: dimensionWarnings(tree, terms, passage, symbols) };
+  return { terms, warnings: dimensionWarnings(tree, terms, passage, symbols, tensors) };
 }
 
 const DIMENSIONS: Readonly<Record<TensorHead, number>> = { R: 2, T: 1, A: 1, epsilon: 0, eta: 0, delta: 0 };
 
-/** Mass dimension of a term in units c = ħ = 1. */
-export function dimensionOf(term: LagrangianTerm, symbols: ReadonlyMap<string, number>): number {
-  const scalar = term.scalar.powers.reduce((sum, [name, exponent]) => sum + exponent * (symbols.get(name) ?? 0), 0);
-  return term.factors.reduce((sum, { head }) => sum + DIMENSIONS[head], scalar);
+/** Mass dimension of a term in units c = ħ = 1; `dimensions` holds those of symbols and declared tensors by name. */
+export function dimensionOf(term: LagrangianTerm, dimensions: ReadonlyMap<string, number>): number {
+  const scalar = term.scalar.powers.reduce((sum, [name, n]) => sum + n * (dimensions.get(name) ?? 0), 0);
+  const ofHead = (head: string): number => (isBuiltIn(head) ? DIMENSIONS[head] : (dimensions.get(head) ?? 0));
+  return term.factors.reduce((sum, { head }) => sum + ofHead(head), scalar);
 }
 
 function dimensionWarnings(
@@ -67,8 +55,9 @@ function dimensionWarnings(
   terms: readonly LagrangianTerm[],
   passage: Passage,
   symbols: readonly TheorySymbol[],
+  tensors: readonly DeclaredTensor[],
 ): readonly Diagnostic[] {
-  const dimensions = new Map(symbols.map((s) => [s.name, s.dimension]));
+  const dimensions = new Map([...symbols, ...tensors].map((s) => [s.name, s.dimension]));
   const isOff = (term: LagrangianTerm): boolean => dimensionOf(term, dimensions) !== 4;
   if (!terms.some(isOff)) return [];
   const summands = tree.kind === 'sum' ? tree.summands.map((s) => s.value) : [tree];

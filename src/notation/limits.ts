@@ -17,7 +17,9 @@ export const MAX_EXPONENT = 64;
 export const MAX_FACTORS = 12;
 /** Terms of an expression after its brackets are multiplied out. */
 export const MAX_TERMS = 20_000;
-/** Declared constants and scales together. */
+/** Indices of a declared tensor. */
+export const MAX_SLOTS = 6;
+/** Declared constants, scales and tensors together. */
 export const MAX_SYMBOLS = 400;
 /** Letters of one name. */
 export const MAX_NAME = 64;

@@ -5,12 +5,14 @@
  */
 import { Cursor } from './cursor.js';
 import { type Diagnostic, InputError } from './diagnostics.js';
+import { parseJet } from './jet-syntax.js';
 import { MAX_DIGITS, MAX_EXPONENT } from './limits.js';
+import { checkPart, partAt } from './parts.js';
 import type { Passage } from './passage.js';
 import type { Expression, Factor, Summand } from './syntax.js';
-import { indicesFollow, parseTensor } from './tensor-syntax.js';
+import { indicesFollow, parseTensor, typedHead } from './tensor-syntax.js';
 import { isGreek, type Token, tokenize } from './tokens.js';
-import { headAt, type JoinedName, joinName, macroName, reportUnknown, type Vocabulary } from './vocabulary.js';
+import { headAt, isHeadAt, joinName, macroName, reportUnknown, type Vocabulary } from './vocabulary.js';
 
 const CLOSING: ReadonlyMap<string, string> = new Map([
   ['(', ')'],
@@ -31,7 +33,7 @@ export function parseExpression(
   vocabulary: Vocabulary,
   problems: Diagnostic[],
 ): Expression | undefined {
-  return attempt(passage, problems, (cursor) => {
+  return attempt(passage, vocabulary, problems, (cursor) => {
     const value = parseSum(cursor, vocabulary);
     expectEnd(cursor);
     return value;
@@ -44,7 +46,7 @@ export function parseEquation(
   vocabulary: Vocabulary,
   problems: Diagnostic[],
 ): { readonly left: Expression; readonly right: Expression } | undefined {
-  return attempt(passage, problems, (cursor) => {
+  return attempt(passage, vocabulary, problems, (cursor) => {
     const left = parseSum(cursor, vocabulary);
     if (!cursor.isMark('=')) {
       if (cursor.token.kind !== 'end') expectEnd(cursor);
@@ -67,9 +69,14 @@ export function parseEquation(
   });
 }
 
-function attempt<T>(passage: Passage, problems: Diagnostic[], parse: (cursor: Cursor) => T): T | undefined {
+function attempt<T>(
+  passage: Passage,
+  vocabulary: Vocabulary,
+  problems: Diagnostic[],
+  parse: (cursor: Cursor) => T,
+): T | undefined {
   const found: Diagnostic[] = [];
-  const tokens = tokenize(passage, found);
+  const tokens = tokenize(passage, found, vocabulary.patterns === true);
   let value: T | undefined;
   // A decimal point leaves a number in place, so the rest can still be looked at.
   if (found.every((problem) => problem.code === 'decimal-point')) {
@@ -248,6 +255,9 @@ function parsePrimary(cursor: Cursor, vocabulary: Vocabulary): Expression {
     if (isGreek(token.text)) return parseNamed(cursor, vocabulary, macroName(token.text, vocabulary));
     return cursor.fail('unknown-macro', token, `\\${token.text} has no meaning here`, macroHint(token.text));
   }
+  if (cursor.isMark('{') && cursor.isMark('}', 1) && vocabulary.tensors && partAt(cursor, 2) !== undefined) {
+    return parsePartInFront(cursor, vocabulary);
+  }
   if (token.kind === 'mark' && CLOSING.has(token.text)) return parseBracket(cursor, vocabulary);
   const at = token.kind === 'end' ? { start: Math.max(0, cursor.lastEnd - 1), end: cursor.lastEnd } : token;
   if (CLOSERS.has(token.text) && cursor.lastEnd === 0) expectEnd(cursor);
@@ -295,7 +305,7 @@ function parseBracket(cursor: Cursor, vocabulary: Vocabulary): Expression {
   }
   // `{R^a}_{bcd}`: a braced tensor may go on collecting indices.
   if (opening.text === '{' && value.kind === 'tensor' && indicesFollow(cursor, 0)) {
-    return parseTensor(cursor, value.head, { ...value, start: opening.start });
+    return parseTensor(cursor, vocabulary, value.head, { ...value, start: opening.start });
   }
   return { ...value, start: opening.start, end: cursor.lastEnd };
 }
@@ -347,44 +357,31 @@ function expectEndOfGroup(cursor: Cursor, opening: Token): never {
   );
 }
 
-/** D(q,n), the n-th time derivative of q. */
-function parseJet(cursor: Cursor, vocabulary: Vocabulary): Expression {
-  const head = cursor.next();
-  cursor.next();
-  const word = cursor.token;
-  const form = 'write D(q,n) with a variable q and a number n';
-  if (word.kind !== 'word' && !(word.kind === 'macro' && isGreek(word.text))) {
-    cursor.fail('bad-jet', word.kind === 'end' ? head : word, 'D( lacks its variable', form);
+/** `{}^{(axial)}T_{abc}`, as parts are often printed. */
+function parsePartInFront(cursor: Cursor, vocabulary: Vocabulary): Expression {
+  const { start } = cursor.token;
+  cursor.skip(2);
+  const part = partAt(cursor, 0)!;
+  cursor.skip(part.tokens);
+  const { token } = cursor;
+  const head = isHeadAt(cursor, 0, vocabulary) ? headAt(cursor, joinName(cursor, token.text), vocabulary) : undefined;
+  if (head === undefined) {
+    const message = `${cursor.typed(part)} stands in front of no tensor`;
+    return cursor.fail('misplaced-part', part, message, 'write T^{(axial)}_{abc} or {}^{(axial)}T_{abc}');
   }
-  const name: JoinedName = joinName(cursor, word.kind === 'macro' ? macroName(word.text, vocabulary) : word.text);
-  cursor.skip(name.tokens);
-  if (!cursor.accept(','))
-    cursor.fail('bad-jet', { start: head.start, end: cursor.lastEnd }, 'D( lacks its comma', form);
-  const order = cursor.token;
-  if (order.kind !== 'integer')
-    cursor.fail('bad-jet', { start: head.start, end: cursor.lastEnd }, 'D( lacks its order', form);
+  checkPart(cursor, head, typedHead(head), part);
   cursor.next();
-  if (!cursor.accept(')'))
-    cursor.fail('bad-jet', { start: head.start, end: cursor.lastEnd }, 'D( is never closed', form);
-  if (order.text.length > 9 || Number(order.text) > MAX_EXPONENT) {
-    cursor.fail('exponent-limit', order, `the order is beyond the limit of ${MAX_EXPONENT}`, 'smaller orders only');
-  }
-  const span = { start: head.start, end: cursor.lastEnd };
-  if (!vocabulary.isSymbol(name.text)) reportUnknown(cursor, vocabulary, name, word);
-  const n = Number(order.text);
-  return { kind: 'symbol', name: n === 0 ? name.text : `D(${name.text},${n})`, ...span };
+  return parseTensor(cursor, vocabulary, head, { slots: [], part: part.name, start, end: token.end });
 }
 
 /** A tensor or a declared name; `text` is the first word, without its subscript. */
 function parseNamed(cursor: Cursor, vocabulary: Vocabulary, text: string): Expression {
   const first = cursor.token;
   const name = joinName(cursor, text);
-  if (vocabulary.tensors) {
-    const head = headAt(cursor, name, vocabulary);
-    if (head !== undefined) {
-      cursor.next();
-      return parseTensor(cursor, head, { slots: [], start: first.start, end: first.end });
-    }
+  const head = headAt(cursor, name, vocabulary);
+  if (head !== undefined) {
+    cursor.next();
+    return parseTensor(cursor, vocabulary, head, { slots: [], start: first.start, end: first.end });
   }
   cursor.skip(name.tokens);
   const span = { start: first.start, end: cursor.lastEnd };

@@ -3,7 +3,16 @@
  * a terminal, or in LaTeX. One style table holds everything in which the three differ.
  */
 import { latexName, latexPower } from './latex-symbol.js';
-import type { IndexSlot, LagrangianTerm, ScalarSum, ScalarTerm, TensorFactor, TheorySymbol } from './theory.js';
+import { isBuiltIn, typedHead } from './tensor-syntax.js';
+import type {
+  DeclaredTensor,
+  IndexSlot,
+  LagrangianTerm,
+  ScalarSum,
+  ScalarTerm,
+  TensorFactor,
+  TheorySymbol,
+} from './theory.js';
 import { GREEK } from './tokens.js';
 
 export interface PrintOptions {
@@ -18,7 +27,8 @@ interface Style {
   readonly symbol: (name: string) => string;
   readonly power: (base: string, exponent: number) => string;
   readonly fraction: (num: bigint, den: bigint) => string;
-  readonly head: (head: TensorFactor['head']) => string;
+  /** A tensor without indices, and how a part of it is marked. */
+  readonly head: (head: string, part: string | undefined) => string;
   readonly index: (name: string) => string;
   /** How a quotient of monomials is written; without it negative exponents stay. */
   readonly quotient?: (numerator: string, denominator: string) => string;
@@ -26,12 +36,14 @@ interface Style {
 
 const plainPower = (base: string, n: number): string => (n === 1 ? base : n > 1 ? `${base}^${n}` : `${base}^{${n}}`);
 
+const partMark = (part: string | undefined): string => (part === undefined ? '' : `^{(${part})}`);
+
 const PLAIN: Style = {
   minus: '-',
   symbol: (name) => name,
   power: plainPower,
   fraction: (num, den) => (den === 1n ? `${num}` : `${num}/${den}`),
-  head: (head) => (head.length === 1 ? head : `\\${head}`),
+  head: (head, part) => typedHead(head) + partMark(part),
   index: (name) => name,
 };
 
@@ -48,36 +60,49 @@ const UNICODE: Style = {
   minus: '−',
   symbol: (name) => name.split('_').map(greek).join('_'),
   power: (base, n) => (n === 1 ? base : base + superscript(n)),
-  head: greek,
-  index: (name) => (name.startsWith('\\') ? greek(name.slice(1)) : name),
+  head: (head, part) => greek(head) + partMark(part),
+  index: (name) => {
+    const at = name.indexOf('\\');
+    return at === -1 ? name : name.slice(0, at) + greek(name.slice(at + 1));
+  },
 };
 
 /** A declared name in Unicode: `alpha_1` as α_1. */
 export const unicodeName: (name: string) => string = UNICODE.symbol;
 
-function latexStyle(symbols: readonly TheorySymbol[]): Style {
+function latexStyle(symbols: readonly TheorySymbol[], tensors: readonly DeclaredTensor[]): Style {
   const latex = new Map(symbols.map((s) => [s.name, s.latex]));
+  const heads = new Map(tensors.map((t) => [t.name, t.latex]));
   return {
     ...PLAIN,
     symbol: (name) => latex.get(name) ?? latexName(name),
     power: latexPower,
+    head: (head, part) => {
+      // In mathematics a hyphen would be set as a minus sign.
+      const font = part?.includes('-') === true ? 'textrm' : 'mathrm';
+      const mark = part === undefined ? '' : `{}^{(\\${font}{${part}})}`;
+      const name = isBuiltIn(head) ? typedHead(head) : (heads.get(head) ?? latexName(head));
+      return mark + (/[_^']/.test(name) ? `{${name}}` : name);
+    },
     fraction: (num, den) => (den === 1n ? `${num}` : `\\tfrac{${num}}{${den}}`),
     quotient: (numerator, denominator) => `\\frac{${numerator}}{${denominator}}`,
   };
 }
 
 /** `T^{a}{}_{bc}`: one group of indices for each run at one height; a single letter needs no braces. */
-function printTensor({ head, slots }: TensorFactor, style: Style): string {
-  let text = style.head(head);
+function printTensor({ head, part, slots }: TensorFactor, style: Style): string {
+  let text = style.head(head, part);
   for (let i = 0; i < slots.length; ) {
     const { up } = slots[i]!;
     const run: IndexSlot[] = [];
     while (slots[i] !== undefined && slots[i]!.up === up) run.push(slots[i++]!);
     const names = run.map((slot) => style.index(slot.name));
     // A macro must not swallow the letter behind it.
-    const joined = names.map((name, n) => (name.startsWith('\\') && n + 1 < names.length ? `${name} ` : name)).join('');
+    const joined = names.map((name, n) => (name.includes('\\') && n + 1 < names.length ? `${name} ` : name)).join('');
     const bare = joined.length === 1;
-    text += (run[0] === slots[0] ? '' : '{}') + (up ? '^' : '_') + (bare ? joined : `{${joined}}`);
+    // TeX takes no second superscript, so the first indices stand apart from a part's name.
+    const apart = run[0] !== slots[0] || (up && text.endsWith(')}'));
+    text += (apart ? '{}' : '') + (up ? '^' : '_') + (bare ? joined : `{${joined}}`);
   }
   return text;
 }
@@ -150,14 +175,22 @@ export function lagrangianLines(terms: readonly LagrangianTerm[], options: Print
   return printTerms(terms, options.unicode === true ? UNICODE : PLAIN, options.symbols ?? []);
 }
 
-/** The Lagrangian in LaTeX with the user's names of symbols, on one line; break it between the `latexTerms`. */
-export function latexLagrangian(terms: readonly LagrangianTerm[], symbols: readonly TheorySymbol[]): string {
-  return latexTerms(terms, symbols).join(' ') || '0';
+/** The Lagrangian in LaTeX with the user's names of symbols and tensors, on one line; break it between the `latexTerms`. */
+export function latexLagrangian(
+  terms: readonly LagrangianTerm[],
+  symbols: readonly TheorySymbol[],
+  tensors: readonly DeclaredTensor[] = [],
+): string {
+  return latexTerms(terms, symbols, tensors).join(' ') || '0';
 }
 
 /** As `latexLagrangian`, one text with its sign for each term. */
-export function latexTerms(terms: readonly LagrangianTerm[], symbols: readonly TheorySymbol[]): readonly string[] {
-  return printTerms(terms, latexStyle(symbols), symbols);
+export function latexTerms(
+  terms: readonly LagrangianTerm[],
+  symbols: readonly TheorySymbol[],
+  tensors: readonly DeclaredTensor[] = [],
+): readonly string[] {
+  return printTerms(terms, latexStyle(symbols, tensors), symbols);
 }
 
 /** A scalar sum in the plain or Unicode form of `printLagrangian`, for instance one side of a relation. */

@@ -42,13 +42,14 @@ export function declare(
     return;
   }
   if (declarations.size === MAX_SYMBOLS) {
-    const message = `more than ${MAX_SYMBOLS} constants and scales`;
+    const message = `more than ${MAX_SYMBOLS} constants, scales and tensors`;
     problems.push(errorAt(key.origin, 'symbols-limit', message, 'declare only what the Lagrangian uses'));
   }
   declarations.set(name, { name, role, dimension, origin: key.origin });
 }
 
-function readDimension(node: YamlNode, name: string, problems: Diagnostic[]): number {
+/** The power of mass; reports `bad-dimension`. */
+export function readDimension(node: YamlNode, name: string, problems: Diagnostic[]): number {
   const text = asText(node, `the dimension of ${name}`, problems);
   const dimension = text === undefined ? 0 : parseDimension(text.text);
   if (dimension === undefined) {

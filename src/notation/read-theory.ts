@@ -9,16 +9,17 @@ import { reservedMeaning } from './names.js';
 import { type Passage, plainPassage } from './passage.js';
 import { readMatter } from './read-matter.js';
 import { type Declarations, namedSymbols, readConstants, readScales } from './read-symbols.js';
+import { readTensors } from './read-tensors.js';
 import { parseRelation } from './scalar.js';
 import { slugOf } from './slug.js';
-import type { LagrangianTerm, MatterComponent, Relation, Theory, TheorySymbol } from './theory.js';
+import type { DeclaredTensor, LagrangianTerm, MatterComponent, Relation, Theory, TheorySymbol } from './theory.js';
 import { asRecord, asText } from './yaml-shape.js';
 import { readYaml, type YamlNode } from './yaml-source.js';
 import { passageOf } from './yaml-text.js';
 
 const KEYS = {
   required: ['untwist', 'name', 'lagrangian'],
-  optional: ['conventions', 'constants', 'scales', 'impose', 'matter', 'geometry', 'symbols'],
+  optional: ['conventions', 'constants', 'scales', 'impose', 'matter', 'geometry', 'symbols', 'tensors'],
 };
 const DEFAULT_GEOMETRY = 'flrw';
 const MAX_TITLE = 200;
@@ -48,23 +49,26 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
   read('constants', (node) => readConstants(node, declarations, problems), undefined);
   read('scales', (node) => readScales(node, declarations, problems), undefined);
   const matter = read('matter', (node) => readMatter(node, declarations, problems), []);
+  const tensors = read('tensors', (node) => readTensors(node, declarations, problems), []);
   const geometry = read('geometry', (node) => readGeometryName(node, problems), DEFAULT_GEOMETRY);
 
   // An unknown name may only follow from a fault among the declarations, or from a misspelt key.
   const declarationsStand = !problems.some((p) => CAN_HIDE_NAMES.has(p.code));
-  const keep = (found: readonly Diagnostic[]): void => {
-    problems.push(...found.filter((p) => declarationsStand || p.code !== 'unknown-symbol'));
+  const keep = (more: readonly Diagnostic[]): void => {
+    problems.push(...more.filter((p) => declarationsStand || !NAME_FAULTS.has(p.code)));
   };
   const symbols = namedSymbols(values.get('symbols'), declarations, problems, warnings);
-  const lagrangian = read('lagrangian', (node) => readTerms(node, symbols, keep, warnings), []);
+  const lagrangian = read('lagrangian', (node) => readTerms(node, symbols, tensors, keep, warnings), []);
   const relations = readRelations(values.get('impose'), options.set ?? [], symbols, matter, keep);
   if (problems.length > 0) throw new InputError(limited(inOrder(problems)));
-  warnings.push(...unusedWarnings(declarations, lagrangian, relations));
+  warnings.push(...unusedWarnings(declarations, tensors, lagrangian, relations));
   const slug = slugOf(name);
-  return { name, slug, signature, symbols, lagrangian, relations, matter, geometry, warnings: inOrder(warnings) };
+  const content = { symbols, tensors, lagrangian, relations, matter };
+  return { name, slug, signature, ...content, geometry, warnings: inOrder(warnings) };
 }
 
-const CAN_HIDE_NAMES = new Set(['unknown-key', 'wrong-kind', 'bad-name', 'unknown-matter', 'missing-key']);
+const CAN_HIDE_NAMES = new Set(['unknown-key', 'wrong-kind', 'bad-name', 'unknown-matter', 'missing-key', 'bad-slots']);
+const NAME_FAULTS = new Set(['unknown-symbol', 'unknown-tensor']);
 
 function checkVersion(node: YamlNode, problems: Diagnostic[]): void {
   const version = asText(node, 'untwist', problems)?.text.trim();
@@ -109,6 +113,7 @@ function readGeometryName(node: YamlNode, problems: Diagnostic[]): string {
 function readTerms(
   node: YamlNode,
   symbols: readonly TheorySymbol[],
+  tensors: readonly DeclaredTensor[],
   keep: (found: readonly Diagnostic[]) => void,
   warnings: Diagnostic[],
 ): readonly LagrangianTerm[] {
@@ -118,7 +123,7 @@ function readTerms(
   keep(problems);
   if (text === undefined) return [];
   try {
-    const reading = readLagrangian(passageOf(text), symbols);
+    const reading = readLagrangian(passageOf(text), symbols, tensors);
     warnings.push(...reading.warnings);
     return reading.terms;
   } catch (error) {
@@ -176,9 +181,10 @@ function readRelations(
   return relations;
 }
 
-/** Constants and scales that occur neither in the Lagrangian nor in a relation. */
+/** Constants, scales and tensors that occur neither in the Lagrangian nor in a relation. */
 function unusedWarnings(
   declarations: Declarations,
+  tensors: readonly DeclaredTensor[],
   lagrangian: readonly LagrangianTerm[],
   relations: readonly Relation[],
 ): readonly Diagnostic[] {
@@ -189,7 +195,11 @@ function unusedWarnings(
     // M defines the Friedmann form whether the Lagrangian contains it or not.
     ({ name, role }) => !used.has(name) && role !== 'vacuum' && !(role === 'scale' && name === 'M'),
   );
-  return unused.map(({ name, role, origin }) =>
+  const heads = new Set(lagrangian.flatMap((t) => t.factors.map((f) => f.head)));
+  const idle = tensors.flatMap(({ name, origin }) =>
+    origin === undefined || heads.has(name) ? [] : [{ name, origin, role: 'tensor' }],
+  );
+  return [...unused, ...idle].map(({ name, role, origin }) =>
     warningAt(origin, 'unused-symbol', `the ${role} ${name} is declared but not used`, 'remove it, or use it'),
   );
 }

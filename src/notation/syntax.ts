@@ -2,7 +2,7 @@
  * The syntax tree of the notation: what was typed, with positions, before indices are checked and brackets multiplied
  * out. Plain data; start and end are UTF-16 offsets in the passage. Imports only types.
  */
-import type { IndexSlot, TensorHead } from './theory.js';
+import type { IndexSlot } from './theory.js';
 
 export interface Span {
   readonly start: number;
@@ -16,12 +16,20 @@ export type Expression =
   | ({ readonly kind: 'integer'; readonly value: bigint } & Span)
   /** A declared name, or a jet: its name is then `D(q,n)`. */
   | ({ readonly kind: 'symbol'; readonly name: string } & Span)
-  | ({ readonly kind: 'tensor'; readonly head: TensorHead; readonly slots: readonly SlotNode[] } & Span)
+  | TensorNode
   /** Summands with their signs; a leading sign alone makes a sum of one. */
   | ({ readonly kind: 'sum'; readonly summands: readonly Summand[] } & Span)
   /** Factors from left to right; the first never divides. */
   | ({ readonly kind: 'product'; readonly factors: readonly Factor[] } & Span)
   | ({ readonly kind: 'power'; readonly base: Expression; readonly exponent: number } & Span);
+
+export interface TensorNode extends Span {
+  readonly kind: 'tensor';
+  readonly head: string;
+  /** An irreducible part. */
+  readonly part?: string;
+  readonly slots: readonly SlotNode[];
+}
 
 export interface Summand {
   readonly negative: boolean;

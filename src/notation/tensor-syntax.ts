@@ -1,14 +1,15 @@
 /**
- * A tensor with its indices, slots in the order typed. Indices are single Latin letters or Greek macros; a wrong number of
- * them is reported and parsing goes on, everything else stops it.
+ * A tensor with its indices, slots in the order typed. Indices are single Latin letters or Greek macros, in patterns with
+ * a `?` in front; a wrong number of them is reported and parsing goes on, everything else stops it.
  */
 import type { Cursor } from './cursor.js';
-import type { Expression, SlotNode, Span } from './syntax.js';
+import { checkPart, looksLikeIndices, partAt, partsOf, type TypedPart } from './parts.js';
+import type { SlotNode, Span, TensorNode } from './syntax.js';
 import type { TensorHead } from './theory.js';
 import { isGreek, type Token } from './tokens.js';
-import { isPowerAt } from './vocabulary.js';
+import { isHeadAt, isPowerAt, type Vocabulary } from './vocabulary.js';
 
-/** How many indices each head may carry. */
+/** How many indices each built-in head may carry. */
 export const SLOT_COUNTS: Readonly<Record<TensorHead, readonly number[]>> = {
   R: [0, 2, 4],
   T: [1, 3],
@@ -18,7 +19,10 @@ export const SLOT_COUNTS: Readonly<Record<TensorHead, readonly number[]>> = {
   delta: [2],
 };
 
-const shownHead = (head: TensorHead): string => (head.length === 1 ? head : `\\${head}`);
+/** Whether a head needs no declaration. */
+export const isBuiltIn = (head: string): head is TensorHead => Object.hasOwn(SLOT_COUNTS, head);
+/** The head as a user types it. */
+export const typedHead = (head: string): string => (isBuiltIn(head) && head.length > 1 ? `\\${head}` : head);
 
 /** Whether the token `ahead` places further on begins a group of indices or a spacer {}. */
 export function indicesFollow(cursor: Cursor, ahead: number): boolean {
@@ -30,20 +34,38 @@ export function indicesFollow(cursor: Cursor, ahead: number): boolean {
 
 interface Begun extends Span {
   readonly slots: readonly SlotNode[];
+  readonly part?: string;
 }
 
 /** Reads the indices behind a head; the cursor stands behind the head, or behind what `begun` has of the tensor. */
-export function parseTensor(cursor: Cursor, head: TensorHead, begun: Begun): Expression {
+export function parseTensor(cursor: Cursor, vocabulary: Vocabulary, head: string, begun: Begun): TensorNode {
   const slots: SlotNode[] = [...begun.slots];
+  let { part } = begun;
+  const takePart = (found: TypedPart): void => {
+    checkPart(cursor, head, typedHead(head), found);
+    if (part !== undefined) {
+      cursor.fail('part-twice', found, `a second irreducible part of ${typedHead(head)}`, 'keep one of them');
+    }
+    part = found.name;
+    cursor.skip(found.tokens);
+  };
   for (;;) {
     if (cursor.isMark('^') || cursor.isMark('_')) {
+      const found = partAt(cursor, 0);
+      if (found !== undefined && !looksLikeIndices(found.name)) {
+        takePart(found);
+        continue;
+      }
       if (cursor.isMark('^') && isPowerAt(cursor, 0)) {
-        if (!SLOT_COUNTS[head].includes(0) || slots.length > 0) refusePower(cursor, head, begun);
+        if (!takesNoIndices(head) || slots.length > 0) refusePower(cursor, head, begun);
         if (powerThenIndices(cursor)) refuseIndicesAfterPower(cursor, begun);
         break;
       }
       parseGroup(cursor, slots, begun);
     } else if (cursor.isMark('{') && cursor.isMark('}', 1)) {
+      // In `T_a {}^{(axial)}T_{bcd}` the part belongs to the tensor behind it.
+      const ahead = partAt(cursor, 2);
+      if (ahead !== undefined && (slots.length > 0 || isHeadAt(cursor, 2 + ahead.tokens, vocabulary))) break;
       cursor.skip(2);
     } else if (cursor.isMark('{') && (cursor.isMark('^', 1) || cursor.isMark('_', 1))) {
       // T{^a}{_{bc}}: braces around each group of indices, as some styles write it.
@@ -54,9 +76,12 @@ export function parseTensor(cursor: Cursor, head: TensorHead, begun: Begun): Exp
   }
   const span = { start: begun.start, end: Math.max(begun.end, cursor.lastEnd) };
   // In `{R^a}_{bcd}` the rest of the indices stands behind the brace.
-  if (!cursor.isMark('}') || !indicesFollow(cursor, 1)) checkCount(cursor, head, slots, span);
-  return { kind: 'tensor', head, slots, ...span };
+  const node: TensorNode = { kind: 'tensor', head, ...(part === undefined ? {} : { part }), slots, ...span };
+  if (!cursor.isMark('}') || !indicesFollow(cursor, 1)) checkCount(cursor, vocabulary, node);
+  return node;
 }
+
+const takesNoIndices = (head: string): boolean => isBuiltIn(head) && SLOT_COUNTS[head].includes(0);
 
 /** What the head is, for a hint. */
 const FORMS: Readonly<Record<TensorHead, string>> = {
@@ -68,14 +93,17 @@ const FORMS: Readonly<Record<TensorHead, string>> = {
   delta: 'as in \\delta^a_b',
 };
 
-function checkCount(cursor: Cursor, head: TensorHead, slots: readonly SlotNode[], span: Span): void {
-  const allowed = SLOT_COUNTS[head];
+function checkCount(cursor: Cursor, vocabulary: Vocabulary, { head, part, slots, ...span }: TensorNode): void {
+  const parts = part === undefined ? undefined : partsOf(head);
+  const declared = vocabulary.declared?.get(head)?.slots ?? 0;
+  const allowed = parts !== undefined ? [parts.slots] : isBuiltIn(head) ? SLOT_COUNTS[head] : [declared];
   const count = slots.length;
-  const name = shownHead(head);
   if (!allowed.includes(count)) {
     const has = count === 0 ? 'no indices here' : count === 1 ? '1 index' : `${count} indices`;
     const list = allowed.length === 3 ? '0, 2 or 4' : allowed.join(' or ');
-    cursor.report('index-count', span, `${cursor.typed(span)} has ${has}, ${name} has ${list}`, FORMS[head]);
+    const name = parts === undefined ? typedHead(head) : `a part of ${head}`;
+    const hint = isBuiltIn(head) ? FORMS[head] : `it is declared with ${declared} under tensors`;
+    cursor.report('index-count', span, `${cursor.typed(span)} has ${has}, ${name} has ${list}`, hint);
   } else if (head === 'delta' && slots[0]!.up === slots[1]!.up) {
     const message = '\\delta has one index up and one down';
     cursor.report('delta-heights', span, message, 'write \\eta for two indices at one height');
@@ -101,12 +129,12 @@ function refuseIndicesAfterPower(cursor: Cursor, begun: Begun): never {
   );
 }
 
-function refusePower(cursor: Cursor, head: TensorHead, begun: Begun): never {
+function refusePower(cursor: Cursor, head: string, begun: Begun): never {
   const typed = cursor.typed({ start: begun.start, end: cursor.lastEnd });
   const number = cursor.peek(1).kind === 'integer' ? cursor.peek(1) : cursor.peek(2);
   const span = { start: begun.start, end: number.end };
   if (cursor.lastEnd === begun.end && begun.slots.length === 0) {
-    const message = `an index of ${shownHead(head)} is a number`;
+    const message = `an index of ${typedHead(head)} is a number`;
     return cursor.fail(
       'index-digit',
       { start: number.start, end: number.end },
@@ -126,19 +154,20 @@ function refusePower(cursor: Cursor, head: TensorHead, begun: Begun): never {
 function parseGroup(cursor: Cursor, slots: SlotNode[], begun: Begun): void {
   const sign = cursor.next();
   const up = sign.text === '^';
+  const sigil = cursor.accept('?') ? '?' : '';
   const { token } = cursor;
   if (token.kind === 'word') {
     if (token.text.length > 1) refuseWord(cursor, { start: begun.start, end: sign.end }, token);
     cursor.next();
-    slots.push({ name: token.text, up, start: token.start, end: token.end });
+    slots.push({ name: sigil + token.text, up, start: token.start, end: token.end });
     return;
   }
   if (token.kind === 'macro' && isGreek(token.text)) {
     cursor.next();
-    slots.push({ name: `\\${token.text}`, up, start: token.start, end: token.end });
+    slots.push({ name: `${sigil}\\${token.text}`, up, start: token.start, end: token.end });
     return;
   }
-  if (!cursor.isMark('{')) {
+  if (!cursor.isMark('{') || sigil !== '') {
     if (token.kind === 'integer') refuseDigit(cursor, token);
     const at = token.kind === 'end' ? sign : token;
     cursor.fail('missing-index', at, `${sign.text} lacks its index`, 'an index is a Latin letter or a Greek macro');
@@ -159,17 +188,20 @@ function refuseWord(cursor: Cursor, begun: Span, token: Token): never {
 }
 
 function pushIndices(cursor: Cursor, opening: Token, up: boolean, slots: SlotNode[]): void {
+  const sigil = cursor.accept('?') ? '?' : '';
   const token = cursor.next();
   if (token.kind === 'word') {
     const digit = token.text.search(/[0-9]/);
     if (digit !== -1) refuseDigit(cursor, { ...token, start: token.start + digit, end: token.start + digit + 1 });
     for (let i = 0; i < token.text.length; i++) {
-      slots.push({ name: token.text[i]!, up, start: token.start + i, end: token.start + i + 1 });
+      // In {?ab} the sigil belongs to the first letter.
+      const name = (i === 0 ? sigil : '') + token.text[i]!;
+      slots.push({ name, up, start: token.start + i, end: token.start + i + 1 });
     }
     return;
   }
   if (token.kind === 'macro' && isGreek(token.text)) {
-    slots.push({ name: `\\${token.text}`, up, start: token.start, end: token.end });
+    slots.push({ name: `${sigil}\\${token.text}`, up, start: token.start, end: token.end });
     return;
   }
   if (token.kind === 'end') cursor.fail('unbalanced-bracket', opening, '{ is never closed', 'add the closing }');

@@ -22,15 +22,38 @@ export interface IndexSlot {
   readonly up: boolean;
 }
 
-/** Tensor heads that a Lagrangian may use, with their numbers of slots in docs/notation.md. */
+/** Tensor heads that every Lagrangian may use, with their numbers of slots in docs/notation.md. */
 export type TensorHead = 'R' | 'T' | 'A' | 'epsilon' | 'eta' | 'delta';
 
 export interface TensorFactor {
-  readonly head: TensorHead;
+  /** A `TensorHead`, or the name of a declared tensor. */
+  readonly head: string;
+  /** An irreducible part, one of `PARTS` (parts.ts); absent for the whole tensor. */
+  readonly part?: string;
   readonly slots: readonly IndexSlot[];
 }
 
-/** One monomial of the Lagrangian: every index occurs exactly twice, once up and once down. */
+/** A signed permutation of slots under which a tensor is unchanged: S(i) = sign · S(j) with j[n] = i[places[n]]. */
+export interface SlotSymmetry {
+  readonly places: readonly number[];
+  readonly sign: 1 | -1;
+}
+
+/** A tensor of the user. Only its symmetry is known; no geometry gives it components. */
+export interface DeclaredTensor {
+  readonly name: string;
+  /** Number of indices, at least 1. */
+  readonly slots: number;
+  /** They generate the symmetry group, which never makes the tensor vanish; without the identity. */
+  readonly generators: readonly SlotSymmetry[];
+  readonly latex: string;
+  /** Mass dimension. */
+  readonly dimension: number;
+  /** Where it is declared. */
+  readonly origin?: Origin;
+}
+
+/** One monomial: every index occurs twice, once up and once down, or once where an expression may have free indices. */
 export interface LagrangianTerm {
   readonly scalar: ScalarTerm;
   readonly factors: readonly TensorFactor[];
@@ -85,6 +108,8 @@ export interface Theory {
   readonly signature: '-+++' | '+---';
   /** In order of declaration: constants, then scales, then vacuum symbols that were not declared. */
   readonly symbols: readonly TheorySymbol[];
+  /** In order of declaration. */
+  readonly tensors: readonly DeclaredTensor[];
   readonly lagrangian: readonly LagrangianTerm[];
   /** In order: those of the file, then those of --set. */
   readonly relations: readonly Relation[];

@@ -64,8 +64,11 @@ function greekCharacter(c: string): string | undefined {
   return Object.hasOwn(GREEK_CAPITALS, c) ? GREEK_CAPITALS[c] : undefined;
 }
 
-/** The tokens of a passage, the last one of kind `end`; faults are added to `problems`. */
-export function tokenize(passage: Passage, problems: Diagnostic[]): readonly Token[] {
+/**
+ * The tokens of a passage, the last one of kind `end`; faults are added to `problems`.
+ * @param patterns whether `?` is a mark: the sigil of a pattern variable.
+ */
+export function tokenize(passage: Passage, problems: Diagnostic[], patterns = false): readonly Token[] {
   const { text } = passage;
   const tokens: Token[] = [];
   const length = text.length;
@@ -107,7 +110,7 @@ export function tokenize(passage: Passage, problems: Diagnostic[]): readonly Tok
       const greek = greekCharacter(character);
       if (SUPERSCRIPTS.includes(character)) i = superscript(text, start, push);
       else if (greek !== undefined) push('macro', greek, start, i);
-      else if (MARKS.includes(character)) push('mark', character, start, i);
+      else if (MARKS.includes(character) || (patterns && character === '?')) push('mark', character, start, i);
       else if (Object.hasOwn(SIGNS, character)) push('mark', SIGNS[character]!, start, i);
       else fault('unexpected-character', start, i, `unexpected character ${show(character)}`, characterHint(character));
     }

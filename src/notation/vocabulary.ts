@@ -6,12 +6,16 @@ import type { Cursor } from './cursor.js';
 import { MAX_NAME } from './limits.js';
 import { nearest, splitWord } from './suggest.js';
 import type { Span } from './syntax.js';
-import type { TensorHead } from './theory.js';
+import type { DeclaredTensor, TensorHead } from './theory.js';
 import { clip } from './tokens.js';
 
 export interface Vocabulary {
   /** Whether R, T, A, \epsilon, \eta, \delta are tensors (else they are names like others). */
   readonly tensors: boolean;
+  /** Tensors of the user, by name. */
+  readonly declared?: ReadonlyMap<string, DeclaredTensor> | undefined;
+  /** Whether `?a` is an index, standing for any index of a pattern. */
+  readonly patterns?: boolean;
   /** Whether D(q,n) is the n-th time derivative of q. */
   readonly jets: boolean;
   readonly isSymbol: (name: string) => boolean;
@@ -61,7 +65,8 @@ const WORD_HEADS: ReadonlyMap<string, TensorHead> = new Map([
   ['T', 'T'],
   ['A', 'A'],
 ]);
-const MACRO_HEADS: ReadonlyMap<string, TensorHead> = new Map([
+/** Macros that are tensors of their own, whose names a declared tensor cannot have. */
+export const MACRO_HEADS: ReadonlyMap<string, TensorHead> = new Map([
   ['epsilon', 'epsilon'],
   ['varepsilon', 'epsilon'],
   ['eta', 'eta'],
@@ -76,10 +81,18 @@ export function isPowerAt(cursor: Cursor, ahead: number): boolean {
   return cursor.peek(n).kind === 'integer';
 }
 
+/** Whether the token `ahead` places further on is the name of a tensor, whatever follows it. */
+export function isHeadAt(cursor: Cursor, ahead: number, vocabulary: Vocabulary): boolean {
+  const { kind, text } = cursor.peek(ahead);
+  if (kind !== 'word' && kind !== 'macro') return false;
+  return (kind === 'macro' ? MACRO_HEADS : WORD_HEADS).has(text) || vocabulary.declared?.has(text) === true;
+}
+
 /** The tensor head at the cursor, if the word there is one and no declared name is meant. */
-export function headAt(cursor: Cursor, name: JoinedName, vocabulary: Vocabulary): TensorHead | undefined {
+export function headAt(cursor: Cursor, name: JoinedName, vocabulary: Vocabulary): string | undefined {
   const { kind, text } = cursor.token;
-  const head = (kind === 'macro' ? MACRO_HEADS : WORD_HEADS).get(text);
+  if (!vocabulary.tensors) return undefined;
+  const head = (kind === 'macro' ? MACRO_HEADS : WORD_HEADS).get(text) ?? vocabulary.declared?.get(text)?.name;
   if (head === undefined) return undefined;
   const subscripted = name.tokens > 1;
   if (subscripted) return /[0-9]/.test(name.text) && vocabulary.isSymbol(name.text) ? undefined : head;
@@ -112,7 +125,8 @@ export function reportUnknown(cursor: Cursor, vocabulary: Vocabulary, name: Join
   if (apart !== undefined) {
     report('unknown-symbol', `unknown symbol ${clip(name.text)}`, `did you mean ${apart}?`);
   } else if (indexed || subscript !== null) {
-    report('unknown-tensor', `${typed} is not a tensor of this notation`, tensorHint(subscript?.[1] ?? typed));
+    const hint = tensorHint(subscript?.[1] ?? typed, vocabulary);
+    report('unknown-tensor', `${typed} is not a tensor of this notation`, hint);
   } else if (reason !== undefined) {
     report('reserved-name', reason, 'choose another name');
   } else {
@@ -123,19 +137,22 @@ export function reportUnknown(cursor: Cursor, vocabulary: Vocabulary, name: Join
   }
 }
 
-function tensorHint(base: string): string {
+function tensorHint(base: string, vocabulary: Vocabulary): string {
   if (base === 'g') return 'indices are frame indices: write \\eta_{ab}';
   if (base === 'epsilon' || base === 'eta' || base === 'delta') return `write \\${base}`;
-  return 'the tensors are R, T, A, \\epsilon, \\eta and \\delta';
+  const declared = [...(vocabulary.declared?.keys() ?? [])];
+  const more = declared.length === 0 ? '' : `; declared are ${clip(declared.join(', '))}`;
+  return `the tensors are R, T, A, \\epsilon, \\eta and \\delta${more}; others are declared under tensors`;
 }
 
 /** `c0M` as `c0 M`, `b1T_{abc}` as `b1 T_{abc}`: known words that lack a space. */
 function runTogether(typed: string, vocabulary: Vocabulary): string | undefined {
-  const known = (piece: string): boolean => vocabulary.isSymbol(piece) || (vocabulary.tensors && WORD_HEADS.has(piece));
+  const isHead = (piece: string): boolean => WORD_HEADS.has(piece) || vocabulary.declared?.has(piece) === true;
+  const known = (piece: string): boolean => vocabulary.isSymbol(piece) || (vocabulary.tensors && isHead(piece));
   const words = splitWord(typed, known);
   if (words !== undefined || !vocabulary.tensors) return words;
   for (let i = Math.min(typed.length, MAX_NAME) - 1; i > 0; i--) {
-    if (!WORD_HEADS.has(typed[i]!) || typed[i + 1] !== '_') continue;
+    if (!isHead(typed[i]!) || typed[i + 1] !== '_') continue;
     const before = typed.slice(0, i);
     const apart = vocabulary.isSymbol(before) ? before : splitWord(before, known);
     if (apart !== undefined) return `${apart} ${typed.slice(i)}`;

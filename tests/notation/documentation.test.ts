@@ -57,7 +57,8 @@ describe('docs/notation.md', () => {
       'absolute value of an exponent, order of a jet': limits.MAX_EXPONENT,
       'tensors in a product': limits.MAX_FACTORS,
       'terms after multiplying out': limits.MAX_TERMS,
-      'constants and scales': limits.MAX_SYMBOLS,
+      'indices of a declared tensor': limits.MAX_SLOTS,
+      'constants, scales and tensors': limits.MAX_SYMBOLS,
       'characters of a name': limits.MAX_NAME,
       'errors shown': limits.MAX_DIAGNOSTICS,
     });

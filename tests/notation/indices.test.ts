@@ -45,7 +45,7 @@ describe("Einstein's rule", () => {
   it('summands of a bracket that differ', () => {
     expect(lagrangianErrors('R^{ab} (R_{ab} + T_a A_c)')).toBe(
       [
-        'L:1:18: error: the summands of one bracket differ in their free indices: _a _c here, _a _b in the first',
+        'L:1:18: error: the summands differ in their free indices: _a _c here, _a _b in the first',
         '    R^{ab} (R_{ab} + T_a A_c)',
         '                     ^^^^^^^',
         'hint: every summand must carry the same free indices at the same heights',

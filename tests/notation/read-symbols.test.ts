@@ -58,7 +58,7 @@ describe('constants and scales', () => {
     ['constants: [[c0]]', 'a constant must be a text but is a list'],
     ['constants: [M]\nscales: { M: mass }', 'M is declared twice'],
     ['constants: [__proto__]', '"__proto__" is not a name'],
-    [`constants: [${Array.from({ length: 402 }, (_, i) => `c${i}`)}]`, 'more than 400 constants and scales'],
+    [`constants: [${Array.from({ length: 402 }, (_, i) => `c${i}`)}]`, 'more than 400 constants, scales and tensors'],
     ['symbols: { zz: q }', 'symbols renames zz, which is not declared'],
     ["constants: [c0]\nsymbols: { c0: '\\def' }", '\\def is not allowed in a LaTeX name'],
     ['constants: [c0]\nsymbols: { c0: [x] }', 'the LaTeX of c0 must be a text but is a list'],

@@ -37,6 +37,7 @@ describe('readTheory', () => {
       slug: 'test',
       signature: '-+++',
       symbols: [],
+      tensors: [],
       lagrangian: [
         {
           scalar: { coefficient: rational(1), powers: [] },

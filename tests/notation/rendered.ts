@@ -3,7 +3,7 @@ import { InputError, renderDiagnostic } from '../../src/notation/diagnostics.js'
 import { readLagrangian } from '../../src/notation/lagrangian.js';
 import { plainPassage } from '../../src/notation/passage.js';
 import { readTheory } from '../../src/notation/read-theory.js';
-import type { LagrangianTerm, TheorySymbol } from '../../src/notation/theory.js';
+import type { DeclaredTensor, LagrangianTerm, TheorySymbol } from '../../src/notation/theory.js';
 
 /** All errors of a failing call as the command line prints them; throws when the call succeeds. */
 export function errorText(call: () => unknown): string {
@@ -40,8 +40,11 @@ export const SYMBOLS: readonly TheorySymbol[] = [
   symbol('M', 'scale', 1),
 ];
 
-export const terms = (text: string, symbols = SYMBOLS): readonly LagrangianTerm[] =>
-  readLagrangian(plainPassage(text, 'L'), symbols).terms;
+export const terms = (
+  text: string,
+  symbols = SYMBOLS,
+  tensors: readonly DeclaredTensor[] = [],
+): readonly LagrangianTerm[] => readLagrangian(plainPassage(text, 'L'), symbols, tensors).terms;
 
 export const lagrangianErrors = (text: string): string => errorText(() => terms(text));
 
