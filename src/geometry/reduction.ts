@@ -2,9 +2,10 @@
  * Reduction: the value of a product of tensors on a geometry, first in its component symbols, then as a density in
  * jets of the fields. Values are remembered per geometry, so that a survey over couplings contracts each product once.
  */
-import { collect, involves, substitute } from '../algebra/collect.js';
+import { collect, involves, moveTo, substitute } from '../algebra/collect.js';
 import { remember } from '../algebra/memo.js';
 import { multiply, type Poly } from '../algebra/poly.js';
+import type { Ring } from '../algebra/ring.js';
 import type { TensorFactor } from '../notation/theory.js';
 import { dummyFreeKey, type InvariantEvaluator, makeEvaluator } from '../tensor/invariants.js';
 import type { Geometry } from './geometry.js';
@@ -26,6 +27,8 @@ interface Memory {
   readonly evaluator: InvariantEvaluator;
   readonly images: ReadonlyMap<string, Poly>;
   readonly densities: Map<string, Poly>;
+  /** The same in rings of theories. */
+  readonly moved: WeakMap<Ring, Map<string, Poly>>;
 }
 
 const memories = new WeakMap<Geometry, Memory>();
@@ -37,6 +40,7 @@ function memoryOf(geometry: Geometry): Memory {
       evaluator: makeEvaluator(geometry.tensors),
       images: new Map(geometry.components.map((c) => [c.name, c.value])),
       densities: new Map(),
+      moved: new WeakMap(),
     };
     memories.set(geometry, memory);
   }
@@ -64,13 +68,14 @@ function expandedSize(value: Poly, images: ReadonlyMap<string, Poly>): number {
 }
 
 /**
- * The product of the factors times the determinant of the coframe, in `geometry.ring`.
+ * The product of the factors times the determinant of the coframe, in `geometry.ring` or another ring with its symbols.
  * @throws ReductionLimitError, ContractionLimitError beyond the stated sizes; Error when an odd power of a radical
  * survives, which a geometry with the claimed symmetry cannot give.
  */
-export function density(geometry: Geometry, factors: readonly TensorFactor[]): Poly {
+export function density(geometry: Geometry, factors: readonly TensorFactor[], ring: Ring = geometry.ring): Poly {
   const memory = memoryOf(geometry);
-  return remember(memory.densities, dummyFreeKey(factors), () => {
+  const key = dummyFreeKey(factors);
+  const value = remember(memory.densities, key, () => {
     const symbolic = memory.evaluator.value(factors);
     if (expandedSize(symbolic, memory.images) > MAX_EXPANSION) throw new ReductionLimitError(MAX_EXPANSION);
     const value = substitute(symbolic, memory.images, geometry.ring);
@@ -79,4 +84,11 @@ export function density(geometry: Geometry, factors: readonly TensorFactor[]): P
         throw new Error(`an odd power of ${g.name} survives in a scalar of the geometry ${geometry.id}`);
     return multiply(geometry.volume, value);
   });
+  if (ring === geometry.ring) return value;
+  let moved = memory.moved.get(ring);
+  if (!moved) {
+    moved = new Map();
+    memory.moved.set(ring, moved);
+  }
+  return remember(moved, key, () => moveTo(value, ring));
 }

@@ -1,27 +1,30 @@
 /** What a background can see of the couplings, and the conditions under which the spatial curvature drops out. */
-import { collect, involves } from '../algebra/collect.js';
+import { collect, involves, partition } from '../algebra/collect.js';
 import { compareSimplicity, independent, primitive } from '../algebra/linear.js';
-import { monomial, multiply, type Poly } from '../algebra/poly.js';
+import { remember } from '../algebra/memo.js';
+import { equals, monomial, multiply, type Poly } from '../algebra/poly.js';
 import { rational } from '../algebra/rational.js';
-import { exponentAt } from '../algebra/ring.js';
+import { exponentAt, positionOf } from '../algebra/ring.js';
 
 /** Coefficients of the monomials in fields and geometric parameters, each once, simplest first, linearly independent. */
-export function couplingCombinations(
-  reduced: Poly,
-  parameters: readonly string[],
-  scales: readonly string[],
-  keep: (monomialHas: (name: string) => boolean) => boolean = () => true,
-): Poly[] {
+export function couplingCombinations(reduced: Poly, parameters: readonly string[], scales: readonly string[]): Poly[] {
   const { ring } = reduced;
   const groups = collect(reduced, (g) => {
     const generator = ring.generators[g]!;
     return generator.kind === 'jet' || generator.kind === 'source' || parameters.includes(generator.name);
   });
-  const chosen = groups
-    .filter(({ monomial: powers }) => keep((name) => powers.some(([g]) => ring.generators[g]!.name === name)))
-    .map(({ coefficient }) => primitive(withoutScales(coefficient, scales)))
-    .sort(compareSimplicity);
-  return independent(chosen);
+  const chosen = groups.map(({ coefficient }) => primitive(withoutScales(coefficient, scales)));
+  return independent(distinct(chosen).sort(compareSimplicity));
+}
+
+/** Each polynomial once: many monomials have the same coefficient, and sorting is what costs. */
+function distinct(polys: readonly Poly[]): Poly[] {
+  const bySize = new Map<number, Poly[]>();
+  for (const p of polys) {
+    const known = remember(bySize, p.size, () => []);
+    if (!known.some((q) => equals(p, q))) known.push(p);
+  }
+  return [...bySize.values()].flat();
 }
 
 /** Divides by the largest monomial in the scales that divides every term, since a common scale is no coupling. */
@@ -47,4 +50,8 @@ export const screeningConditions = (
   parameter: string,
   parameters: readonly string[],
   scales: readonly string[],
-): Poly[] => couplingCombinations(reduced, parameters, scales, (has) => has(parameter));
+): Poly[] => {
+  const place = positionOf(reduced.ring, parameter);
+  const [dependent] = partition(reduced, (exponent) => exponent(place) !== 0);
+  return couplingCombinations(dependent, parameters, scales);
+};

@@ -4,7 +4,7 @@
  * form on the metric geometry and compared equation by equation.
  */
 import { eulerLagrange, partial } from '../algebra/calculus.js';
-import { coefficientOf, partition, substitute } from '../algebra/collect.js';
+import { coefficientOf, collect, monomialOf, substitute } from '../algebra/collect.js';
 import {
   constant,
   equals,
@@ -18,9 +18,10 @@ import {
   scale,
   subtract,
   sum,
+  zero,
 } from '../algebra/poly.js';
 import { rational } from '../algebra/rational.js';
-import { jetName, type Ring } from '../algebra/ring.js';
+import { jetName, positionOf, type Ring } from '../algebra/ring.js';
 import { dropTotalDerivatives } from '../mechanics/total-derivatives.js';
 
 /** Names and values that the construction needs from the geometry, in the ring of the Lagrangian. */
@@ -52,69 +53,89 @@ export type BiScalarOutcome =
 export const pairsOf = (scalars: readonly string[]): [string, string][] =>
   scalars.flatMap((a, i) => scalars.slice(i).map((b): [string, string] => [a, b]));
 
+/** A gravitational Lagrangian with lapse, matter left out, and what is already known of it. */
+export interface Gravity {
+  /** Its representative up to total derivatives, fields in the order scale factor, then scalars. */
+  readonly reduced: Poly;
+  /** Its Euler–Lagrange expressions by field. */
+  readonly equations: ReadonlyMap<string, Poly>;
+}
+
 /**
- * Finds the form of a gravitational Lagrangian (with lapse, matter left out), or says which terms have none in this class.
+ * Finds the form of a gravitational Lagrangian, or says which terms have none in this class.
  * @throws Error when the equations of the form differ from those of the theory: the program would be wrong.
  */
-export function biScalarForm(gravity: Poly, roles: BiScalarRoles): BiScalarOutcome {
-  const { ring } = gravity;
-  const flat = coefficientOf(gravity, roles.curvature, 0);
+export function biScalarForm(gravity: Gravity, roles: BiScalarRoles): BiScalarOutcome {
+  const { ring } = gravity.reduced;
   const { lapse, scale: a, scalars } = roles;
-  const { reduced } = dropTotalDerivatives(flat, [a, ...scalars], lapse);
+  // Dropping total derivatives goes term by term, so that it commutes with setting k = 0.
+  const reduced = coefficientOf(gravity.reduced, roles.curvature, 0);
   const perVolume = multiply(atUnitLapse(reduced, lapse), generator(ring, a, -3));
-  const velocities = [a, ...scalars].map((q) => ring.position.get(jetName(q, 1))!);
-  const scalePlace = ring.position.get(a)!;
-  const degree = (e: (g: number) => number): number => velocities.reduce((n, g) => n + e(g), 0);
-  // Without curvature a is only a unit of length: it must occur as ȧ/a.
-  const [fits, tooMuch] = partition(perVolume, (e) => {
-    const d = degree(e);
-    return d >= 0 && d <= 2 && velocities.every((g) => e(g) >= 0) && e(scalePlace) === -e(velocities[0]!);
-  });
-  if (!isZero(tooMuch))
+  const { coefficient, rest } = quadraticForm(perVolume, a, scalars);
+  if (!isZero(rest))
     return {
       found: false,
       reason: 'terms of more than second degree in the velocities have no counterpart in this class',
-      offending: tooMuch,
+      offending: rest,
     };
-  const rate = (p: Poly, n: number): Poly => multiply(coefficientOf(p, jetName(a, 1), n), generator(ring, a, n));
-  const quadratic = (p: Poly, q: string, n: number): Poly => coefficientOf(p, jetName(q, 1), n);
-  const still = (p: Poly): Poly => scalars.reduce((s, q) => quadratic(s, q, 0), p);
-
-  const inverse = still(rate(fits, 2));
-  const mixed = new Map(
-    scalars.map((q) => [q, still(scalars.reduce((s, r) => (r === q ? quadratic(s, r, 1) : s), rate(fits, 1)))]),
-  );
+  const inverse = coefficient(a, a);
   const wrong = scalars
-    .map((q) => ({ q, rest: subtract(mixed.get(q)!, partial(inverse, q)) }))
-    .filter(({ rest }) => !isZero(rest));
+    .map((q) => ({ q, excess: subtract(coefficient(a, q), partial(inverse, q)) }))
+    .filter(({ excess }) => !isZero(excess));
   if (wrong.length > 0)
     return {
       found: false,
       reason: 'the coefficient of H times a velocity must be the derivative of the coefficient of H² and is not',
       offending: sum(
         ring,
-        wrong.map(({ q, rest }) =>
-          product(ring, [rest, generator(ring, jetName(q, 1)), generator(ring, jetName(a, 1)), generator(ring, a, -1)]),
+        wrong.map(({ q, excess }) =>
+          product(ring, [
+            excess,
+            generator(ring, jetName(q, 1)),
+            generator(ring, jetName(a, 1)),
+            generator(ring, a, -1),
+          ]),
         ),
       ),
     };
-  const slow = rate(fits, 0);
-  const others = (pair: readonly string[]): readonly string[] => scalars.filter((q) => !pair.includes(q));
-  const without = (p: Poly, pair: readonly string[]): Poly => others(pair).reduce((s, q) => quadratic(s, q, 0), p);
-  const kinetic = new Map(
-    pairsOf(scalars).map(([x, y]) => {
-      const part = x === y ? quadratic(slow, x, 2) : quadratic(quadratic(slow, x, 1), y, 1);
-      return [`${x},${y}`, scale(without(part, [x, y]), 2)];
-    }),
-  );
-  const current = new Map(scalars.map((q) => [q, without(quadratic(slow, q, 1), [q])]));
   const functions: BiScalarFunctions = {
     g4: scale(inverse, rational(-1, 6)),
-    kinetic,
-    current,
-    potential: negate(still(slow)),
+    kinetic: new Map(pairsOf(scalars).map(([x, y]) => [`${x},${y}`, scale(coefficient(x, y), 2)])),
+    current: new Map(scalars.map((q) => [q, coefficient(q)])),
+    potential: negate(coefficient()),
   };
   return { found: true, functions, obstruction: verified(gravity, functions, roles) };
+}
+
+interface QuadraticForm {
+  /** What multiplies the product of the rates of the given fields: Ȧ of a scalar, H = ȧ/a of the scale factor. */
+  readonly coefficient: (...fields: readonly string[]) => Poly;
+  /** Terms that are no polynomial of second degree in the rates. */
+  readonly rest: Poly;
+}
+
+/** A Lagrangian at lapse 1 per volume as a polynomial in the rates of the scale factor and of the scalars. */
+function quadraticForm(perVolume: Poly, a: string, scalars: readonly string[]): QuadraticForm {
+  const { ring } = perVolume;
+  const fields = [a, ...scalars];
+  const velocities = fields.map((q) => positionOf(ring, jetName(q, 1)));
+  const scalePlace = positionOf(ring, a);
+  const parts = new Map<string, Poly>();
+  const rest: Poly[] = [];
+  for (const { monomial: powers, coefficient } of collect(
+    perVolume,
+    (g) => g === scalePlace || velocities.includes(g),
+  )) {
+    const exponent = new Map(powers);
+    const degrees = velocities.map((g) => exponent.get(g) ?? 0);
+    // Without curvature a is only a unit of length: it must occur as ȧ/a.
+    const isRate = (exponent.get(scalePlace) ?? 0) === -degrees[0]!;
+    if (isRate && degrees.every((d) => d >= 0) && degrees.reduce((n, d) => n + d, 0) <= 2)
+      parts.set(degrees.join(), coefficient);
+    else rest.push(multiply(monomialOf(ring, powers), coefficient));
+  }
+  const degreesOf = (of: readonly string[]): string => fields.map((q) => of.filter((r) => r === q).length).join();
+  return { coefficient: (...of) => parts.get(degreesOf(of)) ?? zero(ring), rest: sum(ring, rest) };
 }
 
 /** N = 1 and its derivatives 0. Sound after variation, and for reading off functions of a reparametrisation-invariant L. */
@@ -143,15 +164,16 @@ export function reducedForm(f: BiScalarFunctions, roles: BiScalarRoles, ring: Ri
 }
 
 /** Compares the equations at k = 0 and returns the obstruction at k ≠ 0. */
-function verified(gravity: Poly, f: BiScalarFunctions, roles: BiScalarRoles): Poly {
-  const { ring } = gravity;
+function verified({ reduced, equations }: Gravity, f: BiScalarFunctions, roles: BiScalarRoles): Poly {
+  const { ring } = reduced;
   const { lapse, scale: a, scalars, curvature } = roles;
   const form = reducedForm(f, roles, ring);
   const flat = (p: Poly): Poly => coefficientOf(p, curvature, 0);
+  const flatForm = flat(form);
   for (const q of [lapse, a, ...scalars])
-    if (!equals(eulerLagrange(flat(gravity), q), eulerLagrange(flat(form), q)))
+    if (!equals(flat(equations.get(q)!), eulerLagrange(flatForm, q)))
       throw new Error(`the scalar-tensor form has another equation of ${q} than the torsion theory`);
-  const { reduced } = dropTotalDerivatives(subtract(gravity, form), [a, ...scalars], lapse);
-  if (!isZero(flat(reduced))) throw new Error('the scalar-tensor form differs from the torsion theory at k = 0');
-  return multiply(atUnitLapse(reduced, lapse), generator(ring, a, -3));
+  const obstruction = subtract(reduced, dropTotalDerivatives(form, [a, ...scalars], lapse).reduced);
+  if (!isZero(flat(obstruction))) throw new Error('the scalar-tensor form differs from the torsion theory at k = 0');
+  return multiply(atUnitLapse(obstruction, lapse), generator(ring, a, -3));
 }
