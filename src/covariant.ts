@@ -12,6 +12,7 @@ import { componentEvaluator, equationComponents, projected } from './geometry/co
 import type { Geometry } from './geometry/geometry.js';
 import { density } from './geometry/reduction.js';
 import { canonicalSum, type TensorSum } from './tensor/expression.js';
+import { inMetricTerms, metricKinds } from './tensor/metric-decomposition.js';
 import {
   type CovariantEquations,
   fieldEquations,
@@ -30,6 +31,8 @@ export interface CovariantTheory {
   readonly equations: CovariantEquations;
   /** The same with P and Q kept as symbols. */
   readonly withMomenta: CovariantEquations;
+  /** The Lagrangian in terms of the metric connection and torsion. */
+  readonly inMetricTerms: TensorSum;
   readonly checks: readonly Check[];
 }
 
@@ -44,15 +47,22 @@ export function covariantTheory(d: Derivation, onStep: (what: string) => void = 
   const equations = fieldEquations(lagrangian, momenta, kinds);
   const symbols = momentumSymbols(momenta, constant(d.ring, 1));
   const withMomenta = fieldEquations(lagrangian, symbols, kinds);
+  const metricTerms = inMetricTerms(lagrangian, metricKinds());
   const checks = geometryNames().flatMap((id): Check[] => {
     onStep(`comparing components on ${id}`);
     const geometry = loadGeometry(id, d.theory.signature);
-    const names = componentMismatches(d, geometry, equations);
-    if (names.length > 0) throw new Error(`the covariant equations differ from the reduced ones of ${names} on ${id}`);
+    const { fields, sameValue } = compare(d, geometry, equations, metricTerms);
+    if (fields.length > 0)
+      throw new Error(`the covariant equations differ from the reduced ones of ${fields} on ${id}`);
+    if (!sameValue) throw new Error(`the Lagrangian in metric terms has another value on ${id}`);
     const detail = `their components on the geometry ${id} equal the reduced Euler–Lagrange expressions`;
-    return [{ name: 'covariant field equations', holds: true, detail }];
+    const value = `on the geometry ${id} it has the value of the Lagrangian`;
+    return [
+      { name: 'covariant field equations', holds: true, detail },
+      { name: 'Lagrangian in terms of the metric connection', holds: true, detail: value },
+    ];
   });
-  return { lagrangian, momenta, equations, withMomenta, checks };
+  return { lagrangian, momenta, equations, withMomenta, inMetricTerms: metricTerms, checks };
 }
 
 /** Jets of a geometry and every constant of a derivation. */
@@ -62,8 +72,13 @@ function ringWith(geometry: Geometry, d: Derivation): Ring {
   return makeRing([...geometry.ring.generators, ...constantsOf(constants)]);
 }
 
-/** Fields whose reduced equation differs from the projection of the covariant ones. */
-function componentMismatches(d: Derivation, geometry: Geometry, equations: CovariantEquations): string[] {
+/** Fields whose reduced equation differs from the projection of the covariant ones; whether the metric form agrees. */
+function compare(
+  d: Derivation,
+  geometry: Geometry,
+  equations: CovariantEquations,
+  metricTerms: TensorSum,
+): { readonly fields: readonly string[]; readonly sameValue: boolean } {
   const ring = ringWith(geometry, d);
   const reduced: Poly = sum(
     ring,
@@ -71,8 +86,11 @@ function componentMismatches(d: Derivation, geometry: Geometry, equations: Covar
       multiply(moveTo(coefficient, ring), moveTo(density(geometry, factors), ring)),
     ),
   );
-  const components = equationComponents(equations, componentEvaluator(geometry, ring));
-  return [...projected(geometry, ring, components)]
-    .filter(([q, e]) => !equals(e, eulerLagrange(reduced, q)))
-    .map(([q]) => q);
+  const evaluator = componentEvaluator(geometry, ring);
+  const projections = projected(geometry, ring, equationComponents(equations, evaluator));
+  const value = evaluator.components(metricTerms, []).entries.get(0) ?? constant(ring, 0);
+  return {
+    fields: [...projections].filter(([q, e]) => !equals(e, eulerLagrange(reduced, q))).map(([q]) => q),
+    sameValue: equals(reduced, multiply(moveTo(geometry.volume, ring), value)),
+  };
 }

@@ -10,8 +10,10 @@ import type { Ring } from '../algebra/ring.js';
 import { packIndices, type SparseTensor, TensorBuilder, unpackIndices } from '../tensor/components.js';
 import { contractOpen, type FrameMetric, namesOf } from '../tensor/contraction.js';
 import type { TensorSum, TensorSymbol } from '../tensor/expression.js';
-import { makeEvaluator } from '../tensor/invariants.js';
+import { type InvariantEvaluator, makeEvaluator } from '../tensor/invariants.js';
+import { METRIC_CURVATURE, METRIC_NABLA_TORSION } from '../tensor/metric-decomposition.js';
 import { type CovariantEquations, differentiated, isNabla } from '../tensor/variation.js';
+import { type Connection, curvatureTensor, torsionFreeConnection } from './cartan.js';
 import { maskOf } from './forms.js';
 import type { Geometry } from './geometry.js';
 
@@ -22,8 +24,8 @@ export interface ComponentEvaluator {
 }
 
 /** Γ_abc: Lorentz pair ab lowered, form index c, in the frame. */
-function connectionTensor(geometry: Geometry, ring: Ring): SparseTensor {
-  const { frame, connection, tensors } = geometry;
+function connectionTensor(geometry: Geometry, connection: Connection, ring: Ring): SparseTensor {
+  const { frame, tensors } = geometry;
   const builder = new TensorBuilder(3);
   connection.forEach((row, a) => {
     row.forEach((form, b) => {
@@ -64,6 +66,24 @@ function covariantDerivative(
   return builder.build();
 }
 
+/** What belongs to the connection without torsion. */
+interface MetricPart {
+  readonly gamma: SparseTensor;
+  readonly evaluator: InvariantEvaluator;
+}
+
+function metricPartOf(geometry: Geometry, ring: Ring): MetricPart {
+  const { metric } = geometry.tensors;
+  const connection = torsionFreeConnection(geometry.frame, metric);
+  const own = curvatureTensor(geometry.frame, connection, metric);
+  const curvature = { rank: 4, entries: new Map([...own.entries].map(([n, p]) => [n, moveTo(p, ring)])) };
+  const torsion: SparseTensor = { rank: 3, entries: new Map() };
+  return {
+    gamma: connectionTensor(geometry, connection, ring),
+    evaluator: makeEvaluator({ ring, metric, torsion, curvature }),
+  };
+}
+
 /** @param ring contains the generators of `geometry.ring` and every coupling of the expressions. */
 export function componentEvaluator(geometry: Geometry, ring: Ring): ComponentEvaluator {
   const { tensors } = geometry;
@@ -75,16 +95,22 @@ export function componentEvaluator(geometry: Geometry, ring: Ring): ComponentEva
   });
   const values = { ring, metric, torsion: inJets(tensors.torsion), curvature: inJets(tensors.curvature) };
   const evaluator = makeEvaluator(values);
-  const gamma = connectionTensor(geometry, ring);
+  const gamma = connectionTensor(geometry, geometry.connection, ring);
   const timeFactor = moveTo(power(geometry.frame.coframe[0]!, -1), ring);
-  const derivatives = new Map<string, SparseTensor>();
-  const tensorOf = ({ head, slots }: TensorSymbol): SparseTensor => {
-    if (!isNabla(head)) return evaluator.tensor({ head, slots });
-    return remember(derivatives, `${head}/${slots.length}`, () => {
+  const made = new Map<string, SparseTensor>();
+  let metricMade: MetricPart | undefined;
+  const tensorOf = ({ head, slots }: TensorSymbol): SparseTensor =>
+    remember(made, `${head}/${slots.length}`, () => {
+      if (head === METRIC_CURVATURE || head === METRIC_NABLA_TORSION) metricMade ??= metricPartOf(geometry, ring);
+      if (head === METRIC_CURVATURE) return metricMade!.evaluator.tensor({ head: 'R', slots });
+      if (head === METRIC_NABLA_TORSION) {
+        const base = evaluator.tensor({ head: 'T', slots: slots.slice(1) });
+        return covariantDerivative(base, metricMade!.gamma, timeFactor, metric);
+      }
+      if (!isNabla(head)) return evaluator.tensor({ head, slots });
       const base = evaluator.tensor({ head: differentiated(head), slots: slots.slice(1) });
       return covariantDerivative(base, gamma, timeFactor, metric);
     });
-  };
   return {
     components(terms, free) {
       const builder = new TensorBuilder(free.length);

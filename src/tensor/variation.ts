@@ -51,7 +51,7 @@ export function variationKinds(): KindTable {
     makeKind(TORSION_MOMENTUM, 3, [exchange(3, 1, 2, -1)]),
     makeKind(CURVATURE_MOMENTUM, 4, [exchange(4, 0, 1, -1), exchange(4, 2, 3, -1)]),
   ];
-  const smooth = [...kindTable().values()].filter((k) => k.head === 'R' || k.head === 'T');
+  const smooth = [...kindTable().values()].filter((k) => k.part === undefined && (k.head === 'R' || k.head === 'T'));
   return kindTable([...momenta, ...[...smooth, ...momenta].map(nablaKind)]);
 }
 
