@@ -6,8 +6,9 @@
  * continuing at the factor that holds the other end of the lowest open dummy. A walk writes a sequence of numbers; the
  * smallest sequence is the form. Only walks that tie for the smallest prefix are kept, and walks that have reached the same
  * state are merged, so the work is (factors × arrangements of one factor) plus the ties, which are symmetries of the
- * product. Two equal walks with opposite signs mean that the product vanishes.
- * Bound: at most MAX_WALKS tied walks; beyond it the product is refused.
+ * product. Two equal walks with opposite signs mean that the product vanishes. Of dummies that may be exchanged because both
+ * of their tensors are (anti)symmetric in them only one order is walked.
+ * Bound: at most MAX_WALKS tied walks and MAX_PLACEMENTS tensors placed; beyond them the product is refused.
  */
 import type { SignedPermutation } from './symmetry.js';
 
@@ -38,11 +39,13 @@ export interface Canonical {
 }
 
 export const MAX_WALKS = 100_000;
+/** A few seconds. */
+export const MAX_PLACEMENTS = 5_000_000;
 
 /** Thrown when a product has too many symmetries for this method. */
 export class CanonicalLimitError extends RangeError {
   constructor() {
-    super(`a product of tensors has more than ${MAX_WALKS} equivalent arrangements`);
+    super('a product of tensors has too many equivalent arrangements');
   }
 }
 
@@ -79,7 +82,7 @@ function connectedParts(factors: readonly Factor[], ends: ReadonlyMap<number, re
 /**
  * The canonical form, or undefined when the product vanishes by its symmetries.
  * @param firstDummy number of the first dummy in the result; larger than every free line.
- * @throws CanonicalLimitError beyond MAX_WALKS.
+ * @throws CanonicalLimitError beyond MAX_WALKS or MAX_PLACEMENTS.
  */
 export function canonicalForm(factors: readonly Factor[], firstDummy: number): Canonical | undefined {
   const ends = endsOf(factors);
@@ -114,6 +117,46 @@ function compareCodes(a: readonly number[], b: readonly number[]): number {
   return a.length - b.length;
 }
 
+const signsOfGroups = new WeakMap<readonly SignedPermutation[], ReadonlyMap<string, 1 | -1>>();
+
+/** Sign with which the group exchanges two slots; undefined when it does not. */
+function exchangeSign({ group, slots }: Kind, i: number, j: number): 1 | -1 | undefined {
+  let signs = signsOfGroups.get(group);
+  if (!signs) {
+    signs = new Map(group.map((g) => [g.places.join(), g.sign]));
+    signsOfGroups.set(group, signs);
+  }
+  return signs.get(Array.from({ length: slots }, (_, s) => (s === i ? j : s === j ? i : s)).join());
+}
+
+/**
+ * Dummies between the same two factors whose exchange changes nothing: line → the next smaller one like it.
+ * Undefined when an exchange changes the sign, so that the product vanishes.
+ */
+function interchangeable(
+  factors: readonly Factor[],
+  group: readonly number[],
+  ends: ReadonlyMap<number, readonly number[]>,
+): ReadonlyMap<number, number> | undefined {
+  const before = new Map<number, number>();
+  const lines = [...new Set(group.flatMap((f) => factors[f]!.lines))].sort((a, b) => a - b);
+  const between = lines.filter((line) => ends.get(line)!.length === 2 && ends.get(line)![0] !== ends.get(line)![1]);
+  for (const [n, line] of between.entries())
+    for (let m = n - 1; m >= 0; m--) {
+      const other = between[m]!;
+      const [f, g] = ends.get(line)!;
+      if (ends.get(other)![0] !== f || ends.get(other)![1] !== g) continue;
+      const signs = [factors[f!]!, factors[g!]!].map(({ kind, lines: at }) =>
+        exchangeSign(kind, at.indexOf(line), at.indexOf(other)),
+      );
+      if (signs.includes(undefined)) continue;
+      if (signs[0] !== signs[1]) return undefined;
+      before.set(line, other);
+      break;
+    }
+  return before;
+}
+
 /** Walks one connected part; undefined when it vanishes. */
 function walkPart(
   factors: readonly Factor[],
@@ -121,9 +164,12 @@ function walkPart(
   ends: ReadonlyMap<number, readonly number[]>,
 ): { sign: 1 | -1; code: number[]; names: string; factors: readonly Factor[] } | undefined {
   const start: Walk = { placed: [], numbers: new Map(), arranged: [], sign: 1 };
+  const before = interchangeable(factors, group, ends);
+  if (!before) return undefined;
   const kinds = [...new Set(group.map((i) => factors[i]!.kind.name))].sort();
   const code: number[] = [];
   let walks: Walk[] = [start];
+  let placements = 0;
   for (let step = 0; step < group.length; step++) {
     let best: number[] | undefined;
     let kept = new Map<string, Walk>();
@@ -131,8 +177,12 @@ function walkPart(
       const candidates = step === 0 ? group : [nextFactor(walk, ends)];
       for (const f of candidates) {
         const rank = kinds.indexOf(factors[f]!.kind.name);
+        placements += factors[f]!.kind.group.length;
+        if (placements > MAX_PLACEMENTS) throw new CanonicalLimitError();
         for (const element of factors[f]!.kind.group) {
-          const { written, next } = place(walk, f, rank, factors[f]!, element, ends);
+          const placed = place(walk, f, rank, factors[f]!, element, ends, before);
+          if (!placed) continue;
+          const { written, next } = placed;
           const order = best === undefined ? -1 : compareCodes(written, best);
           if (order > 0) continue;
           if (order < 0) {
@@ -174,7 +224,10 @@ function nextFactor(walk: Walk, ends: ReadonlyMap<number, readonly number[]>): n
   return found;
 }
 
-/** Places a factor in one arrangement of its slots: what it writes, and the walk after it. */
+/**
+ * Places a factor in one arrangement of its slots: what it writes, and the walk after it. Undefined when interchangeable
+ * dummies would come in another order than their own.
+ */
 function place(
   walk: Walk,
   f: number,
@@ -182,7 +235,8 @@ function place(
   factor: Factor,
   element: SignedPermutation,
   ends: ReadonlyMap<number, readonly number[]>,
-): { written: number[]; next: Walk } {
+  before: ReadonlyMap<number, number>,
+): { written: number[]; next: Walk } | undefined {
   const numbers = new Map(walk.numbers);
   const lines = element.places.map((p) => factor.lines[p]!);
   const written = [rank];
@@ -194,6 +248,8 @@ function place(
     }
     let number = numbers.get(line);
     if (number === undefined) {
+      const first = before.get(line);
+      if (first !== undefined && !numbers.has(first)) return undefined;
       number = numbers.size + 1;
       numbers.set(line, number);
     }

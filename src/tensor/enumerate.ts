@@ -6,7 +6,7 @@
 import { constant } from '../algebra/poly.js';
 import type { Ring } from '../algebra/ring.js';
 import { canonicalForm, type Factor, type Kind } from './canonical.js';
-import { canonicalSum, factorsKey, type TensorSymbol } from './expression.js';
+import { canonicalSum, factorsKey, symbolOfKind, type TensorSymbol } from './expression.js';
 import type { KindTable, TensorKind } from './kinds.js';
 
 /** More partial contractions than this are refused. */
@@ -45,7 +45,7 @@ export function contractions(ring: Ring, tensors: readonly TensorKind[], kinds: 
   for (const factors of level.values()) {
     const symbols = factors.map(
       ({ kind, lines }): TensorSymbol => ({
-        head: (kind as TensorKind).head,
+        ...symbolOfKind(kind as TensorKind),
         slots: lines.map((line) => ({ name: `l${line}`, up: false })),
       }),
     );

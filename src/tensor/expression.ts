@@ -6,11 +6,13 @@
 import { add, isZero, negate, type Poly, scale } from '../algebra/poly.js';
 import type { IndexSlot } from '../notation/theory.js';
 import { canonicalForm, type Factor } from './canonical.js';
-import { type KindTable, kindName, plainKind, type TensorKind } from './kinds.js';
+import { type KindTable, kindOf, type TensorKind } from './kinds.js';
 
 /** A tensor with index slots; heads beyond the built-in ones are tensors of the user or of a derivation. */
 export interface TensorSymbol {
   readonly head: string;
+  /** An irreducible part; absent for the whole tensor. */
+  readonly part?: string;
   readonly slots: readonly IndexSlot[];
 }
 
@@ -24,8 +26,8 @@ export type TensorSum = readonly TensorTerm[];
 /** Dimension of space-time; the trace of the metric. */
 const DIMENSION = 4;
 
-const kindOf = (kinds: KindTable, { head, slots }: TensorSymbol): TensorKind =>
-  kinds.get(kindName(head, slots.length)) ?? plainKind(head, slots.length);
+const kindOfSymbol = (kinds: KindTable, { head, part, slots }: TensorSymbol): TensorKind =>
+  kindOf(kinds, head, slots.length, part);
 
 /** Canonical form of a sum. Free indices keep name and height. */
 export function canonicalSum(terms: readonly TensorTerm[], kinds: KindTable): TensorSum {
@@ -44,9 +46,18 @@ export function canonicalSum(terms: readonly TensorTerm[], kinds: KindTable): Te
     .map(([, t]) => t);
 }
 
+/** Head and part of a symbol of that kind. */
+export const symbolOfKind = ({ head, part }: TensorKind): Omit<TensorSymbol, 'slots'> =>
+  part === undefined ? { head } : { head, part };
+
 /** Text that is equal for equal canonical factors. */
 export const factorsKey = (factors: readonly TensorSymbol[]): string =>
-  factors.map(({ head, slots }) => `${head}(${slots.map((s) => `${s.up ? '^' : '_'}${s.name}`).join('')})`).join('');
+  factors
+    .map(({ head, part, slots }) => {
+      const indices = slots.map((s) => `${s.up ? '^' : '_'}${s.name}`).join('');
+      return `${head}${part === undefined ? '' : `[${part}]`}(${indices})`;
+    })
+    .join('');
 
 const occurrences = (factors: readonly TensorSymbol[], name: string): number =>
   factors.reduce((n, f) => n + f.slots.filter((s) => s.name === name).length, 0);
@@ -120,7 +131,7 @@ function traced(term: TensorTerm, kinds: KindTable): TensorTerm | undefined {
     const next: TensorSymbol[] = [];
     for (const f of factors) {
       const pair = selfPair(f.slots);
-      const trace = pair && kindOf(kinds, f).traces.find((t) => t.pair[0] === pair[0] && t.pair[1] === pair[1]);
+      const trace = pair && kindOfSymbol(kinds, f).traces.find((t) => t.pair[0] === pair[0] && t.pair[1] === pair[1]);
       if (!trace) {
         next.push(f);
         continue;
@@ -150,7 +161,7 @@ function canonicalTerm(given: TensorTerm, kinds: KindTable): { key: string; term
   const freeNames = [...free.keys()].sort();
   const lines = new Map(freeNames.map((name, i) => [name, i]));
   const factors: Factor[] = term.factors.map((f) => ({
-    kind: kindOf(kinds, f),
+    kind: kindOfSymbol(kinds, f),
     lines: f.slots.map((s) => {
       const known = lines.get(s.name);
       if (known !== undefined) return known;
@@ -164,7 +175,7 @@ function canonicalTerm(given: TensorTerm, kinds: KindTable): { key: string; term
   const seen = new Set<number>();
   const renamed = canonical.factors.map(
     (f): TensorSymbol => ({
-      head: (f.kind as TensorKind).head,
+      ...symbolOfKind(f.kind as TensorKind),
       slots: f.lines.map((line): IndexSlot => {
         if (line < freeNames.length) return free.get(freeNames[line]!)!;
         const up = seen.has(line);

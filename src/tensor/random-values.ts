@@ -1,20 +1,21 @@
 /**
- * Values of products of tensors on random components modulo a prime, in four dimensions: the instrument that finds and
- * tests linear relations. Deterministic for a seed. Dense on purpose: random components have no zeros to skip.
+ * Values of products of tensors on random components modulo a prime, in any dimension: the instrument that finds and tests
+ * linear relations. Deterministic for a seed. Dense on purpose: random components have no zeros to skip.
  */
 import { remember } from '../algebra/memo.js';
 import { multiplyMod } from '../algebra/modular.js';
 import type { TensorSymbol } from './expression.js';
-import { type KindTable, kindName, plainKind, type TensorKind } from './kinds.js';
+import { type KindTable, kindOf, type TensorKind } from './kinds.js';
 
-const SIZE = 4;
-/** η, whose sign pattern is immaterial for relations but must not be Euclidean. */
-const SIGNS = [-1, 1, 1, 1];
-
-/** Dense components, all indices down, first slot most significant. */
+/** Components by the packed value of their indices, all indices down, first slot most significant. */
 interface Dense {
   readonly rank: number;
   readonly values: Float64Array;
+}
+
+interface Placed {
+  readonly names: readonly string[];
+  readonly tensor: Dense;
 }
 
 /** Components of every tensor at one random point. */
@@ -22,6 +23,11 @@ export interface RandomPoint {
   readonly prime: number;
   /** Value of a product whose indices are all contracted. */
   value(factors: readonly TensorSymbol[]): number;
+  /**
+   * Components of a product with free indices, all down: the first of `free` most significant.
+   * @throws RangeError when `free` are not the free indices of the product.
+   */
+  components(factors: readonly TensorSymbol[], free: readonly string[]): Float64Array;
 }
 
 /** Linear congruential steps are enough here: what is needed is independence, not secrecy. */
@@ -33,146 +39,188 @@ function generatorOf(seed: number): () => number {
   };
 }
 
-const digitsOf = (packed: number, rank: number): number[] =>
-  Array.from({ length: rank }, (_, s) => Math.floor(packed / SIZE ** (rank - 1 - s)) % SIZE);
-const pack = (digits: readonly number[]): number => digits.reduce((n, d) => n * SIZE + d, 0);
-
-/** Random components with the symmetries of a kind. */
-function randomTensor(kind: TensorKind, prime: number, next: () => number): Dense {
-  const values = new Float64Array(SIZE ** kind.slots);
-  const done = new Uint8Array(values.length);
-  for (let n = 0; n < values.length; n++) {
-    if (done[n]) continue;
-    const digits = digitsOf(n, kind.slots);
-    const images = kind.group.map(({ places, sign }) => [pack(places.map((p) => digits[p]!)), sign] as const);
-    const vanishes = images.some(([m, sign]) => m === n && sign < 0);
-    const value = vanishes ? 0 : (next() >>> 0) % prime;
-    for (const [m, sign] of images) {
-      values[m] = sign > 0 ? value : (prime - value) % prime;
-      done[m] = 1;
-    }
-  }
-  return { rank: kind.slots, values };
-}
-
-function traceOf({ rank, values }: Dense, i: number, j: number, prime: number): Dense {
-  const out = new Float64Array(SIZE ** (rank - 2));
-  values.forEach((value, n) => {
-    const digits = digitsOf(n, rank);
-    if (digits[i] !== digits[j]) return;
-    const m = pack(digits.filter((_, s) => s !== i && s !== j));
-    out[m] = (out[m]! + (SIGNS[digits[i]!]! < 0 ? prime - value : value)) % prime;
-  });
-  return { rank: rank - 2, values: out };
-}
-
-interface Placed {
-  readonly names: readonly string[];
-  readonly tensor: Dense;
-}
-
-/** Sum over the names that two tensors share. */
-function join(a: Placed, b: Placed, prime: number): Placed {
-  const shared = a.names.filter((n) => b.names.includes(n));
-  const freeA = a.names.filter((n) => !shared.includes(n));
-  const freeB = b.names.filter((n) => !shared.includes(n));
-  const offsets = (names: readonly string[], of: Placed): Int32Array => {
-    const table = new Int32Array(SIZE ** names.length);
-    for (let n = 0; n < table.length; n++) {
-      const digits = digitsOf(n, names.length);
-      table[n] = names.reduce(
-        (sum, name, s) => sum + digits[s]! * SIZE ** (of.names.length - 1 - of.names.indexOf(name)),
-        0,
-      );
-    }
-    return table;
-  };
-  const [rowA, rowB, sumA, sumB] = [offsets(freeA, a), offsets(freeB, b), offsets(shared, a), offsets(shared, b)];
-  const sign = Array.from(sumA, (_, n) => digitsOf(n, shared.length).reduce((s, d) => s * SIGNS[d]!, 1));
-  const values = new Float64Array(rowA.length * rowB.length);
-  for (let i = 0; i < rowA.length; i++)
-    for (let j = 0; j < rowB.length; j++) {
-      let total = 0;
-      for (let s = 0; s < sumA.length; s++) {
-        const product = multiplyMod(
-          a.tensor.values[rowA[i]! + sumA[s]!]!,
-          b.tensor.values[rowB[j]! + sumB[s]!]!,
-          prime,
-        );
-        total += sign[s]! > 0 ? product : prime - product;
-      }
-      values[i * rowB.length + j] = total % prime;
-    }
-  return { names: [...freeA, ...freeB], tensor: { rank: freeA.length + freeB.length, values } };
-}
-
-/** Random components for a seed; tensors are drawn when first met. */
-export function randomPoint(seed: number, prime: number, kinds: KindTable): RandomPoint {
+/**
+ * Random components for a seed; tensors are drawn when first met, each from its own stream, so that the order in which
+ * they are met does not matter.
+ * @param size the dimension; ε and A exist in four dimensions only (RangeError).
+ */
+export function randomPoint(seed: number, prime: number, kinds: KindTable, size = 4): RandomPoint {
+  const space = new Space(size, prime);
   const drawn = new Map<string, Dense>();
-  const tensorOf = (name: string, head: string, slots: number): Dense =>
-    remember(drawn, name, () => {
-      if (head === 'epsilon') return volume(prime);
-      if (head === 'eta') return metric(prime);
-      if (head === 'R' && slots === 2) return traceOf(tensorOf('R/4', 'R', 4), 0, 2, prime);
-      if (head === 'R' && slots === 0) return traceOf(tensorOf('R/2', 'R', 2), 0, 1, prime);
-      if (head === 'T' && slots === 1) return traceOf(tensorOf('T/3', 'T', 3), 0, 2, prime);
-      // Each tensor has its own stream, so that the order in which they are met does not matter.
-      const stream = generatorOf(seed + [...name].reduce((h, c) => (h * 31 + c.charCodeAt(0)) % 1_000_003, 7));
-      return randomTensor(kinds.get(name) ?? plainKind(head, slots), prime, stream);
+  const whole = (head: string, slots: number): Dense =>
+    remember(drawn, `${head}/${slots}`, () => {
+      if (head === 'epsilon') return space.volume();
+      if (head === 'eta' || head === 'delta') return space.metric();
+      if (head === 'R' && slots === 2) return space.trace(whole('R', 4), 0, 2);
+      if (head === 'R' && slots === 0) return space.trace(whole('R', 2), 0, 1);
+      if (head === 'T' && slots === 1) return space.trace(whole('T', 3), 0, 2);
+      if (head === 'A')
+        return space.join({ names: [...'abcd'], tensor: space.volume() }, { names: [...'bcd'], tensor: whole('T', 3) })
+          .tensor;
+      const kind = kindOf(kinds, head, slots);
+      const stream = generatorOf(seed + [...kind.name].reduce((h, c) => (h * 31 + c.charCodeAt(0)) % 1_000_003, 7));
+      return space.random(kind, stream);
     });
+  const placed = ({ head, part, slots }: TensorSymbol): Placed => {
+    if (part !== undefined) throw new RangeError(`the part (${part}) must be written out first`);
+    return { names: slots.map((s) => s.name), tensor: whole(head, slots.length) };
+  };
+  const product = (factors: readonly TensorSymbol[]): Placed => space.contract(factors.map(placed));
   return {
     prime,
     value(factors) {
-      let rest: Placed[] = factors.map(({ head, slots }) => ({
-        names: slots.map((s) => s.name),
-        tensor: tensorOf(kindName(head, slots.length), head, slots.length),
-      }));
-      rest = rest.map((p) => withoutSelfPairs(p, prime));
-      let scalar = 1;
-      while (rest.length > 0) {
-        const [first, ...others] = rest as [Placed, ...Placed[]];
-        if (first.names.length === 0) {
-          scalar = multiplyMod(scalar, first.tensor.values[0]!, prime);
-          rest = others;
-          continue;
-        }
-        const sharedWith = (p: Placed): number => p.names.filter((n) => first.names.includes(n)).length;
-        const best = others.reduce((b, p, i) => (sharedWith(p) > sharedWith(others[b]!) ? i : b), 0);
-        const joined = withoutSelfPairs(join(first, others[best]!, prime), prime);
-        rest = [joined, ...others.filter((_, i) => i !== best)];
-      }
-      return scalar;
+      const { names, tensor } = product(factors);
+      if (names.length > 0) throw new RangeError('the product has free indices');
+      return tensor.values[0]!;
+    },
+    components(factors, free) {
+      const { names, tensor } = product(factors);
+      if (names.length !== free.length || free.some((name) => !names.includes(name)))
+        throw new RangeError('the product has other free indices');
+      return space.reorder(
+        tensor,
+        free.map((name) => names.indexOf(name)),
+      );
     },
   };
 }
 
-function withoutSelfPairs(placed: Placed, prime: number): Placed {
-  let { names, tensor } = placed;
-  for (;;) {
-    const i = names.findIndex((n, s) => names.indexOf(n, s + 1) >= 0);
-    if (i < 0) return { names, tensor };
-    const j = names.indexOf(names[i]!, i + 1);
-    tensor = traceOf(tensor, i, j, prime);
-    names = names.filter((_, s) => s !== i && s !== j);
-  }
-}
+/** Dense tensors in `size` dimensions over the residues of a prime. */
+class Space {
+  constructor(
+    private readonly size: number,
+    private readonly prime: number,
+  ) {}
 
-function volume(prime: number): Dense {
-  const values = new Float64Array(256);
-  for (let n = 0; n < 256; n++) {
-    const d = digitsOf(n, 4);
-    if (new Set(d).size !== 4) continue;
-    let sign = 1;
-    for (let i = 0; i < 4; i++) for (let j = i + 1; j < 4; j++) if (d[i]! > d[j]!) sign = -sign;
-    values[n] = sign > 0 ? 1 : prime - 1;
+  /** η is diag(−1, 1, …); relations do not depend on the signs. */
+  private isNegative(index: number): boolean {
+    return index === 0;
   }
-  return { rank: 4, values };
-}
 
-function metric(prime: number): Dense {
-  const values = new Float64Array(16);
-  SIGNS.forEach((s, i) => {
-    values[pack([i, i])] = s > 0 ? 1 : prime - 1;
-  });
-  return { rank: 2, values };
+  private digits(packed: number, rank: number): number[] {
+    return Array.from({ length: rank }, (_, s) => Math.floor(packed / this.size ** (rank - 1 - s)) % this.size);
+  }
+
+  private pack(digits: readonly number[]): number {
+    return digits.reduce((n, d) => n * this.size + d, 0);
+  }
+
+  /** Random components with the symmetries of a kind. */
+  random(kind: TensorKind, next: () => number): Dense {
+    const values = new Float64Array(this.size ** kind.slots);
+    const done = new Uint8Array(values.length);
+    for (let n = 0; n < values.length; n++) {
+      if (done[n]) continue;
+      const digits = this.digits(n, kind.slots);
+      const images = kind.group.map(({ places, sign }) => [this.pack(places.map((p) => digits[p]!)), sign] as const);
+      const vanishes = images.some(([m, sign]) => m === n && sign < 0);
+      const value = vanishes ? 0 : (next() >>> 0) % this.prime;
+      for (const [m, sign] of images) {
+        values[m] = sign > 0 ? value : (this.prime - value) % this.prime;
+        done[m] = 1;
+      }
+    }
+    return { rank: kind.slots, values };
+  }
+
+  trace({ rank, values }: Dense, i: number, j: number): Dense {
+    const out = new Float64Array(this.size ** (rank - 2));
+    values.forEach((value, n) => {
+      const digits = this.digits(n, rank);
+      if (digits[i] !== digits[j]) return;
+      const m = this.pack(digits.filter((_, s) => s !== i && s !== j));
+      out[m] = (out[m]! + (this.isNegative(digits[i]!) ? this.prime - value : value)) % this.prime;
+    });
+    return { rank: rank - 2, values: out };
+  }
+
+  reorder({ rank, values }: Dense, places: readonly number[]): Float64Array {
+    return Float64Array.from(values, (_, n) => {
+      const wanted = this.digits(n, rank);
+      const digits = new Array<number>(rank);
+      places.forEach((place, s) => {
+        digits[place] = wanted[s]!;
+      });
+      return values[this.pack(digits)]!;
+    });
+  }
+
+  /** Sum over the names that two tensors share. */
+  join(a: Placed, b: Placed): Placed {
+    const { size, prime } = this;
+    const shared = a.names.filter((n) => b.names.includes(n));
+    const freeA = a.names.filter((n) => !shared.includes(n));
+    const freeB = b.names.filter((n) => !shared.includes(n));
+    const offsets = (names: readonly string[], of: Placed): Int32Array => {
+      const weights = names.map((name) => size ** (of.names.length - 1 - of.names.indexOf(name)));
+      return Int32Array.from({ length: size ** names.length }, (_, n) =>
+        this.digits(n, names.length).reduce((sum, d, s) => sum + d * weights[s]!, 0),
+      );
+    };
+    const [rowA, rowB, sumA, sumB] = [offsets(freeA, a), offsets(freeB, b), offsets(shared, a), offsets(shared, b)];
+    const negative = Array.from(
+      sumA,
+      (_, n) => this.digits(n, shared.length).filter((d) => this.isNegative(d)).length % 2 === 1,
+    );
+    const values = new Float64Array(rowA.length * rowB.length);
+    for (let i = 0; i < rowA.length; i++)
+      for (let j = 0; j < rowB.length; j++) {
+        let total = 0;
+        for (let s = 0; s < sumA.length; s++) {
+          const left = a.tensor.values[rowA[i]! + sumA[s]!]!;
+          const product = multiplyMod(left, b.tensor.values[rowB[j]! + sumB[s]!]!, prime);
+          total += negative[s] ? prime - product : product;
+        }
+        values[i * rowB.length + j] = total % prime;
+      }
+    return { names: [...freeA, ...freeB], tensor: { rank: freeA.length + freeB.length, values } };
+  }
+
+  /** The whole product, summed over every name that occurs twice. */
+  contract(factors: readonly Placed[]): Placed {
+    let rest = factors.map((p) => this.withoutSelfPairs(p));
+    if (rest.length === 0) return { names: [], tensor: { rank: 0, values: Float64Array.of(1) } };
+    while (rest.length > 1) {
+      const [first, ...others] = rest as [Placed, ...Placed[]];
+      const sharedWith = (p: Placed): number => p.names.filter((n) => first.names.includes(n)).length;
+      const best = others.reduce((b, p, i) => (sharedWith(p) > sharedWith(others[b]!) ? i : b), 0);
+      // A finished scalar waits until the end, so that unconnected tensors are not multiplied out.
+      if (first.names.length === 0 && others.some((p) => p.names.length > 0)) {
+        rest = [...others, first];
+        continue;
+      }
+      rest = [this.join(first, others[best]!), ...others.filter((_, i) => i !== best)];
+    }
+    return rest[0]!;
+  }
+
+  private withoutSelfPairs(placed: Placed): Placed {
+    let { names, tensor } = placed;
+    for (;;) {
+      const i = names.findIndex((n, s) => names.indexOf(n, s + 1) >= 0);
+      if (i < 0) return { names, tensor };
+      const j = names.indexOf(names[i]!, i + 1);
+      tensor = this.trace(tensor, i, j);
+      names = names.filter((_, s) => s !== i && s !== j);
+    }
+  }
+
+  volume(): Dense {
+    if (this.size !== 4) throw new RangeError('the volume tensor has four indices in four dimensions only');
+    const values = new Float64Array(256);
+    for (let n = 0; n < 256; n++) {
+      const d = this.digits(n, 4);
+      if (new Set(d).size !== 4) continue;
+      let sign = 1;
+      for (let i = 0; i < 4; i++) for (let j = i + 1; j < 4; j++) if (d[i]! > d[j]!) sign = -sign;
+      values[n] = sign > 0 ? 1 : this.prime - 1;
+    }
+    return { rank: 4, values };
+  }
+
+  metric(): Dense {
+    const values = new Float64Array(this.size ** 2);
+    for (let i = 0; i < this.size; i++) values[this.pack([i, i])] = this.isNegative(i) ? this.prime - 1 : 1;
+    return { rank: 2, values };
+  }
 }
