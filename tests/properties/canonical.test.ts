@@ -47,7 +47,7 @@ const keyOf = (terms: readonly TensorTerm[]): string =>
   terms.map((t) => `${t.coefficient.numerators[0]}/${t.coefficient.denominator} ${factorsKey(t.factors)}`).join(' + ');
 
 /** Value of a sum with rational coefficients; denominators are powers of two and three here. */
-function valueOf(terms: readonly TensorTerm[], tensors: RandomTensors, free: ReadonlyMap<string, number>): number {
+function sumValue(terms: readonly TensorTerm[], tensors: RandomTensors, free: ReadonlyMap<string, number>): number {
   let total = 0;
   for (const t of terms) {
     const [only] = termsOf(t.coefficient);
@@ -82,7 +82,7 @@ describe('equal canonical forms', () => {
         const factors = randomContraction(random, tensors, free);
         const components = new RandomTensors(seed, 4, GROUPS);
         const at = new Map(Array.from({ length: free }, (_, i) => [`f${i}`, random.below(4)] as const));
-        expect(valueOf(canonical(factors), components, at), `seed ${seed}`).toBe(components.value(factors, at));
+        expect(sumValue(canonical(factors), components, at), `seed ${seed}`).toBe(components.value(factors, at));
         compared++;
       }
       expect(compared).toBe(runs(1500));
