@@ -214,11 +214,11 @@ function contentOf(coefficients: readonly Rational[]): Rational {
 }
 
 /**
- * The same sum with the rational number and the couplings that all terms share pulled out in front of it, when there is
- * more than one term: 12 A1² − 12 A2² becomes 12 times (A1² − A2²).
+ * The same sum with the rational number that its terms share pulled out in front, the first term left positive:
+ * 12 A1² − 12 A2² becomes 12 times (A1² − A2²).
  */
 export function pulledOut(sum: DisplaySum): { readonly content: Rational; readonly terms: readonly DisplayTerm[] } {
-  if (sum.terms.length < 2) return { content: rational(1), terms: sum.terms };
+  if (sum.terms.length === 0) return { content: rational(1), terms: [] };
   const content = contentOf(sum.terms.map((t) => t.content));
   const terms = sum.terms.map((t) => ({
     ...t,

@@ -1,4 +1,5 @@
 /** The last sections: the metric analogue with its domain, what the background sees of the couplings, the checks. */
+import { symbolsOf } from '../algebra/collect.js';
 import { isZero, type Poly } from '../algebra/poly.js';
 import type { BiScalarForm } from '../derivation.js';
 import {
@@ -81,7 +82,7 @@ function biScalarPassages(writer: Writer, form: BiScalarForm): Passage[] {
       fixedRow('J_{\\mu}', current.map(([q]) => `J_{${texOf.get(q)}} \\partial_{\\mu} ${texOf.get(q)}`).join(' + ')),
     );
   const rate = current.map(([q]) => `J_{${texOf.get(q)}} ${rateTex(texOf.get(q)!)}`).join(' + ');
-  const branch = prose`On the background ${math('J_{\\mu}')} is timelike and the root is ${math(`| ${rate} |`)}; the theory corresponds to the branch on which it enters as ${math(rate)}, whatever its sign. Its zeros are singular surfaces.`;
+  const branch = prose`On the background ${math('J_{\\mu}')} is timelike and the root is ${math(`| ${rate} |`)}; the theory corresponds to the branch on which it enters as ${math(rate)}, whatever its sign. Zeros of ${math('J_{\\mu}')}, where there are any, are singular surfaces.`;
   const domain =
     form.validFor === 'every k'
       ? prose`The form holds for every value of ${math(latex(geometry.isotropic!.curvature))}.`
@@ -163,13 +164,20 @@ export function couplingsSection({ derivation, passage, plain, latex }: Writer):
   }
   if (screening && geometry.isotropic) {
     const k = math(latex(geometry.isotropic.curvature));
-    const text =
-      screening.length === 0
+    const never = screening.some((p) => symbolsOf(p).length === 0);
+    const text = never
+      ? prose`The spatial curvature ${k} does not drop out of the equations, whatever the couplings are.`
+      : screening.length === 0
         ? prose`The spatial curvature ${k} drops out of all equations.`
         : prose`The spatial curvature ${k} drops out of the gravitational part of all equations exactly when`;
     const rows = conditionRows(plain, screening);
     passages.push(
-      passage('screening', 'Spatial curvature', { text: [text] }, screening.length === 0 ? [] : rowDisplays(rows)),
+      passage(
+        'screening',
+        'Spatial curvature',
+        { text: [text] },
+        screening.length === 0 || never ? [] : rowDisplays(rows),
+      ),
     );
   }
   return { id: 'couplings', title: 'What the background sees of the couplings', passages };

@@ -93,9 +93,8 @@ class Filler {
     return this.lines;
   }
 
-  /** Factors of one product; where it must be broken, the next line begins with a multiplication sign. */
-  putProduct(sign: string, factors: readonly string[], reserve: number, indent: Line['indent']): void {
-    const whole = joined(sign, ...factors);
+  /** One product; where it must be broken, the next line begins with a multiplication sign. */
+  putProduct({ whole, factors }: Product, reserve: number, indent: Line['indent']): void {
     const width = widthOf(whole) + reserve;
     if (width > this.room && (!this.isEmpty || width <= this.available(indent))) this.newLine(indent);
     if (width <= this.room || factors.length < 2) {
@@ -103,14 +102,24 @@ class Filler {
       return;
     }
     factors.forEach((factor, i) => {
-      const text = i === 0 ? joined(sign, factor) : factor;
-      if (!this.isEmpty && widthOf(text) + (i === factors.length - 1 ? reserve : 0) > this.room) {
+      if (!this.isEmpty && widthOf(factor) + (i === factors.length - 1 ? reserve : 0) > this.room) {
         this.newLine(2);
         this.put(`\\times ${factor}`);
-      } else this.put(text);
+      } else this.put(factor);
     });
   }
 }
+
+/** A product on one line and its factors, the first of them with the sign. */
+interface Product {
+  readonly whole: string;
+  readonly factors: readonly string[];
+}
+
+const productOf = (sign: string, factors: readonly string[]): Product => ({
+  whole: joined(sign, ...factors),
+  factors: factors.map((factor, i) => (i === 0 ? joined(sign, factor) : factor)),
+});
 
 /** Points to be filled: on the first line, on the others, and what the last one must leave free. */
 export interface Room {
@@ -151,13 +160,14 @@ export function fillLines(terms: readonly TexTerm[], right: string, { first, res
 /** A term that does not fit on a line of its own: broken inside its bracket, in lines of even length, or between factors. */
 function fillLongTerm(filler: Filler, sign: string, term: TexTerm, reserve: number, rest: number): void {
   if (term.inner.length === 0) {
-    filler.putProduct(sign, [...term.head, ...term.tail], reserve, 1);
+    filler.putProduct(productOf(sign, [...term.head, ...term.tail]), reserve, 1);
     return;
   }
+  const bracket = bracketOf(sign, term);
   const linesNeeded = (shortening: number): number => {
     const trial = new Filler(rest, rest);
     trial.shortening = shortening;
-    fillBracket(trial, sign, term, reserve);
+    fillBracket(trial, bracket, reserve);
     return trial.finish().length;
   };
   if (!filler.isAtStart) {
@@ -165,21 +175,38 @@ function fillLongTerm(filler: Filler, sign: string, term: TexTerm, reserve: numb
     const step = INDENT;
     while (filler.shortening < rest / 2 && linesNeeded(filler.shortening + step) === least) filler.shortening += step;
   }
-  fillBracket(filler, sign, term, reserve);
+  fillBracket(filler, bracket, reserve);
   filler.shortening = 0;
 }
 
-function fillBracket(filler: Filler, sign: string, term: TexTerm, reserve: number): void {
-  const [open, close] = bracketsFor(inlineTex(term.inner), true);
-  const closing = joined(close, ...term.tail);
-  term.inner.forEach((inner, i) => {
-    const isFirst = i === 0;
-    const isLast = i === term.inner.length - 1;
-    const body = inner.inner.length > 0 ? [flatTerm(inner)] : inner.head;
-    const mark = inner.negative ? '-' : isFirst ? '' : '+';
-    const before = joined(isFirst ? joined(sign, ...term.head, open) : '', mark);
-    filler.putProduct(before, body, isLast ? widthOf(closing) + reserve : 0, isFirst ? 1 : 2);
+/** The terms of a bracket, the first with everything in front of it, and what follows the last. */
+interface Bracket {
+  readonly products: readonly Product[];
+  readonly closing: string;
+}
+
+const brackets = new WeakMap<TexTerm, Map<string, Bracket>>();
+
+/** The pieces of a bracket, remembered for each sign of its term. */
+function bracketOf(sign: string, term: TexTerm): Bracket {
+  const known = brackets.get(term) ?? new Map<string, Bracket>();
+  brackets.set(term, known);
+  return remember(known, sign, () => {
+    const [open, close] = bracketsFor(inlineTex(term.inner), true);
+    const products = term.inner.map((inner, i) => {
+      const mark = inner.negative ? '-' : i === 0 ? '' : '+';
+      const before = i === 0 ? joined(sign, ...term.head, open, mark) : mark;
+      return productOf(before, inner.inner.length > 0 ? [flatTerm(inner)] : inner.head);
+    });
+    return { products, closing: joined(close, ...term.tail) };
   });
-  if (widthOf(closing) + reserve > filler.room && !filler.isEmpty) filler.newLine(2);
+}
+
+function fillBracket(filler: Filler, { products, closing }: Bracket, reserve: number): void {
+  const end = widthOf(closing) + reserve;
+  products.forEach((product, i) => {
+    filler.putProduct(product, i === products.length - 1 ? end : 0, i === 0 ? 1 : 2);
+  });
+  if (end > filler.room && !filler.isEmpty) filler.newLine(2);
   filler.put(closing);
 }

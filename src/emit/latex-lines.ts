@@ -22,6 +22,9 @@ const LONG: Frame = { line: 238, number: 28 };
 const SHORT_LINES = 3;
 /** Points, half a page less the space around a display: an article has 550 on a page, two columns about 690. */
 const DISPLAY_HEIGHT = 255;
+/** So few displays of one equation are made about equally tall, in steps of a line. */
+const FEW_CHUNKS = 4;
+const EVENING = 16;
 
 export interface Equation {
   /** Empty for a sum without a left side, `… = 0`. */
@@ -114,15 +117,25 @@ export function equationDisplays(equation: Equation): Lines[] {
   ];
 }
 
-/** Cuts a sum into pieces that each fit one display. */
+/** Cuts a sum into pieces that each fit one display, about equally tall when they are few. */
 function intoChunks(terms: readonly TexTerm[], left: string): TexTerm[][] {
   const heightOfSum = (sum: readonly TexTerm[]): number => layoutEquation({ left, terms: sum }).height;
   const queue = terms.flatMap((term) => smaller(term, (t) => heightOfSum([t]) <= DISPLAY_HEIGHT));
-  const chunks: TexTerm[][] = [[]];
-  for (const term of queue) {
-    const last = chunks[chunks.length - 1]!;
-    if (last.length > 0 && heightOfSum([...last, term]) > DISPLAY_HEIGHT) chunks.push([term]);
-    else last.push(term);
+  const cut = (limit: number): TexTerm[][] => {
+    const chunks: TexTerm[][] = [[]];
+    for (const term of queue) {
+      const last = chunks[chunks.length - 1]!;
+      if (last.length > 0 && heightOfSum([...last, term]) > limit) chunks.push([term]);
+      else last.push(term);
+    }
+    return chunks;
+  };
+  let chunks = cut(DISPLAY_HEIGHT);
+  const { length } = chunks;
+  for (let limit = DISPLAY_HEIGHT - EVENING; length <= FEW_CHUNKS && limit > DISPLAY_HEIGHT / 2; limit -= EVENING) {
+    const lower = cut(limit);
+    if (lower.length > length) break;
+    chunks = lower;
   }
   return chunks;
 }

@@ -1,6 +1,8 @@
 /** The sections of results: reduced Lagrangian, field equations, Friedmann form, metric analogue, couplings, checks. */
 import { isZero } from '../algebra/poly.js';
+import { divideRational, multiplyRational, rational } from '../algebra/rational.js';
 import type { FriedmannForm } from '../derivation.js';
+import { type DisplayTerm, pulledOut } from './display.js';
 import { equationOf, fixedRow, type Passage, type Section, type Writer } from './latex-display.js';
 import { type Lines, rowDisplays, SINGLE_LINE } from './latex-lines.js';
 import { inlineTex, productTex, rateTex, sumTex } from './latex-math.js';
@@ -10,7 +12,7 @@ import { widthOf } from './latex-width.js';
 /** The exact Lagrangian on the geometry, and the same without total derivatives. */
 export function reductionSection(writer: Writer): Section {
   const { derivation, passage, latex, viewer } = writer;
-  const { geometry, lagrangian, reducedGravity, dropped } = derivation;
+  const { geometry, lagrangian, reducedGravity, dropped, fluids } = derivation;
   const lapse = latex(geometry.lapse);
   const volume = productTex(viewer.sum(geometry.volume).divided);
   const over = [lapse];
@@ -20,7 +22,7 @@ export function reductionSection(writer: Writer): Section {
       'Reduced Lagrangian',
       {
         text: [
-          prose`The Lagrangian times the volume ${math(`${lapse} ${volume}`)}, with the symmetry imposed and matter included, is`,
+          prose`The Lagrangian times the volume ${math(`${lapse} ${volume}`)}, with the symmetry imposed${fluids.length > 0 ? ' and matter included' : ''}, is`,
         ],
         remarks: [
           prose`The lapse is in the volume and in every dot and rate; nothing else depends on it, as the invariance under changes of time demands. Imposing the symmetry before the variation is allowed here because the structure constants of the cobasis have no trace.`,
@@ -137,24 +139,27 @@ function equationOfState(writer: Writer, friedmann: FriedmannForm): Passage {
   return writer.passage('w-T', 'Effective equation of state', { text: [prose`Their ratio is`] }, [[shown]]);
 }
 
-/** p_T/ρ_T in lowest terms; undefined when it is long or a power of the scale factor would be left over. */
+/** p_T/ρ_T in lowest terms; undefined when it is long or powers of the scale factor would be left over. */
 function shortQuotient({ viewer }: Writer, friedmann: FriedmannForm): string | undefined {
   if (friedmann.rhoT.size > LONG_QUOTIENT || friedmann.pT.size > LONG_QUOTIENT) return undefined;
   const ratio = friedmann.wT;
-  if (!ratio) return undefined;
+  if (!ratio || ratio.denominator.length > 1) return undefined;
   const top = viewer.sum(ratio.numerator);
-  const bottoms = ratio.denominator.map(({ base, power }) => ({ ...viewer.sum(base), power }));
-  const left = new Map<string, number>();
-  for (const { divided, power } of [{ ...top, power: -1 }, ...bottoms])
-    for (const { symbol, exponent } of divided)
-      left.set(symbol.generator, (left.get(symbol.generator) ?? 0) + power * exponent);
-  if ([...left.values()].some((e) => e !== 0)) return undefined;
-  const above = inlineTex(sumTex(top));
-  if (bottoms.length === 0) return above;
-  const [only] = bottoms;
-  const below =
-    bottoms.length === 1 && only!.power === 1
-      ? inlineTex(sumTex(only!))
-      : bottoms.map((b) => `(${inlineTex(sumTex(b))})${b.power === 1 ? '' : `^{${b.power}}`}`).join(' ');
-  return `\\frac{${above}}{${below}}`;
+  const [factor] = ratio.denominator;
+  const bottom = factor ? viewer.sum(factor.base) : undefined;
+  if (factor?.power !== undefined && factor.power > 1) return undefined;
+  if (productTex(top.divided) !== productTex(bottom?.divided ?? [])) return undefined;
+  if (!bottom) return inlineTex(sumTex(top));
+  const { content, terms } = pulledOut(top);
+  const below = pulledOut(bottom);
+  const number = divideRational(content, below.content);
+  return `\\frac{${multiplied(number.num, terms)}}{${multiplied(number.den, below.terms)}}`;
+}
+
+/** An integer times a sum. */
+function multiplied(number: bigint, terms: readonly DisplayTerm[]): string {
+  const sized = number < 0n ? -number : number;
+  if (sized !== 1n && terms.length > 1) return `${number} (${inlineTex(sumTex({ divided: [], terms }))})`;
+  const scaled = terms.map((t) => ({ ...t, content: multiplyRational(t.content, rational(number)) }));
+  return inlineTex(sumTex({ divided: [], terms: scaled }));
 }

@@ -127,33 +127,36 @@ function greekTex(c: string): string | undefined {
   return GREEK_CAPITALS.has(capital) ? capital : undefined;
 }
 
-/** Long words get places where they may be broken. */
-const BREAK_EVERY = 18;
+/** Words longer than this get places where they may be broken. */
+const LONG_WORD = 24;
+const BREAK_EVERY = 12;
 
 /**
  * Plain text for LaTeX. Letters with accents become accent commands; what LaTeX cannot set with its standard fonts
  * becomes its code point in square brackets.
  */
-export function escapeText(text: string): string {
-  let out = '';
-  let run = 0;
-  const points = [...text.normalize('NFD')];
+export const escapeText = (text: string): string =>
+  text
+    .normalize('NFC')
+    .split(/[^\S\u00a0]+/)
+    .map(escapeWord)
+    .filter((word) => word !== '')
+    .join(' ');
+
+function escapeWord(word: string): string {
+  // A negated sign is one of the table, not a letter with an accent.
+  const points = [...word].flatMap((c) => (SIGNS.has(c) ? [c] : [...c.normalize('NFD')]));
+  const pieces: string[] = [];
   for (let i = 0; i < points.length; i++) {
-    const c = points[i]!;
-    if (/\s/.test(c) && c !== '\u00a0') {
-      if (!out.endsWith(' ')) out += ' ';
-      run = 0;
-      continue;
-    }
-    let piece = escapeSign(c);
+    let piece = escapeSign(points[i]!);
     while (points[i + 1] !== undefined && ACCENTS.has(points[i + 1]!)) {
       const body = piece === 'i' || piece === 'j' ? `\\${piece}` : piece;
       piece = `\\${ACCENTS.get(points[++i]!)}{${body}}`;
     }
-    if (++run % BREAK_EVERY === 0) out += '\\allowbreak{}';
-    out += piece;
+    if (piece !== '') pieces.push(piece);
   }
-  return out.trim();
+  if (pieces.length <= LONG_WORD) return pieces.join('');
+  return pieces.map((piece, i) => (i > 0 && i % BREAK_EVERY === 0 ? `\\allowbreak{}${piece}` : piece)).join('');
 }
 
 function escapeSign(c: string): string {

@@ -52,9 +52,8 @@ const RELATIONS = words('equiv to rightarrow approx simeq sim propto neq ne le g
 const ACCENTS = words(
   'dot ddot dddot ddddot hat tilde bar vec check breve acute grave mathring widehat widetilde overline underline',
 );
-const FACES = words(
-  'mathrm mathit mathsf mathtt mathbf mathbb mathfrak mathnormal text textrm operatorname boldsymbol',
-);
+const FACES = words('mathrm mathsf mathtt text textrm operatorname mathnormal');
+const BOLD_FACES = words('mathbf mathit boldsymbol mathbb mathfrak');
 /** Width and height above the axis of the delimiters that \bigl and its like set. */
 const GROWN: ReadonlyMap<string, readonly [width: number, reach: number]> = new Map([
   ['big', [4.6, 6]],
@@ -84,17 +83,20 @@ const box = (kind: Kind, thousandths: number, height = LETTER_HEIGHT, depth = 2.
   depth,
 });
 
-type Face = 'italic' | 'upright' | 'calligraphic';
+type Face = 'italic' | 'upright' | 'bold' | 'calligraphic';
+
+/** Bold and text italic are this much wider than the wider of math italic and roman. */
+const BOLD = 1.26;
 
 function letterWidth(c: string, face: Face): number {
   const code = c.charCodeAt(0);
   const upper = code >= 65 && code <= 90;
   // The calligraphic font has arrows and ties where others have small letters and digits.
   if (face === 'calligraphic') return upper ? 1.28 * UPRIGHT[code - 65]! : 1000;
-  const table = face === 'upright' ? UPRIGHT : ITALIC;
-  if (upper) return table[code - 65]!;
-  if (code >= 97 && code <= 122) return table[code - 97 + 26]!;
-  if (code >= 48 && code <= 57) return 525;
+  const place = upper ? code - 65 : code >= 97 && code <= 122 ? code - 97 + 26 : -1;
+  if (place >= 0 && face === 'bold') return BOLD * Math.max(UPRIGHT[place]!, ITALIC[place]!);
+  if (place >= 0) return (face === 'upright' ? UPRIGHT : ITALIC)[place]!;
+  if (code >= 48 && code <= 57) return face === 'bold' ? 650 : 525;
   return c === ' ' ? 334 : c === '.' || c === '/' ? 500 : 800;
 }
 
@@ -177,9 +179,17 @@ class Reader {
     }
     if (ACCENTS.has(name)) {
       const inner = this.argument(style, face);
-      return { kind: 'ordinary', width: inner.width + 0.5, height: inner.height + 2.5, depth: inner.depth };
+      // Three and more dots are set as a box of their own.
+      const width = Math.max(inner.width + 0.5, name.startsWith('ddd') ? 10.2 : 0);
+      return {
+        kind: 'ordinary',
+        width,
+        height: inner.height + 2.5,
+        depth: inner.depth + (name === 'underline' ? 2 : 0),
+      };
     }
     if (name === 'mathcal' || name === 'mathscr') return { kind: 'ordinary', ...this.argument(style, 'calligraphic') };
+    if (BOLD_FACES.has(name)) return { kind: 'ordinary', ...this.argument(style, 'bold') };
     if (FACES.has(name)) return { kind: 'ordinary', ...this.argument(style, 'upright') };
     const grown = GROWN.get(name.replace(/[lrm]$/, ''));
     if (grown) {
@@ -189,7 +199,8 @@ class Reader {
     }
     if (BINARY.has(name)) return box('binary', 778 * size, 5.9, 0.9);
     if (RELATIONS.has(name)) return box('relation', 1000 * size, 5.9, 0.9);
-    return box('ordinary', (SIGNS.get(name) ?? UNKNOWN) * size, LETTER_HEIGHT * size, 2.2 * size);
+    const weight = face === 'bold' ? BOLD : 1;
+    return box('ordinary', (SIGNS.get(name) ?? UNKNOWN) * weight * size, LETTER_HEIGHT * size, 2.2 * size);
   }
 
   private fraction(name: string, style: number): Box {

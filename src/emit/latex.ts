@@ -2,6 +2,7 @@
  * The two LaTeX files of a derivation: fragments for a manuscript and a document that compiles. Both need amsmath only,
  * fit the column of a two-column journal, and are ASCII.
  */
+import { remember } from '../algebra/memo.js';
 import type { Derivation } from '../derivation.js';
 import { analogueSection, checksSection, couplingsSection } from './latex-analogue.js';
 import { type LatexOptions, type Passage, type Section, writerOf } from './latex-display.js';
@@ -16,6 +17,18 @@ export type { LatexDisplay, LatexOptions, Passage, Section } from './latex-displ
  * @throws RangeError for variables that the geometry does not offer.
  */
 export function latexSections(derivation: Derivation, options: LatexOptions = {}): readonly Section[] {
+  let known = written.get(derivation);
+  if (!known) {
+    known = new Map();
+    written.set(derivation, known);
+  }
+  return remember(known, options.variables ?? '', () => writeSections(derivation, options));
+}
+
+/** Two files and the report ask for the same sections. */
+const written = new WeakMap<Derivation, Map<string, readonly Section[]>>();
+
+function writeSections(derivation: Derivation, options: LatexOptions): readonly Section[] {
   const writer = writerOf(derivation, options);
   const sections = [
     theorySection(writer),
