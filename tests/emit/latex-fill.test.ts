@@ -24,7 +24,12 @@ describe('filling', () => {
 
   it('keeps what follows the sum on the last line, or puts it on one of its own', () => {
     const full = fillLines([term('x^{2}')], '= 0', { first: 22, rest: 100, reserve: 0 });
-    expect(full.map((l) => l.tex).join(' ').trim()).toBe('x^{2} = 0');
+    expect(
+      full
+        .map((l) => l.tex)
+        .join(' ')
+        .trim(),
+    ).toBe('x^{2} = 0');
     expect(full.length).toBe(2);
   });
 
