@@ -65,6 +65,15 @@ export function covariantTheory(d: Derivation, onStep: (what: string) => void = 
   return { lagrangian, momenta, equations, withMomenta, inMetricTerms: metricTerms, checks };
 }
 
+/**
+ * Where the components of field equations differ from the reduced equations, as `geometry: field`; empty when they agree.
+ */
+export const covariantMismatches = (d: Derivation, equations: CovariantEquations): string[] =>
+  geometryNames().flatMap((id) => {
+    const geometry = loadGeometry(id, d.theory.signature);
+    return compare(d, geometry, equations, d.terms).fields.map((q) => `${id}: ${q}`);
+  });
+
 /** Jets of a geometry and every constant of a derivation. */
 function ringWith(geometry: Geometry, d: Derivation): Ring {
   const known = new Set(geometry.ring.generators.map((g) => g.name));

@@ -130,8 +130,7 @@ function traced(term: TensorTerm, kinds: KindTable): TensorTerm | undefined {
     let changed = false;
     const next: TensorSymbol[] = [];
     for (const f of factors) {
-      const pair = selfPair(f.slots);
-      const trace = pair && kindOfSymbol(kinds, f).traces.find((t) => t.pair[0] === pair[0] && t.pair[1] === pair[1]);
+      const trace = kindOfSymbol(kinds, f).traces.find(({ pair: [i, j] }) => f.slots[i]!.name === f.slots[j]!.name);
       if (!trace) {
         next.push(f);
         continue;
@@ -143,12 +142,6 @@ function traced(term: TensorTerm, kinds: KindTable): TensorTerm | undefined {
     factors = next;
     if (!changed) return { coefficient, factors };
   }
-}
-
-function selfPair(slots: readonly IndexSlot[]): [number, number] | undefined {
-  for (let i = 0; i < slots.length; i++)
-    for (let j = i + 1; j < slots.length; j++) if (slots[i]!.name === slots[j]!.name) return [i, j];
-  return undefined;
 }
 
 /** Canonical form of one term without contracted metrics; undefined when it vanishes. */
