@@ -6,7 +6,7 @@ import { eulerLagrange } from './algebra/calculus.js';
 import { moveTo } from './algebra/collect.js';
 import { constant, equals, multiply, type Poly, sum } from './algebra/poly.js';
 import { constantsOf, makeRing, type Ring } from './algebra/ring.js';
-import type { Check, Derivation } from './derivation.js';
+import type { Check, CovariantTheory, Derivation } from './derivation.js';
 import { geometryNames, loadGeometry } from './geometry/build.js';
 import { componentEvaluator, equationComponents, projected } from './geometry/covariant-components.js';
 import type { Geometry } from './geometry/geometry.js';
@@ -17,30 +17,25 @@ import {
   type CovariantEquations,
   fieldEquations,
   fieldMomenta,
-  type Momenta,
   momentumSymbols,
   variationKinds,
 } from './tensor/variation.js';
 
-export interface CovariantTheory {
-  /** The Lagrangian in canonical form, in the ring of the derivation. */
-  readonly lagrangian: TensorSum;
-  /** P_abc = ∂L/∂T^abc and Q_abcd = ∂L/∂R^abcd, free indices a, b, c(, d). */
-  readonly momenta: Momenta;
-  /** E_ab and E_abc with the momenta expanded. */
-  readonly equations: CovariantEquations;
-  /** The same with P and Q kept as symbols. */
-  readonly withMomenta: CovariantEquations;
-  /** The Lagrangian in terms of the metric connection and torsion. */
-  readonly inMetricTerms: TensorSum;
-  readonly checks: readonly Check[];
+/** The derivation with its covariant equations, whose checks join the others. @throws as `covariantTheory`. */
+export function withCovariant(d: Derivation, keepMomenta: boolean, onStep?: (what: string) => void): Derivation {
+  const covariant = covariantTheory(d, keepMomenta, onStep);
+  return { ...d, covariant, checks: [...d.checks, ...covariant.checks] };
 }
 
 /**
  * Field equations of the Lagrangian of a derivation.
  * @throws Error when a component differs from the reduced equations on some geometry: the program would be wrong.
  */
-export function covariantTheory(d: Derivation, onStep: (what: string) => void = () => {}): CovariantTheory {
+export function covariantTheory(
+  d: Derivation,
+  keepMomenta = false,
+  onStep: (what: string) => void = () => {},
+): CovariantTheory {
   const kinds = variationKinds();
   const lagrangian = canonicalSum(d.terms, kinds);
   const momenta = fieldMomenta(lagrangian, kinds);
@@ -62,7 +57,7 @@ export function covariantTheory(d: Derivation, onStep: (what: string) => void = 
       { name: 'Lagrangian in terms of the metric connection', holds: true, detail: value },
     ];
   });
-  return { lagrangian, momenta, equations, withMomenta, inMetricTerms: metricTerms, checks };
+  return { lagrangian, momenta, equations, withMomenta, inMetricTerms: metricTerms, keepMomenta, checks };
 }
 
 /**

@@ -7,6 +7,8 @@ import type { Poly } from './algebra/poly.js';
 import type { Ring } from './algebra/ring.js';
 import type { Geometry } from './geometry/geometry.js';
 import type { LagrangianTerm, TensorFactor, Theory } from './notation/theory.js';
+import type { TensorSum } from './tensor/expression.js';
+import type { CovariantEquations, Momenta } from './tensor/variation.js';
 
 /** A statement that was tested exactly during the derivation. A check that fails stops the derivation with an error. */
 export interface Check {
@@ -74,6 +76,23 @@ export interface NoScalarTensorForm {
 
 export type ScalarTensorForm = BiScalarForm | NoScalarTensorForm;
 
+/** Field equations in index notation, in the ring of the derivation; free indices a, b, c(, d) are down. */
+export interface CovariantTheory {
+  /** The Lagrangian in canonical form, in the ring of the derivation. */
+  readonly lagrangian: TensorSum;
+  /** P_abc = ∂L/∂T^abc and Q_abcd = ∂L/∂R^abcd, free indices a, b, c(, d). */
+  readonly momenta: Momenta;
+  /** E_ab and E_abc with the momenta expanded. */
+  readonly equations: CovariantEquations;
+  /** The same with P and Q kept as symbols. */
+  readonly withMomenta: CovariantEquations;
+  /** The Lagrangian in terms of the metric connection and torsion. */
+  readonly inMetricTerms: TensorSum;
+  /** Whether the printed equations keep P and Q. */
+  readonly keepMomenta: boolean;
+  readonly checks: readonly Check[];
+}
+
 export interface Derivation {
   readonly theory: Theory;
   readonly geometry: Geometry;
@@ -99,5 +118,7 @@ export interface Derivation {
   readonly screening: readonly Poly[] | undefined;
   readonly friedmann: FriedmannForm | undefined;
   readonly scalarTensor: ScalarTensorForm;
+  /** Present when it was asked for. */
+  readonly covariant?: CovariantTheory;
   readonly checks: readonly Check[];
 }

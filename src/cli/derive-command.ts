@@ -5,6 +5,7 @@ import { derive } from '../derive.js';
 import { derivationJson } from '../emit/json.js';
 import { InputError, renderDiagnostic } from '../notation/diagnostics.js';
 import { readTheory } from '../notation/read-theory.js';
+import type { Theory } from '../notation/theory.js';
 import { EXIT, type Io } from './io.js';
 import { refuseExisting, writeFolder } from './output-folder.js';
 import { progressLine } from './progress.js';
@@ -15,6 +16,8 @@ export interface DeriveOptions {
   readonly set: readonly string[];
   readonly variables: string;
   readonly factor?: boolean;
+  readonly covariant?: boolean;
+  readonly momenta?: boolean;
   readonly json?: boolean;
   readonly force?: boolean;
 }
@@ -33,39 +36,57 @@ export async function deriveCommand(path: string, options: DeriveOptions, io: Io
   const { file, text } = await readInput(path, io);
   const theory = readTheory(text, file, { set: options.set });
   for (const warning of theory.warnings) io.stderr(`${renderDiagnostic(warning, { color: io.color })}\n`);
-  if (options.json) {
-    io.stdout(derivationJson(derive(theory)));
+  try {
+    if (options.json) io.stdout(derivationJson(await derived(theory, options)));
+    else await writeResults(theory, options, io);
     return EXIT.done;
+  } catch (error) {
+    if (!(error instanceof InputError)) throw error;
+    // What is found wrong behind the reader has no place in the text, but still belongs to this file.
+    throw new InputError(error.diagnostics.map((d) => ('file' in d || isOutput(d.code) ? d : { ...d, file })));
   }
+}
+
+const isOutput = (code: string): boolean => code.startsWith('output-') || code === 'unknown-variables';
+
+async function writeResults(theory: Theory, options: DeriveOptions, io: Io): Promise<void> {
   const folder = options.out ?? `out/${theory.slug}`;
   const files = filesOf(theory.slug);
   refuseExisting(folder, Object.values(files), options.force ?? false);
-
   const progress = progressLine(io);
-  const derivation = derive(theory, progress.step);
-  const variables = chosenVariables(derivation, options.variables);
-  progress.step('typesetting');
-  const [{ derivationTex, equationsTex }, { typescriptModule }, { reportHtml }, { summary }] = await Promise.all([
-    import('../emit/latex.js'),
-    import('../emit/typescript.js'),
-    import('../emit/report.js'),
-    import('../emit/summary.js'),
-  ]);
-  const factored = options.factor ? await (await import('../factored.js')).factorFunctions(derivation) : undefined;
-  writeFolder(
-    folder,
-    new Map([
+  try {
+    const derivation = await derived(theory, options, progress.step);
+    const variables = chosenVariables(derivation, options.variables);
+    progress.step('typesetting');
+    const [{ derivationTex, equationsTex }, { typescriptModule }, { reportHtml }, { summary }] = await Promise.all([
+      import('../emit/latex.js'),
+      import('../emit/typescript.js'),
+      import('../emit/report.js'),
+      import('../emit/summary.js'),
+    ]);
+    const factored = options.factor ? await (await import('../factored.js')).factorFunctions(derivation) : undefined;
+    const results = new Map([
       [files.equations, equationsTex(derivation, { variables })],
       [files.document, derivationTex(derivation, { variables })],
       [files.code, typescriptModule(derivation)],
       [files.data, derivationJson(derivation)],
       [files.report, reportHtml(derivation, { variables })],
-    ]),
-  );
-  progress.done();
-  io.stdout(summary(derivation, { variables, color: io.color, factored }));
-  io.stdout(closing(resolve(folder), files));
-  return EXIT.done;
+    ]);
+    const text = summary(derivation, { variables, color: io.color, factored });
+    writeFolder(folder, results);
+    progress.done();
+    io.stdout(text);
+    io.stdout(closing(resolve(folder), files));
+  } finally {
+    progress.done();
+  }
+}
+
+async function derived(theory: Theory, options: DeriveOptions, onStep?: (what: string) => void): Promise<Derivation> {
+  const derivation = derive(theory, onStep);
+  if (!options.covariant && !options.momenta) return derivation;
+  const { withCovariant } = await import('../covariant.js');
+  return withCovariant(derivation, options.momenta ?? false, onStep);
 }
 
 /** The key of the geometry's variables that the user asked for. */

@@ -8,7 +8,8 @@ import { EXIT, type Io } from './io.js';
 const collect = (value: string, previous: string[]): string[] => [...previous, value];
 
 /** Runs the program with the words after its name. @returns the exit code. */
-export async function main(args: readonly string[], io: Io): Promise<number> {
+export async function main(args: readonly string[], world: Io): Promise<number> {
+  const io = { ...world, color: world.color && !args.includes('--no-color') };
   let code: number = EXIT.done;
   const program = new Command('untwist')
     .description('Derives the cosmology of gravity with torsion from a Lagrangian in index notation.')
@@ -29,6 +30,8 @@ export async function main(args: readonly string[], io: Io): Promise<number> {
     )
     .option('--variables <pair>', 'variables of the printed equations: phi,psi or u,v (torsion) or h,f', 'phi,psi')
     .option('--factor', 'also print the functions of the scalar-tensor form in factors')
+    .option('--covariant', 'also derive the field equations in index notation')
+    .option('--momenta', 'the same with the field momenta kept as symbols')
     .option('--json', 'print the JSON alone and write no file')
     .option('--force', 'replace files that exist')
     .addOption(new Option('--no-color', 'no terminal colours'))

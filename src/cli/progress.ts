@@ -19,6 +19,7 @@ export function progressLine(io: Io, now: () => number = () => performance.now()
     },
     done: () => {
       if (drawn) io.stderr('\r\u001b[K');
+      drawn = false;
     },
   };
 }

@@ -1,5 +1,5 @@
 /** Reads the theory file that a command names; `-` is standard input. */
-import { readdirSync, readFileSync, statSync } from 'node:fs';
+import { closeSync, openSync, readdirSync, readSync } from 'node:fs';
 import { basename, dirname } from 'node:path';
 import { InputError } from '../notation/diagnostics.js';
 import { MAX_TEXT } from '../notation/limits.js';
@@ -14,20 +14,38 @@ export interface InputText {
   readonly text: string;
 }
 
+/** A character takes at most four bytes, so a larger file is beyond the limit on characters anyhow. */
+const MAX_BYTES = 4 * MAX_TEXT;
+
+/** Up to `most` bytes of a file. Pipes and devices have no size to ask for, and some never end. */
+function beginning(path: string, most: number): Buffer {
+  const handle = openSync(path, 'r');
+  try {
+    const chunks: Buffer[] = [];
+    for (let total = 0; total < most; ) {
+      const chunk = Buffer.alloc(Math.min(65_536, most - total));
+      const read = readSync(handle, chunk);
+      if (read === 0) break;
+      chunks.push(chunk.subarray(0, read));
+      total += read;
+    }
+    return Buffer.concat(chunks);
+  } finally {
+    closeSync(handle);
+  }
+}
+
 /** @throws InputError `file-missing`, `file-unreadable`, `size-limit`, `not-text`. */
 export async function readInput(path: string, io: Io): Promise<InputText> {
   if (path === '-') return { file: '<stdin>', text: await io.stdin() };
   let bytes: Buffer;
   try {
-    const { size } = statSync(path);
-    // A character takes at most four bytes, so a larger file is beyond the limit on characters anyhow.
-    if (size > 4 * MAX_TEXT)
-      throw refuse('size-limit', `${path} has ${size} bytes`, `the limit is ${MAX_TEXT} characters`);
-    bytes = readFileSync(path);
+    bytes = beginning(path, MAX_BYTES + 1);
   } catch (error) {
-    if (error instanceof InputError) throw error;
     throw unreadable(path, error as NodeJS.ErrnoException);
   }
+  if (bytes.length > MAX_BYTES)
+    throw refuse('size-limit', `${path} has more than ${MAX_BYTES} bytes`, `the limit is ${MAX_TEXT} characters`);
   try {
     return { file: path, text: new TextDecoder('utf-8', { fatal: true }).decode(bytes) };
   } catch {

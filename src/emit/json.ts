@@ -6,7 +6,9 @@ import { symbolsOf } from '../algebra/collect.js';
 import { infix } from '../algebra/infix.js';
 import type { Poly } from '../algebra/poly.js';
 import { printRational } from '../algebra/rational.js';
-import type { Derivation, ScalarTensorForm } from '../derivation.js';
+import type { CovariantTheory, Derivation, ScalarTensorForm } from '../derivation.js';
+import type { TensorSum } from '../tensor/expression.js';
+import { factorsTex } from './latex-tensors.js';
 
 /** Version of the format; it grows when a key changes its meaning. */
 export const FORMAT_VERSION = 1;
@@ -27,6 +29,18 @@ function scalarTensorObject(form: ScalarTensorForm): Record<string, unknown> {
     curvatureObstruction: infix(form.obstruction),
   };
 }
+
+const tensorSum = (sum: TensorSum): { coefficient: string; tensors: string }[] =>
+  sum.map(({ coefficient, factors }) => ({ coefficient: infix(coefficient), tensors: factorsTex(factors).join(' ') }));
+
+const covariantObject = (c: CovariantTheory): Record<string, unknown> => ({
+  lagrangian: tensorSum(c.lagrangian),
+  momenta: { P_abc: tensorSum(c.momenta.torsion), Q_abcd: tensorSum(c.momenta.curvature) },
+  E_ab: tensorSum(c.equations.coframe),
+  E_abc: tensorSum(c.equations.connection),
+  withMomenta: { E_ab: tensorSum(c.withMomenta.coframe), E_abc: tensorSum(c.withMomenta.connection) },
+  metricTerms: tensorSum(c.inMetricTerms),
+});
 
 /** Every polynomial that the JSON prints. */
 function expressions(d: Derivation): Poly[] {
@@ -75,6 +89,7 @@ export function derivationObject(d: Derivation): Record<string, unknown> {
     ...(d.screening ? { screening: d.screening.map(infix) } : {}),
     ...(d.friedmann ? { friedmann: { rho_T: infix(d.friedmann.rhoT), p_T: infix(d.friedmann.pT) } } : {}),
     scalarTensor: scalarTensorObject(d.scalarTensor),
+    ...(d.covariant ? { covariant: covariantObject(d.covariant) } : {}),
     checks: d.checks.map(({ name, holds, detail }) => ({ name, holds, detail })),
     warnings: d.theory.warnings.map((w) => w.message),
   };

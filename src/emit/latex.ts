@@ -5,6 +5,7 @@
 import { remember } from '../algebra/memo.js';
 import type { Derivation } from '../derivation.js';
 import { analogueSection, checksSection, couplingsSection } from './latex-analogue.js';
+import { covariantSection } from './latex-covariant.js';
 import { type LatexOptions, type Passage, type Section, writerOf } from './latex-display.js';
 import { equationsSection, friedmannSection, reductionSection } from './latex-results.js';
 import { commentText, escapeText, proseTex } from './latex-text.js';
@@ -37,6 +38,7 @@ function writeSections(derivation: Derivation, options: LatexOptions): readonly 
     equationsSection(writer),
     friedmannSection(writer),
     analogueSection(writer),
+    covariantSection(writer),
     couplingsSection(writer),
     checksSection(writer),
   ];
@@ -44,7 +46,13 @@ function writeSections(derivation: Derivation, options: LatexOptions): readonly 
 }
 
 /** Sections whose displays a manuscript would take over. */
-const FOR_MANUSCRIPTS: ReadonlySet<string> = new Set(['reduction', 'equations', 'friedmann', 'scalar-tensor']);
+const FOR_MANUSCRIPTS: ReadonlySet<string> = new Set([
+  'reduction',
+  'equations',
+  'friedmann',
+  'scalar-tensor',
+  'covariant',
+]);
 
 /** Labelled displays, ready to \\input into a manuscript. @throws as `latexSections`. */
 export function equationsTex(derivation: Derivation, options: LatexOptions = {}): string {
