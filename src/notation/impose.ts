@@ -33,7 +33,7 @@ function refuse(blame: Blame, name: string | undefined, code: string, message: s
  * @throws InputError `divisor` when a divisor becomes zero or a sum; `terms-limit`, `digits-limit`, `exponent-limit`.
  */
 export function applyImposed(p: Poly, eliminated: ReadonlyMap<string, Poly>, blame: Blame): Poly {
-  if (eliminated.size === 0 || isZero(p)) return p;
+  if (![...eliminated.keys()].some((name) => involves(p, name))) return p;
   refuseDivisors(p, eliminated, blame);
   refuseGrowth(p, eliminated, blame);
   try {
