@@ -53,6 +53,15 @@ export function reasonsOf(sectionId: string, d: Derivation): Reasons {
         ],
         rule: [prose`Einstein's equations of a homogeneous and isotropic universe.`],
       };
+    case 'covariant':
+      return {
+        allowed: [
+          prose`Coframe and connection are varied independently, before any symmetry is imposed. The components of the result on every geometry of this program were compared with the reduced equations there, term by term and exactly.`,
+        ],
+        rule: [
+          prose`Torsion and curvature are the field strengths of coframe and connection, so the variation passes through the field momenta and an integration by parts: ${math('\tfrac{1}{e}partial_{mu}(e V^{mu\nu}) = \nabla_{mu} V^{mu\nu} + T_{mu} V^{mu\nu} - \tfrac{1}{2} T^{\nu}{}_{mulambda} V^{mulambda}')}.`,
+        ],
+      };
     case 'scalar-tensor':
       if (d.scalarTensor.form === 'none')
         return {

@@ -6,9 +6,10 @@ import { isZero, type Poly } from '../algebra/poly.js';
 import type { Derivation } from '../derivation.js';
 import type { FactoredFunction } from '../factored.js';
 import { lagrangianLines, unicodeName } from '../notation/print.js';
+import type { TensorSum } from '../tensor/expression.js';
 import { sumOf, type Viewer, viewerOf } from './display.js';
 import { componentTable } from './display-symbols.js';
-import { dividedText, unicodeTerms } from './unicode.js';
+import { dividedText, unicodeTensorTerms, unicodeTerms } from './unicode.js';
 
 export interface SummaryOptions {
   /** Key of the variables, such as `u,v`. */
@@ -75,6 +76,7 @@ export function summary(d: Derivation, options: SummaryOptions): string {
     );
   section('Friedmann form', friedmannLines(d, viewer));
   section('Metric analogue', analogueLines(d, viewer));
+  section('Covariant field equations of gravity', covariantLines(d, viewer));
   section('In factors', factoredLines(options.factored));
   section('Combinations of couplings that the background sees', d.combinations.map(scalar));
   if (d.screening)
@@ -88,6 +90,22 @@ function screeningText(conditions: readonly Poly[], k: string, scalar: (p: Poly)
   if (conditions.length === 0) return `${k} drops out of the equations`;
   if (conditions.some((p) => symbolsOf(p).length === 0)) return `${k} cannot drop out, whatever the couplings`;
   return `${k} drops out exactly when ${conditions.map((p) => `${scalar(p)} = 0`).join(' and ')}`;
+}
+
+function covariantLines({ covariant }: Derivation, viewer: Viewer): string[] {
+  if (!covariant) return [];
+  const { coframe, connection } = covariant.keepMomenta ? covariant.withMomenta : covariant.equations;
+  const row = (name: string, sum: TensorSum): string[] =>
+    sum.length === 0
+      ? []
+      : wrapped(
+          `${name} = `,
+          unicodeTensorTerms(sum, (p) => viewer.sum(p, { divide: false })),
+        );
+  const momenta = covariant.keepMomenta
+    ? [...row('P_{abc}', covariant.momenta.torsion), ...row('Q_{abcd}', covariant.momenta.curvature)]
+    : [];
+  return [...momenta, ...row('E_{ab}', coframe), ...row('E_{abc}', connection)];
 }
 
 function factoredLines(factored: SummaryOptions['factored']): string[] {

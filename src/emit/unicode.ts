@@ -1,7 +1,12 @@
 /** Display sums as one-line Unicode mathematics for a terminal: 3 M² (φ² − ψ²) H. */
+
+import type { Poly } from '../algebra/poly.js';
 import { bracketed, PRECEDENCE } from '../algebra/precedence.js';
 import { type Rational, signOfRational } from '../algebra/rational.js';
 import { superscript, unicodeName } from '../notation/print.js';
+import type { IndexSlot } from '../notation/theory.js';
+import type { TensorSum, TensorSymbol } from '../tensor/expression.js';
+import { differentiated, isNabla } from '../tensor/variation.js';
 import type { BracketTerm, DisplaySum, DisplayTerm, Factor } from './display.js';
 
 const DOTS = ['', '\u0307', '\u0308', '\u20db'];
@@ -64,6 +69,42 @@ export function unicodeTerms({ terms }: DisplaySum): string[] {
   const bare = terms.length === 1 && first.content.num === first.content.den && first.bracket.length > 0;
   if (bare && first.common.length + first.monomial.length === 0) return [bracketText(first.bracket)];
   return joined(terms.map(termText));
+}
+
+const SUBHEADS: ReadonlyMap<string, string> = new Map([
+  ['epsilon', 'ε'],
+  ['eta', 'η'],
+]);
+
+/** One tensor with its indices as typed, derivatives as ∇. */
+function tensorText({ head, slots }: TensorSymbol): string {
+  const run = (from: readonly IndexSlot[]): string => {
+    let out = '';
+    let height: boolean | undefined;
+    for (const { name, up } of from) {
+      if (up !== height) out += `${out === '' ? '' : '}'}${up ? '^' : '_'}{`;
+      height = up;
+      out += name;
+    }
+    return out === '' ? '' : `${out}}`;
+  };
+  if (isNabla(head))
+    return `∇${run(slots.slice(0, 1))}${tensorText({ head: differentiated(head), slots: slots.slice(1) })}`;
+  return `${SUBHEADS.get(head) ?? head}${run(slots)}`;
+}
+
+/** Terms of a sum of tensors with their signs; `coefficient` writes a polynomial in couplings. */
+export function unicodeTensorTerms(sum: TensorSum, coefficient: (p: Poly) => DisplaySum): string[] {
+  return joined(
+    sum.map(({ coefficient: c, factors }) => {
+      const tensors = factors.map(tensorText).join(' ');
+      const { terms } = coefficient(c);
+      const [only] = terms;
+      if (terms.length !== 1) return { negative: false, text: `(${joined(terms.map(termText)).join(' ')}) ${tensors}` };
+      const { negative, text } = termText(only!);
+      return { negative, text: text === '1' && tensors !== '' ? tensors : `${text} ${tensors}`.trim() };
+    }),
+  );
 }
 
 /** Powers that were divided out, as a divisor of what stands on the left: `/a³`. */
