@@ -7,6 +7,12 @@ async function stdin(): Promise<string> {
   return Buffer.concat(chunks).toString('utf8');
 }
 
+// A reader that has seen enough, such as head, is no fault.
+process.stdout.on('error', (error: NodeJS.ErrnoException) => {
+  if (error.code !== 'EPIPE') throw error;
+  process.exit();
+});
+
 const plain = process.env.NO_COLOR !== undefined || process.argv.includes('--no-color');
 process.exitCode = await main(process.argv.slice(2), {
   stdout: (text) => process.stdout.write(text),

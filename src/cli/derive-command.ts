@@ -14,7 +14,7 @@ import { readInput } from './read-input.js';
 export interface DeriveOptions {
   readonly out?: string;
   readonly set: readonly string[];
-  readonly variables: string;
+  readonly variables?: string;
   readonly factor?: boolean;
   readonly covariant?: boolean;
   readonly momenta?: boolean;
@@ -89,20 +89,18 @@ async function derived(theory: Theory, options: DeriveOptions, onStep?: (what: s
   return withCovariant(derivation, options.momenta ?? false, onStep);
 }
 
-/** The key of the geometry's variables that the user asked for. */
-function chosenVariables({ geometry }: Derivation, asked: string): string {
-  const own = geometry.isotropic?.scalars.join(',') ?? '';
-  const keys = [own, ...geometry.variables.map((v) => v.key)].filter((k) => k !== '');
-  const key = asked.replace(/\s/g, '');
+/** The key of the geometry's variables that the user asked for; the geometry's own when nothing was asked. */
+function chosenVariables({ geometry }: Derivation, asked: string | undefined): string {
+  const own = geometry.fields.map((f) => f.name).filter((name) => name !== geometry.lapse && !geometry.rates.has(name));
+  const keys = [own.join(','), ...geometry.variables.map((v) => v.key)];
+  const key = asked?.replace(/\s/g, '') ?? keys[0]!;
   if (keys.includes(key)) return key;
-  // The default names the variables of the isotropic geometry; other geometries print their own.
-  if (keys.length === 0 && key === 'phi,psi') return own;
   throw new InputError([
     {
       code: 'unknown-variables',
       severity: 'error',
       message: `the geometry ${geometry.id} has no variables ${asked}`,
-      hint: keys.length === 0 ? 'leave --variables out' : `choose one of ${keys.map((k) => `"${k}"`).join(', ')}`,
+      hint: keys.length === 1 ? 'leave --variables out' : `choose one of ${keys.map((k) => `"${k}"`).join(', ')}`,
     },
   ]);
 }

@@ -28,7 +28,7 @@ export async function main(args: readonly string[], world: Io): Promise<number> 
       collect,
       [],
     )
-    .option('--variables <pair>', 'variables of the printed equations: phi,psi or u,v (torsion) or h,f', 'phi,psi')
+    .option('--variables <pair>', 'variables of the printed equations: phi,psi (default), u,v (torsion) or h,f')
     .option('--factor', 'also print the functions of the scalar-tensor form in factors')
     .option('--covariant', 'also derive the field equations in index notation')
     .option('--momenta', 'the same with the field momenta kept as symbols')
