@@ -26,7 +26,8 @@ export interface BracketTerm {
   readonly factors: readonly Factor[];
 }
 
-/** content · common · (Σ bracket) · monomial; the bracket is empty or has at least two terms, the first one positive. */
+/** content · common · (Σ bracket) · monomial; the bracket is empty or has at least two terms, the first
+ * one positive, with integer coefficients unless their common denominator would be large. */
 export interface DisplayTerm {
   readonly content: Rational;
   /** Constants and scales that divide every term of the coefficient. */
@@ -202,14 +203,23 @@ function factored(coefficient: Poly, symbolAt: readonly (DisplaySymbol | undefin
   return { content, common: shared, bracket };
 }
 
-/** The rational number that leaves coprime integers, the first of them positive. */
+/** A common denominator beyond this would make the numbers in the bracket longer than the fractions it saves. */
+const MAX_COMMON_DENOMINATOR = 1000n;
+
+/**
+ * The rational number that leaves coprime integers, the first of them positive; where the denominators have nothing
+ * reasonable in common, only what numerators and denominators share, and fractions stay in the bracket.
+ */
 function contentOf(coefficients: readonly Rational[]): Rational {
   let num = 0n;
-  let den = 1n;
+  let least = 1n;
+  let shared = 0n;
   for (const c of coefficients) {
     num = gcd(num, c.num);
-    den = (den / gcd(den, c.den)) * c.den;
+    least = (least / gcd(least, c.den)) * c.den;
+    shared = gcd(shared, c.den);
   }
+  const den = coefficients.length > 1 && least > MAX_COMMON_DENOMINATOR ? shared : least;
   return rational(coefficients[0]!.num < 0n ? -num : num, den);
 }
 

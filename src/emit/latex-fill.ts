@@ -101,6 +101,17 @@ class Filler {
       this.put(whole);
       return;
     }
+    this.putFactors(factors, reserve);
+  }
+
+  /** The product behind an opening bracket, on the same line if its first factor fits there. */
+  putFirst({ whole, factors }: Product, reserve: number): void {
+    if (widthOf(factors[0]!) > this.room) this.newLine(2);
+    if (widthOf(whole) + reserve <= this.room || factors.length < 2) this.put(whole);
+    else this.putFactors(factors, reserve);
+  }
+
+  private putFactors(factors: readonly string[], reserve: number): void {
     factors.forEach((factor, i) => {
       if (!this.isEmpty && widthOf(factor) + (i === factors.length - 1 ? reserve : 0) > this.room) {
         this.newLine(2);
@@ -146,7 +157,7 @@ export function fillLines(terms: readonly TexTerm[], right: string, { first, res
       filler.put(whole);
     } else {
       if (!filler.isEmpty) filler.newLine(1);
-      fillLongTerm(filler, sign, term, reserve, rest);
+      fillLongTerm(filler, sign, term, reserve, filler.isAtStart ? { first, rest } : { first: rest, rest });
       fresh = true;
     }
   });
@@ -158,30 +169,30 @@ export function fillLines(terms: readonly TexTerm[], right: string, { first, res
 }
 
 /** A term that does not fit on a line of its own: broken inside its bracket, in lines of even length, or between factors. */
-function fillLongTerm(filler: Filler, sign: string, term: TexTerm, reserve: number, rest: number): void {
+function fillLongTerm(filler: Filler, sign: string, term: TexTerm, reserve: number, room: Omit<Room, 'reserve'>): void {
   if (term.inner.length === 0) {
     filler.putProduct(productOf(sign, [...term.head, ...term.tail]), reserve, 1);
     return;
   }
   const bracket = bracketOf(sign, term);
   const linesNeeded = (shortening: number): number => {
-    const trial = new Filler(rest, rest);
+    const trial = new Filler(room.first, room.rest);
     trial.shortening = shortening;
     fillBracket(trial, bracket, reserve);
     return trial.finish().length;
   };
-  if (!filler.isAtStart) {
-    const least = linesNeeded(0);
-    const step = INDENT;
-    while (filler.shortening < rest / 2 && linesNeeded(filler.shortening + step) === least) filler.shortening += step;
-  }
+  const least = linesNeeded(0);
+  while (filler.shortening < room.rest / 2 && linesNeeded(filler.shortening + INDENT) === least)
+    filler.shortening += INDENT;
   fillBracket(filler, bracket, reserve);
   filler.shortening = 0;
 }
 
-/** The terms of a bracket, the first with everything in front of it, and what follows the last. */
 interface Bracket {
+  /** Sign, factors in front and the opening bracket. */
+  readonly opening: Product;
   readonly products: readonly Product[];
+  /** The closing bracket and the factors behind it. */
   readonly closing: string;
 }
 
@@ -193,19 +204,22 @@ function bracketOf(sign: string, term: TexTerm): Bracket {
   brackets.set(term, known);
   return remember(known, sign, () => {
     const [open, close] = bracketsFor(inlineTex(term.inner), true);
-    const products = term.inner.map((inner, i) => {
-      const mark = inner.negative ? '-' : i === 0 ? '' : '+';
-      const before = i === 0 ? joined(sign, ...term.head, open, mark) : mark;
-      return productOf(before, inner.inner.length > 0 ? [flatTerm(inner)] : inner.head);
-    });
-    return { products, closing: joined(close, ...term.tail) };
+    const products = term.inner.map((inner, i) =>
+      productOf(inner.negative ? '-' : i === 0 ? '' : '+', inner.inner.length > 0 ? [flatTerm(inner)] : inner.head),
+    );
+    const last = term.head.at(-1);
+    const opening = productOf(sign, last === undefined ? [open] : [...term.head.slice(0, -1), `${last} ${open}`]);
+    return { opening, products, closing: joined(close, ...term.tail) };
   });
 }
 
-function fillBracket(filler: Filler, { products, closing }: Bracket, reserve: number): void {
+function fillBracket(filler: Filler, { opening, products, closing }: Bracket, reserve: number): void {
   const end = widthOf(closing) + reserve;
+  const isLast = (i: number): boolean => i === products.length - 1;
+  filler.putProduct(opening, products.length > 0 ? widthOf(products[0]!.factors[0]!) : 0, 1);
   products.forEach((product, i) => {
-    filler.putProduct(product, i === products.length - 1 ? end : 0, i === 0 ? 1 : 2);
+    if (i === 0) filler.putFirst(product, isLast(i) ? end : 0);
+    else filler.putProduct(product, isLast(i) ? end : 0, 2);
   });
   if (end > filler.room && !filler.isEmpty) filler.newLine(2);
   filler.put(closing);

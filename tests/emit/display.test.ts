@@ -4,6 +4,7 @@ import { isCanonical } from '../../src/algebra/poly.js';
 import {
   addRational,
   equalRational,
+  gcd,
   multiplyRational,
   ONE,
   powerRational,
@@ -62,7 +63,10 @@ describe.each(FIXTURES)('display of %s', (name) => {
         if (bracket.length === 0) continue;
         expect(bracket.length).toBeGreaterThan(1);
         expect(signOfRational(bracket[0]!.coefficient)).toBe(1);
-        expect(bracket.every((t) => t.coefficient.den === 1n)).toBe(true);
+        const denominators = bracket.map((t) => t.coefficient.den);
+        const common = denominators.reduce((a, b) => (a / gcd(a, b)) * b, 1n);
+        expect(common === 1n || common > 1000n).toBe(true);
+        expect(bracket.reduce((a, t) => gcd(a, t.coefficient.num), 0n)).toBe(1n);
         const shared = bracket[0]!.factors.filter(({ symbol, exponent }) =>
           bracket.every((t) =>
             t.factors.some((f) => f.symbol === symbol && Math.sign(f.exponent) === Math.sign(exponent)),

@@ -16,6 +16,31 @@ matter: [ dust, radiation, { vacuum: Lambda }, { fluid: chi, w: "1/5" } ]
 symbols: { c0: '\\alpha_0' }
 `;
 
+/** Sixty couplings with denominators that have little in common, signature +−−−. */
+const MANY = ((): string => {
+  const invariants = [
+    'R^2',
+    'R_{ab} R^{ab}',
+    'M^2 T_{abc} T^{abc}',
+    'R T_a A^a',
+    'R_{abcd} T^{abe} T^{cd}{}_e',
+    'R^3/M^2',
+  ];
+  const names = Array.from({ length: 60 }, (_, i) => `kappa${i}`);
+  const term = (name: string, i: number): string =>
+    `  ${i % 3 === 0 ? '-' : '+'} ${i + 1}/${(i % 7) + 1} ${name} ${invariants[i % 6]} + ${name}/${i + 2} ${invariants[(i * 5) % 3]}`;
+  return `
+name: Many couplings
+conventions: { signature: "+---" }
+constants: [${names.join(', ')}]
+scales: { M: mass }
+lagrangian: |
+  1/2 M^2 R
+${names.map(term).join('\n')}
+symbols: { kappa1: '\\mathrm{coupling}_{\\mathrm{long}}', kappa2: '\\hat{\\kappa}^{12}' }
+`;
+})();
+
 const TEXTS = {
   'ten-couplings': `name: Ten couplings${TEN}`,
   'with-relations': `name: With relations${TEN}impose: [ "a1 = 0", "b1 = -2 b3", "a2^2 = a3^2" ]\n`,
@@ -41,6 +66,7 @@ lagrangian: |
 matter: [ { fluid: quintessencelikefluidwithalongname, w: "-1/3" }, { fluid: stiff, w: 1 } ]
 symbols: { delta: "c'", epsilonprime: '\\tilde{c}^{\\star}_{1}', w2: '\\mathcal{W}' }
 `,
+  'many-couplings': MANY,
   anisotropic: `
 name: Anisotropic
 constants: [c0, a1, b1]
