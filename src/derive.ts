@@ -35,7 +35,7 @@ import { UNIT } from './notation/scalar-term.js';
 import type { LagrangianTerm, MatterComponent, Theory } from './notation/theory.js';
 import { biScalarForm, type Gravity } from './scalartensor/biscalar.js';
 import { ContractionLimitError } from './tensor/contraction.js';
-import { dummyFreeKey } from './tensor/invariants.js';
+import { dummyFreeKey, NoComponentsError } from './tensor/invariants.js';
 
 /** Symbol of the reduced Planck mass in the Friedmann form. */
 const PLANCK_MASS = 'M';
@@ -164,11 +164,16 @@ function refuseFieldNames(theory: Theory, geometry: Geometry): void {
   );
 }
 
-/** A limit that is exceeded while a product is reduced is the theory's fault, and the product is named. */
+/** What keeps a product from being reduced is the theory's fault, and the product is named. */
 function withinLimits(factors: LagrangianTerm['factors'], reduce: () => Poly): Poly {
   try {
     return reduce();
   } catch (error) {
+    if (error instanceof NoComponentsError) {
+      const message = `${printLagrangian([{ scalar: UNIT, factors }])} cannot be reduced: ${error.message} on a geometry`;
+      const hint = 'a Lagrangian that is reduced is made of R, T, A, \\epsilon, \\eta and \\delta';
+      throw new InputError([{ code: 'unknown-tensor', severity: 'error', message, hint }]);
+    }
     if (!(error instanceof ReductionLimitError || error instanceof ContractionLimitError)) throw error;
     const product = printLagrangian([{ scalar: UNIT, factors }]);
     const message = `the product ${product} is too large for this program: ${error.message}`;

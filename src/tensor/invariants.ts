@@ -26,6 +26,16 @@ export interface InvariantEvaluator {
   tensor(factor: TensorFactor): SparseTensor;
 }
 
+/** Thrown for a tensor without components on a geometry: a declared one, or an irreducible part that was not written out. */
+export class NoComponentsError extends Error {
+  constructor({ head, part }: TensorFactor) {
+    super(
+      part === undefined ? `the tensor ${head} has no components` : `the part ${part} of ${head} is not written out`,
+    );
+    this.name = 'NoComponentsError';
+  }
+}
+
 /** Sign of a permutation of 0..n-1, or 0 when an entry repeats. */
 function permutationSign(indices: readonly number[]): number {
   let sign = 1;
@@ -61,13 +71,13 @@ function metricTensor(ring: Ring, metric: FrameMetric): SparseTensor {
 export function dummyFreeKey(factors: readonly TensorFactor[]): string {
   const seen = new Map<string, number>();
   return factors
-    .map(({ head, slots }) => {
+    .map(({ head, part, slots }) => {
       const numbers = slots.map(({ name }) => {
         const known = seen.get(name) ?? seen.size;
         seen.set(name, known);
         return known;
       });
-      return `${head}(${numbers})`;
+      return part === undefined ? `${head}(${numbers})` : `${head}.${part}(${numbers})`;
     })
     .join('');
 }
@@ -83,7 +93,9 @@ export function makeEvaluator(tensors: GeometricTensors): InvariantEvaluator {
   const volume = () => derive('volume', () => volumeTensor(ring));
   const eta = () => derive('eta', () => metricTensor(ring, metric));
 
-  function tensorOf({ head, slots }: TensorFactor): SparseTensor {
+  function tensorOf(factor: TensorFactor): SparseTensor {
+    const { head, slots } = factor;
+    if (factor.part !== undefined) throw new NoComponentsError(factor);
     switch (head) {
       case 'R':
         if (slots.length === 4) return curvature;
@@ -94,9 +106,12 @@ export function makeEvaluator(tensors: GeometricTensors): InvariantEvaluator {
         return derive('axial', () => axialOf(volume(), torsion, metric, ring));
       case 'epsilon':
         return volume();
-      default:
+      case 'eta':
+      case 'delta':
         // With all indices lowered, δ^a_b has the components of η_ab.
         return eta();
+      default:
+        throw new NoComponentsError(factor);
     }
   }
 
