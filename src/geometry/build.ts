@@ -69,6 +69,7 @@ export function buildGeometry(id: string, file: GeometryFile, metric: FrameMetri
   const symbols = makeRing(constantsOf(named.map((c) => c.name)));
   const symbolic = (tensor: SparseTensor): SparseTensor => inSymbols(tensor, named, symbols);
   const volume = product(file.ring, file.coframe);
+  const traceless = isTraceless(frame);
   return {
     id,
     title: file.title,
@@ -85,12 +86,13 @@ export function buildGeometry(id: string, file: GeometryFile, metric: FrameMetri
     tensors: { ring: symbols, metric, torsion: symbolic(torsion), curvature: symbolic(curvature) },
     frame,
     connection,
+    traceless,
     volume,
     spatialVolume: product(file.ring, [volume, generator(file.ring, file.lapse, -1)]),
     metricCurvature: metricCurvature(frame),
     checks: [
       { name: 'dd = 0 on the cobasis', holds: true },
-      { name: 'structure constants have zero trace', holds: true },
+      ...(traceless ? [{ name: 'structure constants have zero trace', holds: true }] : []),
       { name: 'the metric connection has no torsion', holds: true },
     ],
   };
@@ -109,10 +111,7 @@ const refusal = (id: string, code: string, message: string, hint: string): Input
   return new InputError([diagnostic]);
 };
 
-/**
- * dd = 0 is the Jacobi identity of the structure constants. A non-zero trace Σ_i C^i_ji makes varying after symmetry
- * reduction give wrong equations (common practice: class B of the Bianchi types), so such a cobasis is refused.
- */
+/** dd = 0 is the Jacobi identity of the structure constants. */
 function refuseBadCobasis(id: string, frame: FrameData): void {
   const { structure } = frame;
   if (structure[TIME_FORM]!.size > 0 || structure.some((f) => [...f.keys()].some((m) => bitsOf(m).includes(TIME_FORM))))
@@ -125,16 +124,21 @@ function refuseBadCobasis(id: string, frame: FrameData): void {
         `d(d θ^${i}) is not zero`,
         'the structure constants violate the Jacobi identity',
       );
-  for (const j of [1, 2, 3]) {
-    const diagonal = [1, 2, 3].flatMap((i) => twoFormComponent(structure[i]!, i, j) ?? []);
-    if (!isZero(sum(frame.ring, diagonal)))
-      throw refusal(
-        id,
-        'geometry-class-b',
-        'the structure constants of the cobasis have a non-zero trace',
-        'varying a Lagrangian after imposing such a symmetry gives wrong equations; use a cobasis of class A',
-      );
-  }
+}
+
+/**
+ * Whether Σ_i C^i_ji = 0 for all j. With a trace, varying a Lagrangian after the symmetry has been imposed gives wrong
+ * equations (common practice: class B of the Bianchi types).
+ */
+function isTraceless({ structure, ring }: FrameData): boolean {
+  return [1, 2, 3].every((j) =>
+    isZero(
+      sum(
+        ring,
+        [1, 2, 3].flatMap((i) => twoFormComponent(structure[i]!, i, j) ?? []),
+      ),
+    ),
+  );
 }
 
 /** Adds Γ^b_a from Γ^a_b by Γ_ab = −Γ_ba. */

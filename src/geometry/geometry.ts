@@ -63,6 +63,8 @@ export interface Geometry {
   /** Cobasis, coframe and connection themselves, in `ring`. */
   readonly frame: FrameData;
   readonly connection: Connection;
+  /** Whether the structure constants have zero trace, which makes varying after symmetry reduction legitimate. */
+  readonly traceless: boolean;
   /** Determinant of the coframe, in `ring`: a³N on an isotropic geometry. */
   readonly volume: Poly;
   /** The same without the lapse. */
