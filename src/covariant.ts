@@ -21,6 +21,15 @@ import {
   variationKinds,
 } from './tensor/variation.js';
 
+/** What the covariant equations are derived from. */
+export type CovariantInput = Pick<Derivation, 'theory' | 'ring' | 'terms'>;
+
+/** Geometries on which varying after symmetry reduction is legitimate. */
+const comparable = (d: CovariantInput): Geometry[] =>
+  geometryNames()
+    .map((id) => loadGeometry(id, d.theory.signature))
+    .filter((g) => g.traceless);
+
 /** The derivation with its covariant equations, whose checks join the others. @throws as `covariantTheory`. */
 export function withCovariant(d: Derivation, keepMomenta: boolean, onStep?: (what: string) => void): Derivation {
   const covariant = covariantTheory(d, keepMomenta, onStep);
@@ -32,7 +41,7 @@ export function withCovariant(d: Derivation, keepMomenta: boolean, onStep?: (wha
  * @throws Error when a component differs from the reduced equations on some geometry: the program would be wrong.
  */
 export function covariantTheory(
-  d: Derivation,
+  d: CovariantInput,
   keepMomenta = false,
   onStep: (what: string) => void = () => {},
 ): CovariantTheory {
@@ -43,9 +52,9 @@ export function covariantTheory(
   const symbols = momentumSymbols(momenta, constant(d.ring, 1));
   const withMomenta = fieldEquations(lagrangian, symbols, kinds);
   const metricTerms = inMetricTerms(lagrangian, metricKinds());
-  const checks = geometryNames().flatMap((id): Check[] => {
+  const checks = comparable(d).flatMap((geometry): Check[] => {
+    const { id } = geometry;
     onStep(`comparing components on ${id}`);
-    const geometry = loadGeometry(id, d.theory.signature);
     const { fields, sameValue } = compare(d, geometry, equations, metricTerms);
     if (fields.length > 0)
       throw new Error(`the covariant equations differ from the reduced ones of ${fields} on ${id}`);
@@ -63,27 +72,26 @@ export function covariantTheory(
 /**
  * Where the components of field equations differ from the reduced equations, as `geometry: field`; empty when they agree.
  */
-export const covariantMismatches = (d: Derivation, equations: CovariantEquations): string[] =>
-  geometryNames().flatMap((id) => {
-    const geometry = loadGeometry(id, d.theory.signature);
-    return compare(d, geometry, equations, d.terms).fields.map((q) => `${id}: ${q}`);
+export const covariantMismatches = (d: CovariantInput, equations: CovariantEquations): string[] =>
+  comparable(d).flatMap((geometry) => {
+    return compare(d, geometry, equations, d.terms).fields.map((q) => `${geometry.id}: ${q}`);
   });
 
-/** Jets of a geometry and every constant of a derivation. */
-function ringWith(geometry: Geometry, d: Derivation): Ring {
+/** Jets of a geometry and every constant of a ring. */
+export function ringWith(geometry: Geometry, ring: Ring): Ring {
   const known = new Set(geometry.ring.generators.map((g) => g.name));
-  const constants = d.ring.generators.filter((g) => g.kind === 'constant' && !known.has(g.name)).map((g) => g.name);
+  const constants = ring.generators.filter((g) => g.kind === 'constant' && !known.has(g.name)).map((g) => g.name);
   return makeRing([...geometry.ring.generators, ...constantsOf(constants)]);
 }
 
 /** Fields whose reduced equation differs from the projection of the covariant ones; whether the metric form agrees. */
 function compare(
-  d: Derivation,
+  d: CovariantInput,
   geometry: Geometry,
   equations: CovariantEquations,
   metricTerms: TensorSum,
 ): { readonly fields: readonly string[]; readonly sameValue: boolean } {
-  const ring = ringWith(geometry, d);
+  const ring = ringWith(geometry, d.ring);
   const reduced: Poly = sum(
     ring,
     d.terms.map(({ coefficient, factors }) =>

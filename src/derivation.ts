@@ -112,6 +112,8 @@ export interface Derivation {
   readonly dropped: Poly;
   /** Field → ∂L/∂q − d/dt ∂L/∂q̇ of `lagrangian`, in the order of the geometry's fields. */
   readonly equations: ReadonlyMap<string, Poly>;
+  /** Further components of the field equations that no field's equation contains; only where they are known. */
+  readonly constraints?: ReadonlyMap<string, Poly>;
   /** Linearly independent combinations of couplings on which the background depends. */
   readonly combinations: readonly Poly[];
   /** Polynomials in the couplings that must all vanish for k to drop out; undefined when the geometry has no k. */

@@ -3,6 +3,7 @@ import { resolve } from 'node:path';
 import type { Derivation } from '../derivation.js';
 import { derive } from '../derive.js';
 import { derivationJson } from '../emit/json.js';
+import { loadGeometry } from '../geometry/build.js';
 import { InputError, renderDiagnostic } from '../notation/diagnostics.js';
 import { readTheory } from '../notation/read-theory.js';
 import type { Theory } from '../notation/theory.js';
@@ -83,10 +84,12 @@ async function writeResults(theory: Theory, options: DeriveOptions, io: Io): Pro
 }
 
 async function derived(theory: Theory, options: DeriveOptions, onStep?: (what: string) => void): Promise<Derivation> {
-  const derivation = derive(theory, onStep);
-  if (!options.covariant && !options.momenta) return derivation;
+  if (!options.covariant && !options.momenta) return derive(theory, onStep);
+  const keepMomenta = options.momenta ?? false;
+  if (!loadGeometry(theory.geometry, theory.signature).traceless)
+    return (await import('../class-b.js')).deriveClassB(theory, keepMomenta, onStep);
   const { withCovariant } = await import('../covariant.js');
-  return withCovariant(derivation, options.momenta ?? false, onStep);
+  return withCovariant(derive(theory, onStep), keepMomenta, onStep);
 }
 
 /** The key of the geometry's variables that the user asked for; the geometry's own when nothing was asked. */

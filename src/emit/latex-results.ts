@@ -25,7 +25,7 @@ export function reductionSection(writer: Writer): Section {
           prose`The Lagrangian times the volume ${math(`${lapse} ${volume}`)}, with the symmetry imposed${fluids.length > 0 ? ' and matter included' : ''}, is`,
         ],
         remarks: [
-          prose`The lapse is in the volume and in every dot and rate; nothing else depends on it, as the invariance under changes of time demands. Imposing the symmetry before the variation is allowed here because the structure constants of the cobasis have no trace.`,
+          prose`The lapse is in the volume and in every dot and rate; nothing else depends on it, as the invariance under changes of time demands. ${geometry.traceless ? 'Imposing the symmetry before the variation is allowed here because the structure constants of the cobasis have no trace.' : 'It must not be varied, because the structure constants of the cobasis have a trace.'}`,
         ],
       },
       equationOf(viewer, 'L', lagrangian, { over }),
@@ -66,10 +66,13 @@ export function equationsSection(writer: Writer): Section {
     '\\frac{\\partial L}{\\partial q} - \\frac{\\mathrm{d}}{\\mathrm{d} t} \\frac{\\partial L}{\\partial \\dot{q}}',
   );
   const remark = prose`in which ${math(`${latex(geometry.lapse)} = 1`)} after the variation. The power of the scale factor on the left is divided out.${viewer.variables ? ' They are the equations of the original fields; only the variables in them are others.' : ''}`;
+  const source = geometry.traceless
+    ? prose`The equations of the Lagrangian with matter are the vanishing of`
+    : prose`The equations are components of the covariant ones, written as if they were`;
   const intro = passage(
     'euler-lagrange',
     'Variation',
-    { text: [prose`The equations of the Lagrangian with matter are the vanishing of`], remarks: [remark] },
+    { text: [source], remarks: [remark] },
     rowDisplays([definition]),
   );
   const each = [...equations].map(([q, value]) => {
@@ -80,7 +83,15 @@ export function equationsSection(writer: Writer): Section {
     const lines = equationOf(viewer, `E_{${field.latex}}`, value, { right: isZero(value) ? '' : '= 0' });
     return passage(`equation-${q}`, `Equation of the ${field.meaning}`, { text: [text] }, lines);
   });
-  return { id: 'equations', title: 'Field equations', passages: [intro, ...each] };
+  const further = [...(derivation.constraints ?? [])].map(([name, value]) =>
+    passage(
+      `component-${name.slice(2)}`,
+      `Component ${name.slice(2)}`,
+      { text: [prose`A component of the field equations that is no equation of a field:`] },
+      equationOf(viewer, `E_{${name.slice(2)}}`, value, { right: '= 0' }),
+    ),
+  );
+  return { id: 'equations', title: 'Field equations', passages: [intro, ...each, ...further] };
 }
 
 /** ρ_T, p_T, w_T. */

@@ -29,6 +29,13 @@ export function reasonsOf(sectionId: string, d: Derivation): Reasons {
         rule: [prose`Cartan's structure equations.`, prose`${d.geometry.source}.`],
       };
     case 'reduction':
+      if (!d.geometry.traceless)
+        return {
+          allowed: [
+            prose`The value of the Lagrangian is shown for information. The structure constants of the cobasis have a trace, so varying it would give wrong equations; they are taken from the covariant ones.`,
+          ],
+          rule: [prose`Symmetric criticality, Commun. Math. Phys. 69 (1979) 19, whose condition fails here.`],
+        };
       return {
         allowed: [
           prose`A Lagrangian may be varied after the symmetry has been imposed when the structure constants of the cobasis have zero trace; this geometry was checked for it. A total derivative has identically vanishing Euler–Lagrange expressions.`,

@@ -76,6 +76,7 @@ export function summary(d: Derivation, options: SummaryOptions): string {
     );
   section('Friedmann form', friedmannLines(d, viewer));
   section('Metric analogue', analogueLines(d, viewer));
+  section('Further components of the field equations', constraintLines(d, viewer));
   section('Covariant field equations of gravity', covariantLines(d, viewer));
   section('In factors', factoredLines(options.factored));
   section('Combinations of couplings that the background sees', d.combinations.map(scalar));
@@ -91,6 +92,11 @@ function screeningText(conditions: readonly Poly[], k: string, scalar: (p: Poly)
   if (conditions.some((p) => symbolsOf(p).length === 0)) return `${k} cannot drop out, whatever the couplings`;
   return `${k} drops out exactly when ${conditions.map((p) => `${scalar(p)} = 0`).join(' and ')}`;
 }
+
+const constraintLines = ({ constraints }: Derivation, viewer: Viewer): string[] =>
+  [...(constraints ?? [])].flatMap(([name, p]) =>
+    wrapped(`${name} = `, unicodeTerms(viewer.sum(p, { divide: false }))),
+  );
 
 function covariantLines({ covariant }: Derivation, viewer: Viewer): string[] {
   if (!covariant) return [];

@@ -157,19 +157,9 @@ class Expansion {
   }
 
   private collect(terms: readonly LagrangianTerm[], node: Span): readonly LagrangianTerm[] {
-    const byKey = new Map<string, LagrangianTerm>();
-    for (const term of terms) {
-      const key = termKey(term);
-      const before = byKey.get(key);
-      if (before === undefined) byKey.set(key, term);
-      else {
-        const coefficient = addRational(before.scalar.coefficient, term.scalar.coefficient);
-        byKey.set(key, this.checked({ ...before, scalar: { coefficient, powers: term.scalar.powers } }, node));
-      }
-    }
-    const collected = [...byKey.values()].filter((term) => term.scalar.coefficient.num !== 0n);
+    const collected = collectTerms(terms);
     if (collected.length > MAX_TERMS) this.tooManyTerms(node);
-    return collected;
+    return collected.length === terms.length ? collected : collected.map((term) => this.checked(term, node));
   }
 
   private typed(node: Span): string {
@@ -194,6 +184,23 @@ const negated = (term: LagrangianTerm): LagrangianTerm => ({
   ...term,
   scalar: { ...term.scalar, coefficient: negateRational(term.scalar.coefficient) },
 });
+
+/** Like terms added up, in the order of first appearance; no limits are checked. */
+export function collectTerms(terms: readonly LagrangianTerm[]): readonly LagrangianTerm[] {
+  const byKey = new Map<string, LagrangianTerm>();
+  for (const term of terms) {
+    const key = termKey(term);
+    const before = byKey.get(key);
+    const { coefficient, powers } = term.scalar;
+    if (before === undefined) byKey.set(key, term);
+    else
+      byKey.set(key, {
+        ...before,
+        scalar: { coefficient: addRational(before.scalar.coefficient, coefficient), powers },
+      });
+  }
+  return [...byKey.values()].filter((term) => term.scalar.coefficient.num !== 0n);
+}
 
 /** Equal for terms that differ in the coefficient or in the order of factors only. */
 function termKey({ scalar, factors }: LagrangianTerm): string {

@@ -9,6 +9,7 @@ import { MAX_SYMBOLS } from './limits.js';
 import { nameFault } from './names.js';
 import { nearest } from './suggest.js';
 import type { Origin, SymbolRole, TheorySymbol } from './theory.js';
+import { PLANCK_MASS, UNIT_SYMBOLS, type UnitSymbol, type Units } from './units.js';
 import { asList, asMap, asText } from './yaml-shape.js';
 import type { YamlNode, YamlText } from './yaml-source.js';
 import { passageOf } from './yaml-text.js';
@@ -77,6 +78,24 @@ export function readConstants(node: YamlNode, declarations: Declarations, proble
 export function readScales(node: YamlNode, declarations: Declarations, problems: Diagnostic[]): void {
   for (const { key, value } of asMap(node, 'scales', problems)?.entries.values() ?? []) {
     declare(key, 'scale', readDimension(value, key.text, problems), declarations, problems);
+  }
+}
+
+/**
+ * Declares the symbols that the units bring with them, and M into which they are translated, unless they are declared
+ * already. Reports `unit-symbol` for a declaration that means something else.
+ */
+export function declareUnits(units: Units, origin: Origin, declarations: Declarations, problems: Diagnostic[]): void {
+  const symbols: readonly UnitSymbol[] = UNIT_SYMBOLS[units];
+  if (symbols.length === 0) return;
+  const mass = { name: PLANCK_MASS, role: 'scale', dimension: 1 } as const;
+  for (const { name, role, dimension } of [mass, ...symbols]) {
+    const before = declarations.get(name);
+    if (before === undefined) declarations.set(name, { name, role, dimension, origin });
+    else if (before.dimension !== dimension) {
+      const message = `${name} has another meaning in the units ${units}, with the dimension mass^${dimension}`;
+      problems.push(errorAt(before.origin, 'unit-symbol', message, 'leave the declaration out, or rename the symbol'));
+    }
   }
 }
 

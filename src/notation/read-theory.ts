@@ -2,17 +2,21 @@
  * A theory file → Theory: YAML, declarations, Lagrangian, relations, matter. Independent faults are reported together;
  * what only follows from another fault (a name unknown because its declaration is broken) is not.
  */
+
+import { INTERNAL, internalWith, translate } from './conventions.js';
 import { type Diagnostic, errorAt, InputError, warningAt } from './diagnostics.js';
 import { readLagrangian } from './lagrangian.js';
 import { MAX_DIAGNOSTICS, MAX_TEXT } from './limits.js';
 import { reservedMeaning } from './names.js';
 import { type Passage, plainPassage } from './passage.js';
+import { readConventions } from './read-conventions.js';
 import { readMatter } from './read-matter.js';
-import { type Declarations, namedSymbols, readConstants, readScales } from './read-symbols.js';
+import { type Declarations, declareUnits, namedSymbols, readConstants, readScales } from './read-symbols.js';
 import { readTensors } from './read-tensors.js';
-import { parseRelation } from './scalar.js';
+import { parseRelation, relationToMass } from './scalar.js';
 import { slugOf } from './slug.js';
 import type { DeclaredTensor, LagrangianTerm, MatterComponent, Relation, Theory, TheorySymbol } from './theory.js';
+import { PLANCK_MASS, UNIT_SYMBOLS, type Units } from './units.js';
 import { asRecord, asText } from './yaml-shape.js';
 import { readYaml, type YamlNode } from './yaml-source.js';
 import { passageOf } from './yaml-text.js';
@@ -44,12 +48,15 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
   };
   read('untwist', (node) => checkVersion(node, problems), undefined);
   const name = read('name', (node) => readName(node, problems), 'theory');
-  const signature = read('conventions', (node) => readSignature(node, problems), '-+++' as const);
+  const conventions = read('conventions', (node) => readConventions(node, problems), INTERNAL);
   const declarations: Declarations = new Map();
   read('constants', (node) => readConstants(node, declarations, problems), undefined);
   read('scales', (node) => readScales(node, declarations, problems), undefined);
+  const { units } = conventions;
+  read('conventions', (node) => declareUnits(units, node.origin, declarations, problems), undefined);
   const matter = read('matter', (node) => readMatter(node, declarations, problems), []);
   const tensors = read('tensors', (node) => readTensors(node, declarations, problems), []);
+  refuseUnitDensities(values.get('matter'), matter, units, problems);
   const geometry = read('geometry', (node) => readGeometryName(node, problems), DEFAULT_GEOMETRY);
 
   // An unknown name may only follow from a fault among the declarations, or from a misspelt key.
@@ -57,14 +64,55 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
   const keep = (more: readonly Diagnostic[]): void => {
     problems.push(...more.filter((p) => declarationsStand || !NAME_FAULTS.has(p.code)));
   };
-  const symbols = namedSymbols(values.get('symbols'), declarations, problems, warnings);
-  const lagrangian = read('lagrangian', (node) => readTerms(node, symbols, tensors, keep, warnings), []);
-  const relations = readRelations(values.get('impose'), options.set ?? [], symbols, matter, keep);
+  const named = namedSymbols(values.get('symbols'), declarations, problems, warnings);
+  const typed = read('lagrangian', (node) => readTerms(node, named, tensors, keep, warnings), []);
+  const typedRelations = readRelations(values.get('impose'), options.set ?? [], named, matter, keep);
   if (problems.length > 0) throw new InputError(limited(inOrder(problems)));
-  warnings.push(...unusedWarnings(declarations, tensors, lagrangian, relations));
-  const slug = slugOf(name);
-  const content = { symbols, tensors, lagrangian, relations, matter };
-  return { name, slug, signature, ...content, geometry, warnings: inOrder(warnings) };
+  warnings.push(...unusedWarnings(declarations, units, tensors, typed, typedRelations));
+  const { signature } = conventions;
+  const lagrangian = translate(typed, conventions, internalWith(signature));
+  if (lagrangian.length === 0) {
+    const place = values.get('lagrangian')!.origin;
+    throw new InputError([
+      errorAt(place, 'empty-lagrangian', 'the Lagrangian is zero', `its terms cancel in the units ${units}`),
+    ]);
+  }
+  const relations = typedRelations.map((relation) => relationToMass(relation, units));
+  const used = usedNames(lagrangian, relations);
+  const isUnit = ({ name: n }: TheorySymbol): boolean => unitNames(units).includes(n) && !used.has(n);
+  return {
+    name,
+    slug: slugOf(name),
+    conventions,
+    signature,
+    symbols: named.filter((s) => !isUnit(s)),
+    unitSymbols: named.filter(isUnit),
+    tensors,
+    lagrangian,
+    relations,
+    matter,
+    geometry,
+    warnings: inOrder(warnings),
+  };
+}
+
+const unitNames = (units: Units): readonly string[] => UNIT_SYMBOLS[units].map((symbol) => symbol.name);
+
+function refuseUnitDensities(
+  node: YamlNode | undefined,
+  matter: readonly MatterComponent[],
+  units: Units,
+  problems: Diagnostic[],
+): void {
+  const density = matter.find((m) => unitNames(units).includes(m.density))?.density;
+  if (node === undefined || density === undefined) return;
+  const message = `${density} is a unit and no energy density`;
+  problems.push(errorAt(node.origin, 'unit-symbol', message, 'give the vacuum density another name'));
+}
+
+function usedNames(lagrangian: readonly LagrangianTerm[], relations: readonly Relation[]): ReadonlySet<string> {
+  const scalars = [...lagrangian.map((t) => t.scalar), ...relations.flatMap((r) => [...r.left, ...r.right])];
+  return new Set(scalars.flatMap(({ powers }) => powers.map(([name]) => name)));
 }
 
 const CAN_HIDE_NAMES = new Set(['unknown-key', 'wrong-kind', 'bad-name', 'unknown-matter', 'missing-key', 'bad-slots']);
@@ -85,18 +133,6 @@ function readName(node: YamlNode, problems: Diagnostic[]): string {
   if (name.length > MAX_TITLE) fault(`the name has more than ${MAX_TITLE} characters`, 'choose a shorter one');
   if (/\p{Cc}/u.test(name)) fault('the name contains a control character', 'remove it');
   return name;
-}
-
-function readSignature(node: YamlNode, problems: Diagnostic[]): Theory['signature'] {
-  const value = asRecord(node, 'conventions', { required: [], optional: ['signature'] }, problems).get('signature');
-  const typed = value === undefined ? '-+++' : asText(value, 'signature', problems)?.text;
-  const signature = typed?.replace(/[−–]/g, '-').replace(/[\s,()]/g, '');
-  if (signature === '-+++' || signature === '+---') return signature;
-  if (value !== undefined && typed !== undefined) {
-    const message = `${JSON.stringify(typed.slice(0, 40))} is not a signature`;
-    problems.push(errorAt(value.origin, 'bad-signature', message, 'write "-+++" or "+---"'));
-  }
-  return '-+++';
 }
 
 function readGeometryName(node: YamlNode, problems: Diagnostic[]): string {
@@ -184,16 +220,16 @@ function readRelations(
 /** Constants, scales and tensors that occur neither in the Lagrangian nor in a relation. */
 function unusedWarnings(
   declarations: Declarations,
+  units: Units,
   tensors: readonly DeclaredTensor[],
   lagrangian: readonly LagrangianTerm[],
   relations: readonly Relation[],
 ): readonly Diagnostic[] {
-  const used = new Set<string>();
-  const scalars = [...lagrangian.map((t) => t.scalar), ...relations.flatMap((r) => [...r.left, ...r.right])];
-  for (const { powers } of scalars) for (const [name] of powers) used.add(name);
+  const used = usedNames(lagrangian, relations);
+  // M defines the Friedmann form whether the Lagrangian contains it or not.
+  const needless = new Set([PLANCK_MASS, ...unitNames(units)]);
   const unused = [...declarations.values()].filter(
-    // M defines the Friedmann form whether the Lagrangian contains it or not.
-    ({ name, role }) => !used.has(name) && role !== 'vacuum' && !(role === 'scale' && name === 'M'),
+    ({ name, role }) => !used.has(name) && role !== 'vacuum' && !needless.has(name),
   );
   const heads = new Set(lagrangian.flatMap((t) => t.factors.map((f) => f.head)));
   const idle = tensors.flatMap(({ name, origin }) =>

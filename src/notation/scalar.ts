@@ -10,6 +10,7 @@ import type { Passage } from './passage.js';
 import { collectScalars } from './scalar-term.js';
 import type { Expression } from './syntax.js';
 import type { Relation, ScalarSum } from './theory.js';
+import { toMass, type Units } from './units.js';
 
 export interface ScalarOptions {
   readonly isSymbol: (name: string) => boolean;
@@ -56,6 +57,13 @@ export function parseRelation(passage: Passage, options: ScalarOptions): Relatio
   const right = evaluate(sides.right, passage);
   const text = passage.text.trim().replace(/\s+/g, ' ');
   return { left, right, subject: subjectOf(left), text, origin: passage.locate(0, passage.text.length) };
+}
+
+/** The relation with κ or G replaced by M; its text stays as typed. */
+export function relationToMass(relation: Relation, units: Units): Relation {
+  const translated = (sum: ScalarSum): ScalarSum => collectScalars(sum.map((term) => toMass(term, units)));
+  const left = translated(relation.left);
+  return { ...relation, left, right: translated(relation.right), subject: subjectOf(left) };
 }
 
 /** The symbol that stands alone. */

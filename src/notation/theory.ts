@@ -4,6 +4,7 @@
  * indices obey Einstein's rule. Imports only exact rationals and diagnostics.
  */
 import type { Rational } from '../algebra/rational.js';
+import type { Conventions } from './conventions.js';
 import type { Diagnostic } from './diagnostics.js';
 
 /** A Laurent monomial in named symbols: coefficient · Π name^exponent (exponents are non-zero integers). */
@@ -105,9 +106,14 @@ export interface Theory {
   readonly name: string;
   /** Lower case, words joined by hyphens, safe as a file name: `harbour-light`. */
   readonly slug: string;
+  /** As the file declares them. */
+  readonly conventions: Conventions;
+  /** That of the conventions; everything else below is in the internal conventions. */
   readonly signature: '-+++' | '+---';
   /** In order of declaration: constants, then scales, then vacuum symbols that were not declared. */
   readonly symbols: readonly TheorySymbol[];
+  /** Symbols of the text that the units replaced by M: κ, or G. */
+  readonly unitSymbols: readonly TheorySymbol[];
   /** In order of declaration. */
   readonly tensors: readonly DeclaredTensor[];
   readonly lagrangian: readonly LagrangianTerm[];
