@@ -1,10 +1,12 @@
 // docs/notation.md and docs/errors.md say what the program does: their tables are run here.
 import { readdirSync, readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
+import { CHOICES } from '../../src/notation/conventions.js';
 import * as limits from '../../src/notation/limits.js';
 import { printLagrangian } from '../../src/notation/print.js';
+import { conventionPresets, presetConventions } from '../../src/notation/read-conventions.js';
 import { readTheory } from '../../src/notation/read-theory.js';
-import { lagrangianErrors, SYMBOLS, terms } from './rendered.js';
+import { lagrangianErrors, SYMBOLS, terms, theoryFile } from './rendered.js';
 
 const root = new URL('../../', import.meta.url);
 const read = (path: string): string => readFileSync(new URL(path, root), 'utf8');
@@ -63,6 +65,33 @@ describe('docs/notation.md', () => {
       'errors shown': limits.MAX_DIAGNOSTICS,
     });
     expect(Object.keys(limits)).toHaveLength(stated.size);
+  });
+});
+
+describe('docs/conventions.md', () => {
+  const conventions = read('docs/conventions.md');
+  const codes = (cell: string): string[] => [...cell.matchAll(/`([^`]*)`/g)].map((m) => m[1]!);
+
+  it('lists every key with its choices, the internal one first', () => {
+    const listed = rows(conventions, '| key | choices | in the text |').map(([key, choices]) => [
+      code(key!),
+      codes(choices!),
+    ]);
+    expect(Object.fromEntries(listed)).toEqual(CHOICES);
+  });
+
+  it('lists every preset with what it says', () => {
+    const listed = rows(conventions, '| preset | conventions |').map(([name, text]) => {
+      const { conventions: meant } = readTheory(theoryFile(`conventions: ${code(text!)}`, 'lagrangian: R^2'), 'f');
+      return [code(name!), meant];
+    });
+    const presets = conventionPresets().map((name) => [name, presetConventions(name)]);
+    expect(Object.fromEntries(listed)).toEqual(Object.fromEntries(presets));
+  });
+
+  it('shows a declaration that is read', () => {
+    const shown = /```yaml\n(conventions: .*)\n```/.exec(conventions)![1]!;
+    expect(readTheory(theoryFile(shown, 'lagrangian: R^2'), 'f').conventions).toMatchObject({ units: 'kappa' });
   });
 });
 

@@ -1,6 +1,7 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { rational } from '../../src/algebra/rational.js';
+import { INTERNAL } from '../../src/notation/conventions.js';
 import { renderDiagnostic } from '../../src/notation/diagnostics.js';
 import { printLagrangian } from '../../src/notation/print.js';
 import { readTheory } from '../../src/notation/read-theory.js';
@@ -35,8 +36,10 @@ describe('readTheory', () => {
     expect(theory(theoryFile('lagrangian: R_{ab} R^{ab}'))).toEqual({
       name: 'Test',
       slug: 'test',
+      conventions: INTERNAL,
       signature: '-+++',
       symbols: [],
+      unitSymbols: [],
       tensors: [],
       lagrangian: [
         {
