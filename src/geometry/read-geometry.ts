@@ -9,6 +9,7 @@ import { type Diagnostic, errorAt, InputError } from '../notation/diagnostics.js
 import { parseDimension } from '../notation/dimension.js';
 import { parseScalar } from '../notation/scalar.js';
 import { polyOfScalar } from '../notation/scalar-poly.js';
+import type { ScalarSum } from '../notation/theory.js';
 import { asList, asMap, asRecord, asText } from '../notation/yaml-shape.js';
 import { readYaml, type YamlNode } from '../notation/yaml-source.js';
 import { passageOf } from '../notation/yaml-text.js';
@@ -140,11 +141,23 @@ export function readGeometryText(text: string, file: string): GeometryFile {
     const scalar = asText(node, what, problems);
     if (!scalar) return undefined;
     const known = [...names, ...parameterNames, ...radicals.keys()];
-    const parsed = parseScalar(passageOf(scalar), {
-      isSymbol: (name) => known.includes(name),
-      names: known,
-      allowJets: true,
-    });
+    let parsed: ScalarSum;
+    try {
+      parsed = parseScalar(passageOf(scalar), {
+        isSymbol: (name) => known.includes(name),
+        names: known,
+        allowJets: true,
+      });
+    } catch (error) {
+      if (!(error instanceof InputError)) throw error;
+      problems.push(...error.diagnostics);
+      return undefined;
+    }
+    const missing = parsed.flatMap((t) => t.powers).find(([name]) => !into.position.has(rename(name)));
+    if (missing) {
+      fault(node, 'bad-jet', `${missing[0]} is a derivative beyond what ${what} may contain`, 'lower its order');
+      return undefined;
+    }
     return polyOfScalar(into, parsed, rename);
   };
   const fieldNames = fields.map((f) => f.name);
@@ -163,15 +176,22 @@ export function readGeometryText(text: string, file: string): GeometryFile {
   const form = (node: YamlNode, what: string, degree: number): FormTerm[] =>
     entriesOf(node, what).flatMap(([words, value]) => {
       const basis = basisOf(words, value);
-      if (basis.length !== degree) fault(value, 'geometry-form', `${words} is no ${degree}-form`, 'count its factors');
+      if (basis.length !== degree || new Set(basis).size !== degree)
+        fault(
+          value,
+          'geometry-form',
+          `${words} is no ${degree}-form`,
+          'write different one-forms, as many as its degree',
+        );
       const poly = inFields(value, what);
       return poly ? [{ basis, value: poly }] : [];
     });
   const structure = new Map(
-    entriesOf(at('structure'), 'structure').map(([name, node]) => [
-      basisOf(name, node)[0]!,
-      form(node, `d ${name}`, 2),
-    ]),
+    entriesOf(at('structure'), 'structure').map(([name, node]) => {
+      const basis = basisOf(name, node);
+      if (basis.length !== 1) fault(node, 'geometry-form', `${name} is no one-form`, 'give d of one basis form');
+      return [basis[0]!, form(node, `d ${name}`, 2)];
+    }),
   );
   const coframeNode = asRecord(at('coframe'), 'coframe', { required: cobasis }, problems);
   const coframe = cobasis.flatMap((name) => {
