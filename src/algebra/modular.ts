@@ -3,8 +3,8 @@
  */
 import { type Rational, rational } from './rational.js';
 
-/** Two primes below 2^26: one to compute with, one to check with. */
-export const PRIMES = [67_108_859, 67_108_837] as const;
+/** Primes below 2^26: three to compute with, the last to check with. */
+export const PRIMES = [67_108_859, 67_108_837, 67_108_819, 67_108_777] as const;
 
 export const multiplyMod = (a: number, b: number, p: number): number => (a * b) % p;
 
@@ -29,20 +29,37 @@ export function residue(value: Rational, p: number): number {
 }
 
 /**
- * The rational n/d with |n|, d ≤ √(p/2) that has this residue, or undefined when there is none (the classical rational
- * reconstruction by the extended Euclidean algorithm).
+ * The rational n/d with |n|, d ≤ √(m/2) that has these residues, m being the product of the primes, or undefined when there
+ * is none (the Chinese remainder theorem and the classical rational reconstruction by the extended Euclidean algorithm).
  */
-export function reconstruct(a: number, p: number): Rational | undefined {
-  const bound = Math.floor(Math.sqrt(p / 2));
-  let [r0, r1] = [p, a];
-  let [t0, t1] = [0, 1];
+export function reconstruct(residues: readonly number[], primes: readonly number[]): Rational | undefined {
+  let [a, m] = [0n, 1n];
+  residues.forEach((r, i) => {
+    const p = primes[i]!;
+    const lift = multiplyMod((((r - Number(a % BigInt(p))) % p) + p) % p, inverseMod(Number(m % BigInt(p)), p), p);
+    a += m * BigInt(lift);
+    m *= BigInt(p);
+  });
+  const bound = rootBelow(m / 2n);
+  let [r0, r1] = [m, a];
+  let [t0, t1] = [0n, 1n];
   while (r1 > bound) {
-    const q = Math.floor(r0 / r1);
+    const q = r0 / r1;
     [r0, r1] = [r1, r0 - q * r1];
     [t0, t1] = [t1, t0 - q * t1];
   }
-  if (t1 === 0 || Math.abs(t1) > bound) return undefined;
+  if (t1 === 0n || t1 > bound || -t1 > bound) return undefined;
   return rational(r1, t1);
+}
+
+/** ⌊√n⌋ by Newton's iteration. */
+function rootBelow(n: bigint): bigint {
+  let x = BigInt(Math.floor(Math.sqrt(Number(n)))) + 1n;
+  for (;;) {
+    const next = (x + n / x) / 2n;
+    if (next >= x) return x;
+    x = next;
+  }
 }
 
 /**

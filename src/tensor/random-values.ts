@@ -105,6 +105,18 @@ class Space {
     return digits.reduce((n, d) => n * this.size + d, 0);
   }
 
+  /** One number for each assignment of digits, the first most significant, made digit by digit from 0. */
+  private grid(weights: readonly number[], step: (so: number, weight: number, digit: number) => number): Int32Array {
+    let table = Int32Array.of(0);
+    for (const weight of weights) {
+      const next = new Int32Array(table.length * this.size);
+      let k = 0;
+      for (const so of table) for (let digit = 0; digit < this.size; digit++) next[k++] = step(so, weight, digit);
+      table = next;
+    }
+    return table;
+  }
+
   /** Random components with the symmetries of a kind. */
   random(kind: TensorKind, next: () => number): Dense {
     const values = new Float64Array(this.size ** kind.slots);
@@ -151,16 +163,15 @@ class Space {
     const shared = a.names.filter((n) => b.names.includes(n));
     const freeA = a.names.filter((n) => !shared.includes(n));
     const freeB = b.names.filter((n) => !shared.includes(n));
-    const offsets = (names: readonly string[], of: Placed): Int32Array => {
-      const weights = names.map((name) => size ** (of.names.length - 1 - of.names.indexOf(name)));
-      return Int32Array.from({ length: size ** names.length }, (_, n) =>
-        this.digits(n, names.length).reduce((sum, d, s) => sum + d * weights[s]!, 0),
+    const offsets = (names: readonly string[], of: Placed): Int32Array =>
+      this.grid(
+        names.map((name) => size ** (of.names.length - 1 - of.names.indexOf(name))),
+        (offset, weight, digit) => offset + weight * digit,
       );
-    };
     const [rowA, rowB, sumA, sumB] = [offsets(freeA, a), offsets(freeB, b), offsets(shared, a), offsets(shared, b)];
-    const negative = Array.from(
-      sumA,
-      (_, n) => this.digits(n, shared.length).filter((d) => this.isNegative(d)).length % 2 === 1,
+    const negative = this.grid(
+      shared.map(() => 1),
+      (odd, _, digit) => (this.isNegative(digit) ? 1 - odd : odd),
     );
     const values = new Float64Array(rowA.length * rowB.length);
     for (let i = 0; i < rowA.length; i++)

@@ -10,9 +10,9 @@ const isPrime = (n: number): boolean => {
 };
 
 describe('primes', () => {
-  it('are two different primes below 2^26', () => {
+  it('are different primes below 2^26', () => {
     expect(PRIMES.every((p) => p < 2 ** 26 && isPrime(p))).toBe(true);
-    expect(new Set(PRIMES).size).toBe(2);
+    expect(new Set(PRIMES).size).toBe(PRIMES.length);
   });
 
   it('keep products of residues exact', () => {
@@ -42,8 +42,27 @@ describe('residue and reconstruction', () => {
     const random = new Random(firstSeed(2));
     for (let i = 0; i < runs(2000); i++) {
       const x = rational(random.below(4001) - 2000, 1 + random.below(2000));
-      const back = reconstruct(residue(x, P), P);
+      const back = reconstruct([residue(x, P)], [P]);
       expect(back !== undefined && equalRational(back, x), `${x.num}/${x.den}`).toBe(true);
+    }
+  });
+
+  it('are inverse for larger ones with more primes', () => {
+    const random = new Random(firstSeed(4));
+    for (let i = 0; i < runs(1000); i++) {
+      for (const [n, size] of [
+        [2, 40_000_000],
+        [3, 300_000_000_000],
+      ] as const) {
+        const draw = (): bigint => (BigInt(random.below(2 ** 31)) * BigInt(random.below(2 ** 31))) % BigInt(size);
+        const x = rational(draw() - BigInt(size / 2), 1n + draw());
+        const primes = PRIMES.slice(0, n);
+        const back = reconstruct(
+          primes.map((p) => residue(x, p)),
+          primes,
+        );
+        expect(back !== undefined && equalRational(back, x), `${x.num}/${x.den}`).toBe(true);
+      }
     }
   });
 
@@ -52,7 +71,7 @@ describe('residue and reconstruction', () => {
     const bound = Math.sqrt(P / 2);
     for (let i = 0; i < runs(500); i++) {
       const a = random.below(P);
-      const x = reconstruct(a, P);
+      const x = reconstruct([a], [P]);
       if (x === undefined) continue;
       expect(residue(x, P)).toBe(a);
       expect(Math.max(Math.abs(Number(x.num)), Number(x.den))).toBeLessThanOrEqual(bound);

@@ -3,7 +3,7 @@ import { equalRational, rational } from '../../src/algebra/rational.js';
 import { makeRing } from '../../src/algebra/ring.js';
 import { contractions } from '../../src/tensor/enumerate.js';
 import { kindTable } from '../../src/tensor/kinds.js';
-import { linearRelations } from '../../src/tensor/relations.js';
+import { linearRelations, relationsOfSums } from '../../src/tensor/relations.js';
 import { PRIME, RandomTensors } from '../oracle/tensors.js';
 
 const KINDS = kindTable();
@@ -68,6 +68,23 @@ describe('linear relations', () => {
       }
     }
   }, 60_000);
+
+  it('of sums with coefficients beyond one prime', () => {
+    const large = rational(123_456_789, 10_007);
+    const square = [symbol('T', 'a'), symbol('T', 'a')];
+    const { dependent } = relationsOfSums(
+      [[{ coefficient: rational(1), factors: square }], [{ coefficient: large, factors: square }]],
+      KINDS,
+    );
+    expect(dependent.get(1)).toEqual([large]);
+    const huge = rational(10n ** 30n + 1n, 10n ** 30n + 7n);
+    expect(() =>
+      relationsOfSums(
+        [[{ coefficient: rational(1), factors: square }], [{ coefficient: huge, factors: square }]],
+        KINDS,
+      ),
+    ).toThrow(/too large/);
+  });
 
   it('prefer earlier products as basis', () => {
     const products = [[symbol('epsilon', 'abcd'), symbol('epsilon', 'abcd')], [], [symbol('eta', 'aa')]];
