@@ -44,7 +44,7 @@ const MAX_SYMBOL_WIDTH = 80;
  * @param rateField generator of the rate of a scale factor.
  */
 export function symbolTable(
-  { theory, geometry, ring, fluids }: Derivation,
+  { theory, geometry, ring }: Derivation,
   fields: readonly GeometrySymbol[],
   rateField: (scale: string) => string,
 ): SymbolTable {
@@ -72,9 +72,8 @@ export function symbolTable(
     put({ generator: name, name, latex, role: 'parameter', dimension });
   for (const { name, latex, role } of theory.symbols)
     put({ generator: name, name, latex, role: role === 'vacuum' ? 'density' : role });
-  for (const { density } of fluids)
-    if (table.get(density)?.role !== 'density')
-      put({ generator: density, name: density, latex: latexName(density), role: 'density' });
+  for (const { density, latex } of theory.matter)
+    if (table.get(density)?.role !== 'density') put({ generator: density, name: density, latex, role: 'density' });
   // What the program adds itself: the reduced Planck mass, and roots of parameters.
   for (const g of ring.generators) {
     if (g.kind === 'jet' || table.has(g.name)) continue;

@@ -6,9 +6,8 @@ import { type Rational, rational } from '../algebra/rational.js';
 import { type Diagnostic, errorAt } from './diagnostics.js';
 import { MAX_DIGITS } from './limits.js';
 import { isNameText, nameFault } from './names.js';
-import { type Declarations, declare } from './read-symbols.js';
+import { type Declarations, declare, type MatterDeclaration } from './read-symbols.js';
 import { nearest } from './suggest.js';
-import type { MatterComponent } from './theory.js';
 import { asList, asRecord, asText } from './yaml-shape.js';
 import type { YamlNode, YamlText } from './yaml-source.js';
 
@@ -20,8 +19,8 @@ export function readMatter(
   node: YamlNode,
   declarations: Declarations,
   problems: Diagnostic[],
-): readonly MatterComponent[] {
-  const components: MatterComponent[] = [];
+): readonly MatterDeclaration[] {
+  const components: MatterDeclaration[] = [];
   const densities = new Set<string>();
   for (const item of asList(node, 'matter', problems)?.items ?? []) {
     const component = readComponent(item, declarations, problems);
@@ -41,7 +40,7 @@ function readComponent(
   node: YamlNode,
   declarations: Declarations,
   problems: Diagnostic[],
-): MatterComponent | undefined {
+): MatterDeclaration | undefined {
   if (node.kind === 'map') {
     if (node.entries.has('vacuum')) return readVacuum(node, declarations, problems);
     if (node.entries.has('fluid')) return readFluid(node, problems);
@@ -68,7 +67,7 @@ function unknown(node: YamlNode, name: string, near: string | undefined, problem
   return undefined;
 }
 
-function readVacuum(node: YamlNode, declarations: Declarations, problems: Diagnostic[]): MatterComponent | undefined {
+function readVacuum(node: YamlNode, declarations: Declarations, problems: Diagnostic[]): MatterDeclaration | undefined {
   const value = asRecord(node, 'a vacuum component', { required: ['vacuum'] }, problems).get('vacuum');
   const text = value === undefined ? undefined : asText(value, 'the vacuum density', problems);
   if (text === undefined) return undefined;
@@ -77,7 +76,7 @@ function readVacuum(node: YamlNode, declarations: Declarations, problems: Diagno
   return { kind: 'vacuum', name, density: name, w: rational(-1) };
 }
 
-function readFluid(node: YamlNode, problems: Diagnostic[]): MatterComponent | undefined {
+function readFluid(node: YamlNode, problems: Diagnostic[]): MatterDeclaration | undefined {
   const values = asRecord(node, 'a fluid component', { required: ['fluid', 'w'] }, problems);
   const nameNode = values.get('fluid');
   const wNode = values.get('w');

@@ -8,10 +8,10 @@ import { latexFault, latexName } from './latex-symbol.js';
 import { MAX_SYMBOLS } from './limits.js';
 import { nameFault } from './names.js';
 import { nearest } from './suggest.js';
-import type { Origin, SymbolRole, TheorySymbol } from './theory.js';
+import type { MatterComponent, Origin, SymbolRole, TheorySymbol } from './theory.js';
 import { PLANCK_MASS, UNIT_SYMBOLS, type UnitSymbol, type Units } from './units.js';
 import { asList, asMap, asText } from './yaml-shape.js';
-import type { YamlNode, YamlText } from './yaml-source.js';
+import type { YamlMap, YamlNode, YamlText } from './yaml-source.js';
 import { passageOf } from './yaml-text.js';
 
 /** A symbol with the place of its declaration. */
@@ -21,6 +21,9 @@ export interface Declaration {
   readonly dimension: number;
   readonly origin: Origin;
 }
+
+/** A matter component before its density has a LaTeX name. */
+export type MatterDeclaration = Omit<MatterComponent, 'latex'>;
 
 /** Declarations in the order of the file, by name. */
 export type Declarations = Map<string, Declaration>;
@@ -99,25 +102,60 @@ export function declareUnits(units: Units, origin: Origin, declarations: Declara
   }
 }
 
+/** What a theory prints by a name of its own. */
+export interface NamedSymbols {
+  readonly symbols: readonly TheorySymbol[];
+  readonly matter: readonly MatterComponent[];
+}
+
 /**
- * The symbols with their LaTeX, derived from the name unless `symbols` (may be undefined) gives it. Reports `bad-latex` and
- * `unknown-symbol`; warns with `same-latex` when two symbols would look alike.
+ * Symbols and densities with their LaTeX, derived from the name unless `symbols` (may be undefined) gives it. Reports
+ * `bad-latex` and `unknown-symbol`; warns with `same-latex` when two would look alike.
  */
 export function namedSymbols(
   node: YamlNode | undefined,
   declarations: Declarations,
+  matter: readonly MatterDeclaration[],
   problems: Diagnostic[],
   warnings: Diagnostic[],
-): readonly TheorySymbol[] {
-  const given = new Map<string, string>();
+): NamedSymbols {
+  const names = new Set([...declarations.keys(), ...matter.map((m) => m.density)]);
   const map = node === undefined ? undefined : asMap(node, 'symbols', problems);
+  const given = givenNames(map, names, problems);
+  const latexOf = (name: string): string => given.get(name) ?? latexName(name);
+  const seen = new Map<string, string>();
+  for (const name of names) {
+    const latex = latexOf(name);
+    const twin = seen.get(latex);
+    seen.set(latex, name);
+    const place = map?.entries.get(name)?.value.origin ?? declarations.get(name)?.origin ?? map?.origin;
+    if (twin === undefined || place === undefined) continue;
+    const message = `${twin} and ${name} are both printed as ${latex}`;
+    warnings.push(warningAt(place, 'same-latex', message, 'give one of them another name under symbols'));
+  }
+  return {
+    symbols: [...declarations.values()].map(({ name, role, dimension }) => ({
+      name,
+      role,
+      dimension,
+      latex: latexOf(name),
+    })),
+    matter: matter.map((component) => ({ ...component, latex: latexOf(component.density) })),
+  };
+}
+
+/** The LaTeX that the user gives, by name. */
+function givenNames(
+  map: YamlMap | undefined,
+  names: ReadonlySet<string>,
+  problems: Diagnostic[],
+): ReadonlyMap<string, string> {
+  const given = new Map<string, string>();
   for (const [name, { key, value }] of map?.entries ?? []) {
-    if (!declarations.has(name)) {
-      const near = nearest(name, declarations.keys());
+    if (!names.has(name)) {
+      const near = nearest(name, names);
       const hint =
-        near === undefined
-          ? 'only declared constants, scales and vacuum densities can be renamed'
-          : `did you mean ${near}?`;
+        near === undefined ? 'only declared constants, scales and densities can be renamed' : `did you mean ${near}?`;
       problems.push(errorAt(key.origin, 'unknown-symbol', `symbols renames ${name}, which is not declared`, hint));
       continue;
     }
@@ -127,22 +165,5 @@ export function namedSymbols(
     if (fault !== undefined) problems.push(fault);
     else given.set(name, text.text.trim());
   }
-  const seen = new Map<string, string>();
-  return [...declarations.values()].map(({ name, role, dimension, origin }) => {
-    const latex = given.get(name) ?? latexName(name);
-    const twin = seen.get(latex);
-    if (twin !== undefined) {
-      const message = `${twin} and ${name} are both printed as ${latex}`;
-      warnings.push(
-        warningAt(
-          map?.entries.get(name)?.value.origin ?? origin,
-          'same-latex',
-          message,
-          'give one of them another name under symbols',
-        ),
-      );
-    }
-    seen.set(latex, name);
-    return { name, role, dimension, latex };
-  });
+  return given;
 }

@@ -11,7 +11,14 @@ import { reservedMeaning } from './names.js';
 import { type Passage, plainPassage } from './passage.js';
 import { readConventions } from './read-conventions.js';
 import { readMatter } from './read-matter.js';
-import { type Declarations, declareUnits, namedSymbols, readConstants, readScales } from './read-symbols.js';
+import {
+  type Declarations,
+  declareUnits,
+  type MatterDeclaration,
+  namedSymbols,
+  readConstants,
+  readScales,
+} from './read-symbols.js';
 import { readTensors } from './read-tensors.js';
 import { parseRelation, relationToMass } from './scalar.js';
 import { slugOf } from './slug.js';
@@ -54,9 +61,9 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
   read('scales', (node) => readScales(node, declarations, problems), undefined);
   const { units } = conventions;
   read('conventions', (node) => declareUnits(units, node.origin, declarations, problems), undefined);
-  const matter = read('matter', (node) => readMatter(node, declarations, problems), []);
+  const components = read('matter', (node) => readMatter(node, declarations, problems), []);
   const tensors = read('tensors', (node) => readTensors(node, declarations, problems), []);
-  refuseUnitDensities(values.get('matter'), matter, units, problems);
+  refuseUnitDensities(values.get('matter'), components, units, problems);
   const geometry = read('geometry', (node) => readGeometryName(node, problems), DEFAULT_GEOMETRY);
 
   // An unknown name may only follow from a fault among the declarations, or from a misspelt key.
@@ -64,7 +71,7 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
   const keep = (more: readonly Diagnostic[]): void => {
     problems.push(...more.filter((p) => declarationsStand || !NAME_FAULTS.has(p.code)));
   };
-  const named = namedSymbols(values.get('symbols'), declarations, problems, warnings);
+  const { symbols: named, matter } = namedSymbols(values.get('symbols'), declarations, components, problems, warnings);
   const typed = read('lagrangian', (node) => readTerms(node, named, tensors, keep, warnings), []);
   const typedRelations = readRelations(values.get('impose'), options.set ?? [], named, matter, keep);
   if (problems.length > 0) throw new InputError(limited(inOrder(problems)));
@@ -100,7 +107,7 @@ const unitNames = (units: Units): readonly string[] => UNIT_SYMBOLS[units].map((
 
 function refuseUnitDensities(
   node: YamlNode | undefined,
-  matter: readonly MatterComponent[],
+  matter: readonly MatterDeclaration[],
   units: Units,
   problems: Diagnostic[],
 ): void {

@@ -79,6 +79,8 @@ export interface MatterComponent {
   readonly name: string;
   /** Symbol of its density in every output: `rho_<name>`, or the vacuum's symbol itself. */
   readonly density: string;
+  /** LaTeX of the density: the user's (`symbols:`) or derived from the name. */
+  readonly latex: string;
   readonly w: Rational;
 }
 

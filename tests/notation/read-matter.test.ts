@@ -11,18 +11,33 @@ describe('readMatter', () => {
       '[dust, radiation, { vacuum: Lambda }, { fluid: chi, w: "1/5" }, { fluid: y, w: -1/3 }, { fluid: s, w: 1 }]',
     );
     expect(theory(text).matter).toEqual([
-      { kind: 'dust', name: 'dust', density: 'rho_dust', w: rational(0) },
-      { kind: 'radiation', name: 'radiation', density: 'rho_radiation', w: rational(1, 3) },
-      { kind: 'vacuum', name: 'Lambda', density: 'Lambda', w: rational(-1) },
-      { kind: 'fluid', name: 'chi', density: 'rho_chi', w: rational(1, 5) },
-      { kind: 'fluid', name: 'y', density: 'rho_y', w: rational(-1, 3) },
-      { kind: 'fluid', name: 's', density: 'rho_s', w: rational(1) },
+      { kind: 'dust', name: 'dust', density: 'rho_dust', latex: '\\rho_{\\mathrm{dust}}', w: rational(0) },
+      {
+        kind: 'radiation',
+        name: 'radiation',
+        density: 'rho_radiation',
+        latex: '\\rho_{\\mathrm{radiation}}',
+        w: rational(1, 3),
+      },
+      { kind: 'vacuum', name: 'Lambda', density: 'Lambda', latex: '\\Lambda', w: rational(-1) },
+      { kind: 'fluid', name: 'chi', density: 'rho_chi', latex: '\\rho_{\\chi}', w: rational(1, 5) },
+      { kind: 'fluid', name: 'y', density: 'rho_y', latex: '\\rho_{y}', w: rational(-1, 3) },
+      { kind: 'fluid', name: 's', density: 'rho_s', latex: '\\rho_{s}', w: rational(1) },
     ]);
   });
 
   it('a vacuum density that is declared stays what it is', () => {
     const { symbols } = theory(withMatter('[{ vacuum: V }]', 'constants: [{ V: mass^4 }]'));
     expect(symbols).toEqual([{ name: 'V', role: 'constant', dimension: 4, latex: 'V' }]);
+  });
+
+  it('a density has the name that the user gives it', () => {
+    const symbols = "symbols: { rho_dust: '\\rho_m', V: 'U' }";
+    const read = theory(withMatter('[dust, radiation, { vacuum: V }]', 'constants: [{ V: mass^4 }]', symbols));
+    expect(read.matter.map((m) => m.latex)).toEqual(['\\rho_m', '\\rho_{\\mathrm{radiation}}', 'U']);
+    expect(theoryErrors(withMatter('[dust]', 'symbols: { rho_dusk: q }'))).toContain('did you mean rho_dust?');
+    const alike = theory(withMatter('[dust, radiation]', "symbols: { rho_dust: r, rho_radiation: 'r' }"));
+    expect(alike.warnings.map((w) => w.message)).toEqual(['rho_dust and rho_radiation are both printed as r']);
   });
 
   it('shows unknown matter with a suggestion', () => {

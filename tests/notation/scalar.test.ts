@@ -28,26 +28,7 @@ describe('parseScalar', () => {
     expect(isCanonicalScalar(scalar(text))).toBe(true);
   });
 
-  it('reads jets in canonical spelling, and a jet of order 0 as the variable', () => {
-    expect(scalar('D( a , 02 )^2 D(\\phi,1)')).toEqual([
-      {
-        coefficient: rational(1),
-        powers: [
-          ['D(a,2)', 2],
-          ['D(phi,1)', 1],
-        ],
-      },
-    ]);
-    expect(scalar('D(a_x,0)')).toEqual(scalar('a_x'));
-  });
-
   it.each([
-    ['D(q,1)', 'E:1:3: error: unknown symbol q'],
-    ['D(a 1)', 'E:1:1: error: D( lacks its comma'],
-    ['D(a,x)', 'E:1:1: error: D( lacks its order'],
-    ['D(a,1', 'E:1:1: error: D( is never closed'],
-    ['D(,1)', 'E:1:3: error: D( lacks its variable'],
-    ['D(a,99)', 'E:1:5: error: the order is beyond the limit of 64'],
     ['a/(a+b1)', 'E:1:3: error: division by (a+b1), which is a sum'],
     ['b2', 'E:1:1: error: unknown symbol b2'],
     ['ab1', 'E:1:1: error: unknown symbol ab1'],
@@ -59,8 +40,7 @@ describe('parseScalar', () => {
     expect(errorText(() => scalar(text)).split('\n')[0]).toBe(line);
   });
 
-  it('without jets, D is a name like others', () => {
-    expect(errorText(() => scalar('D(a,1)', { allowJets: false }))).toContain('unknown symbol D');
+  it('explains why a name cannot be used', () => {
     expect(errorText(() => scalar('h', { explain: (name) => `${name} is for outputs` }))).toContain('h is for outputs');
   });
 });
