@@ -10,11 +10,11 @@ import { TermTable } from './terms.js';
 
 /** The terms at the given rows (ascending), as a polynomial. */
 export function select(p: Poly, rows: readonly number[]): Poly {
+  if (rows.length === p.size) return p;
   const { words } = p.ring;
   const keys = new Float64Array(rows.length * words);
-  rows.forEach((row, i) => {
-    keys.set(p.keys.subarray(row * words, (row + 1) * words), i * words);
-  });
+  for (let i = 0, t = 0; i < rows.length; i++)
+    for (let w = 0, from = rows[i]! * words; w < words; w++) keys[t++] = p.keys[from + w]!;
   const { numerators } = p;
   const chosen =
     numerators instanceof Float64Array
@@ -44,8 +44,18 @@ export interface Collected {
 
 /** Groups the terms of p by their monomial in the chosen generators, in canonical order of first appearance. */
 export function collect(p: Poly, chosen: (generator: number) => boolean): Collected[] {
+  return groupsOf(p, chosen).map(({ monomial, rows }) => ({ monomial, coefficient: coefficientIn(p, monomial, rows) }));
+}
+
+interface Group {
+  readonly monomial: [number, number][];
+  readonly rows: number[];
+}
+
+/** Rows with the same exponents of the chosen generators, in order of first appearance. */
+function groupsOf(p: Poly, chosen: (generator: number) => boolean): Group[] {
   const { ring } = p;
-  const groups = new Map<string, { monomial: [number, number][]; rows: number[] }>();
+  const groups = new Map<string | number, Group>();
   const positions = ring.generators.map((_, i) => i).filter(chosen);
   for (let i = 0; i < p.size; i++) {
     const found: [number, number][] = [];
@@ -53,19 +63,25 @@ export function collect(p: Poly, chosen: (generator: number) => boolean): Collec
       const e = exponentAt(p.keys, i * ring.words, g);
       if (e !== 0) found.push([g, e]);
     }
-    const key = found.join(';');
+    // Most terms have one chosen generator or none, for which a number is a cheaper key than a text.
+    const [first] = found;
+    const key = first === undefined ? -1 : found.length === 1 ? first[0] * 1024 + first[1] + 512 : found.join(';');
     const group = groups.get(key);
     if (group) group.rows.push(i);
     else groups.set(key, { monomial: found, rows: [i] });
   }
-  return [...groups.values()].map(({ monomial: powers, rows }) => {
-    const part = select(p, rows);
-    const keys = part.keys.slice();
-    for (const [g, e] of powers)
-      for (let i = 0; i < part.size; i++) keys[i * ring.words + wordOf(g)]! -= e * weightOf(g);
-    // Dividing all terms by one monomial keeps their order.
-    return { monomial: powers, coefficient: normalise(ring, keys, part.numerators, part.denominator, p.reach) };
-  });
+  return [...groups.values()];
+}
+
+/** The terms at the given rows divided by a monomial, which keeps their order. */
+function coefficientIn(p: Poly, monomial: Collected['monomial'], rows: readonly number[]): Poly {
+  const part = select(p, rows);
+  if (monomial.length === 0) return part;
+  const { words } = p.ring;
+  const keys = part.keys.slice();
+  for (const [g, e] of monomial)
+    for (let at = wordOf(g), by = e * weightOf(g); at < keys.length; at += words) keys[at]! -= by;
+  return normalise(p.ring, keys, part.numerators, part.denominator, p.reach);
 }
 
 /** The monomial of a `Collected` as a polynomial with coefficient 1. */
@@ -109,11 +125,12 @@ export function substitute(p: Poly, images: ReadonlyMap<string, Poly>, target: R
     }
     return value;
   };
-  const groups = collect(p, (g) => replaced[g] !== undefined);
+  const vanishes = ([g, e]: readonly [number, number]): boolean => e > 0 && replaced[g]!.size === 0;
+  const groups = groupsOf(p, (g) => replaced[g] !== undefined).filter(({ monomial }) => !monomial.some(vanishes));
   return sum(
     target,
-    groups.map(({ monomial: powersOf, coefficient }) =>
-      powersOf.reduce((acc, [g, e]) => multiply(acc, powerOf(g, e)), moveTo(coefficient, target)),
+    groups.map(({ monomial, rows }) =>
+      monomial.reduce((acc, [g, e]) => multiply(acc, powerOf(g, e)), moveTo(coefficientIn(p, monomial, rows), target)),
     ),
   );
 }

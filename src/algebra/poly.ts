@@ -4,6 +4,7 @@
  * common factor, numerators in doubles exactly when all of them are safe integers, radicals only to the powers 0 and 1.
  * Imports only exact rationals, rings and term tables.
  */
+import { boxProduct, FEW_TERMS, mergedProduct, type TermList } from './products.js';
 import { gcd, type Rational, rational } from './rational.js';
 import {
   ExponentLimitError,
@@ -65,7 +66,7 @@ export function normalise(
   let d = denominator;
   if (n.length === 0) return build(ring, keys, new Float64Array(0), 1n, 0);
   if (d !== 1n) {
-    let g = d;
+    let g = n instanceof Float64Array && d <= BIG_SAFE ? BigInt(contentWith(n, Number(d))) : d;
     for (let i = 0; i < n.length && g !== 1n; i++) g = gcd(g, BigInt(n[i]!));
     if (g !== 1n) {
       n = isBig(n) ? n.map((c) => c / g) : divideSafe(n, g);
@@ -74,6 +75,16 @@ export function normalise(
   }
   if (isBig(n) && n.every((c) => c <= BIG_SAFE && c >= -BIG_SAFE)) n = Float64Array.from(n, Number);
   return build(ring, keys, n, d, reach);
+}
+
+/** Greatest common divisor of a positive number and all numerators. */
+function contentWith(n: Float64Array, start: number): number {
+  let g = start;
+  for (let i = 0; i < n.length && g !== 1; i++) {
+    let x = Math.abs(n[i]!);
+    while (x !== 0) [g, x] = [x, g % x];
+  }
+  return g;
 }
 
 function divideSafe(n: Float64Array, g: bigint): Float64Array {
@@ -102,7 +113,13 @@ export function constant(ring: Ring, value: Rational | number): Poly {
  * @throws Error for an unknown name; RangeError for an exponent that is no integer; ExponentLimitError beyond ±511.
  */
 export function generator(ring: Ring, name: string, exponent = 1): Poly {
-  return monomial(ring, rational(1), [[name, exponent]]);
+  const g = positionOf(ring, name);
+  const reach = Math.abs(integer(exponent));
+  if (reach > MAX_EXPONENT || ring.generators[g]!.kind === 'radical')
+    return monomial(ring, rational(1), [[name, exponent]]);
+  const keys = new Float64Array(ring.words);
+  keys[wordOf(g)] = exponent * weightOf(g);
+  return build(ring, keys, Float64Array.of(1), 1n, reach);
 }
 
 /** coefficient · Π name^exponent; names may repeat. @throws as `generator`. */
@@ -150,16 +167,25 @@ function merge(a: Poly, b: Poly, sign: 1 | -1): Poly {
   if (b.size === 0) return a;
   if (a.size === 0) return sign === 1 ? b : negate(b);
   const words = a.ring.words;
-  const shared = a.denominator === b.denominator ? 1n : gcd(a.denominator, b.denominator);
-  const denominator =
-    shared === 1n && a.denominator === b.denominator ? a.denominator : (a.denominator / shared) * b.denominator;
-  const na = scaled(a, denominator / a.denominator);
-  const nb = scaled(b, sign === 1 ? denominator / b.denominator : -denominator / b.denominator);
+  const reach = Math.max(a.reach, b.reach);
   const keys = new Float64Array((a.size + b.size) * words);
-  const small = isBig(na) || isBig(nb) ? undefined : mergeDoubles(words, a.keys, na, b.keys, nb, keys);
-  const sums = small ?? mergeBigs(words, a.keys, toBig(na), b.keys, toBig(nb), keys);
-  const n = sums.length * words;
-  return normalise(a.ring, n === keys.length ? keys : keys.slice(0, n), sums, denominator, Math.max(a.reach, b.reach));
+  const done = (sums: Numerators, denominator: bigint): Poly => {
+    const n = sums.length * words;
+    return normalise(a.ring, n === keys.length ? keys : keys.slice(0, n), sums, denominator, reach);
+  };
+  let na = a.numerators;
+  let nb = b.numerators;
+  let denominator = a.denominator;
+  if (denominator !== b.denominator) {
+    denominator = (denominator / gcd(denominator, b.denominator)) * b.denominator;
+    na = scaled(a, denominator / a.denominator);
+    nb = scaled(b, denominator / b.denominator);
+  }
+  if (!isBig(na) && !isBig(nb)) {
+    const sums = mergeDoubles(words, a.keys, na, b.keys, nb, sign, keys);
+    if (sums) return done(sums, denominator);
+  }
+  return done(mergeBigs(words, a.keys, toBig(na), b.keys, toBig(nb), sign, keys), denominator);
 }
 
 export const add = (a: Poly, b: Poly): Poly => merge(a, b, 1);
@@ -207,35 +233,38 @@ export function multiply(a: Poly, b: Poly): Poly {
   if (b.size === 1) {
     const keys = new Float64Array(a.keys.length);
     for (let i = 0, t = 0; i < a.size; i++) for (let w = 0; w < words; w++, t++) keys[t] = a.keys[t]! + b.keys[w]!;
-    const numerators = scaled(a, BigInt(b.numerators[0]!));
+    const by = b.numerators[0]!;
+    const na = a.numerators;
+    const numerators = big || isBig(na) ? scaled(a, BigInt(by)) : by === 1 ? na : na.map((c) => c * (by as number));
     const p = normalise(ring, keys, numerators, denominator, reach);
+    return ring.radicals.length > 0 ? reduceRadicals(p) : p;
+  }
+  const terms = big ? undefined : doubleProduct(ring, a, b);
+  if (terms) {
+    const p = normalise(ring, terms.keys, terms.coefficients, denominator, reach);
     return ring.radicals.length > 0 ? reduceRadicals(p) : p;
   }
   const table = new TermTable(words, Math.min(a.size * b.size, 4 * (a.size + b.size)), big);
   const { key } = table;
-  const ka = a.keys;
-  const kb = b.keys;
-  if (!big) {
-    const na = a.numerators as Float64Array;
-    const nb = b.numerators as Float64Array;
-    for (let j = 0; j < b.size; j++)
-      for (let i = 0; i < a.size; i++) {
-        for (let w = 0; w < words; w++) key[w] = ka[i * words + w]! + kb[j * words + w]!;
-        const s = table.slot();
-        table.numbers[s]! += na[i]! * nb[j]!;
-      }
-  } else {
-    const na = toBig(a.numerators);
-    const nb = toBig(b.numerators);
-    const bigs = table.bigs!;
-    for (let j = 0; j < b.size; j++)
-      for (let i = 0; i < a.size; i++) {
-        for (let w = 0; w < words; w++) key[w] = ka[i * words + w]! + kb[j * words + w]!;
-        const s = table.slot();
-        bigs[s]! += na[i]! * nb[j]!;
-      }
-  }
+  const na = a.numerators;
+  const nb = b.numerators;
+  const bigA = big ? toBig(na) : [];
+  const bigB = big ? toBig(nb) : [];
+  for (let j = 0; j < b.size; j++)
+    for (let i = 0; i < a.size; i++) {
+      for (let w = 0; w < words; w++) key[w] = a.keys[i * words + w]! + b.keys[j * words + w]!;
+      const s = table.slot();
+      if (big) table.bigs![s]! += bigA[i]! * bigB[j]!;
+      else table.numbers[s]! += (na[i] as number) * (nb[j] as number);
+    }
   return fromTable(ring, table, denominator, reach);
+}
+
+/** The product by one of the methods of products.ts, when one of them suits it. */
+function doubleProduct(ring: Ring, a: Poly, b: Poly): TermList | undefined {
+  const left = { keys: a.keys, coefficients: a.numerators as Float64Array };
+  const right = { keys: b.keys, coefficients: b.numerators as Float64Array };
+  return b.size <= FEW_TERMS ? mergedProduct(ring.words, left, right) : boxProduct(ring, left, right);
 }
 
 /**

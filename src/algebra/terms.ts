@@ -125,7 +125,7 @@ export function compareKeys(a: Float64Array, i: number, b: Float64Array, j: numb
 }
 
 /**
- * Merges two descending lists and drops sums that vanish. Monomials are written to `out`, the sums returned;
+ * Merges a + sign·b from two descending lists and drops sums that vanish. Monomials are written to `out`, the sums returned;
  * undefined when a sum leaves the range of safe integers.
  */
 export function mergeDoubles(
@@ -134,23 +134,36 @@ export function mergeDoubles(
   a: Float64Array,
   kb: Float64Array,
   b: Float64Array,
+  sign: 1 | -1,
   out: Float64Array,
 ): Float64Array | undefined {
-  const sums = new Float64Array(a.length + b.length);
+  const la = a.length;
+  const lb = b.length;
+  const sums = new Float64Array(la + lb);
   let n = 0;
   let i = 0;
   let j = 0;
-  while (i < a.length || j < b.length) {
-    const c = i >= a.length ? -1 : j >= b.length ? 1 : compareKeys(ka, i * words, kb, j * words, words);
-    const source = c >= 0 ? ka : kb;
-    const base = (c >= 0 ? i : j) * words;
-    const s = c > 0 ? a[i++]! : c < 0 ? b[j++]! : a[i++]! + b[j++]!;
+  while (i < la && j < lb) {
+    const p = i * words;
+    const q = j * words;
+    let d = 0;
+    for (let w = 0; w < words && d === 0; w++) d = ka[p + w]! - kb[q + w]!;
+    const s = d > 0 ? a[i]! : d < 0 ? sign * b[j]! : a[i]! + sign * b[j]!;
+    if (d >= 0) i++;
+    if (d <= 0) j++;
     if (s === 0) continue;
     // A sum of two safe integers that rounds to a safe integer was exact.
     if (s > Number.MAX_SAFE_INTEGER || s < -Number.MAX_SAFE_INTEGER) return undefined;
-    for (let w = 0; w < words; w++) out[n * words + w] = source[base + w]!;
+    const t = n * words;
+    if (d >= 0) for (let w = 0; w < words; w++) out[t + w] = ka[p + w]!;
+    else for (let w = 0; w < words; w++) out[t + w] = kb[q + w]!;
     sums[n++] = s;
   }
+  let t = n * words;
+  for (let s = i * words; s < la * words; s++) out[t++] = ka[s]!;
+  for (let s = j * words; s < lb * words; s++) out[t++] = kb[s]!;
+  for (; i < la; i++) sums[n++] = a[i]!;
+  for (; j < lb; j++) sums[n++] = sign * b[j]!;
   return n === sums.length ? sums : sums.slice(0, n);
 }
 
@@ -161,6 +174,7 @@ export function mergeBigs(
   a: readonly bigint[],
   kb: Float64Array,
   b: readonly bigint[],
+  sign: 1 | -1,
   out: Float64Array,
 ): bigint[] {
   const sums: bigint[] = [];
@@ -170,7 +184,8 @@ export function mergeBigs(
     const c = i >= a.length ? -1 : j >= b.length ? 1 : compareKeys(ka, i * words, kb, j * words, words);
     const source = c >= 0 ? ka : kb;
     const base = (c >= 0 ? i : j) * words;
-    const s = c > 0 ? a[i++]! : c < 0 ? b[j++]! : a[i++]! + b[j++]!;
+    const right = c > 0 ? 0n : sign < 0 ? -b[j++]! : b[j++]!;
+    const s = c < 0 ? right : a[i++]! + right;
     if (s === 0n) continue;
     out.set(source.subarray(base, base + words), sums.length * words);
     sums.push(s);

@@ -99,15 +99,22 @@ describe('merging two sorted lists', () => {
         const out = new Float64Array((a.length + b.length) * n);
         const want = collected([...a, ...b]);
         const bigs = (rows: typeof a) => rows.map(([, c]) => c);
-        expect(rowsOf(n, out, mergeBigs(n, keysOf(a), bigs(a), keysOf(b), bigs(b), out))).toEqual(want);
+        const opposite = b.map(([key, c]): [number[], bigint] => [key, -c]);
+        expect(rowsOf(n, out, mergeBigs(n, keysOf(a), bigs(a), keysOf(b), bigs(b), 1, out))).toEqual(want);
+        out.fill(0);
+        expect(rowsOf(n, out, mergeBigs(n, keysOf(a), bigs(a), keysOf(b), bigs(opposite), -1, out))).toEqual(want);
 
         const safe = (rows: typeof a) => rows.every(([, c]) => c <= SAFE && c >= -SAFE);
         if (!safe(a) || !safe(b)) return;
         const doubles = (rows: typeof a) => Float64Array.from(rows, ([, c]) => Number(c));
         out.fill(0);
-        const sums = mergeDoubles(n, keysOf(a), doubles(a), keysOf(b), doubles(b), out);
+        const sums = mergeDoubles(n, keysOf(a), doubles(a), keysOf(b), doubles(b), 1, out);
         if (safe(want)) expect(rowsOf(n, out, sums!)).toEqual(want);
         else expect(sums).toBeUndefined();
+        out.fill(0);
+        const same = mergeDoubles(n, keysOf(a), doubles(a), keysOf(b), doubles(opposite), -1, out);
+        if (safe(want)) expect(rowsOf(n, out, same!)).toEqual(want);
+        else expect(same).toBeUndefined();
       }),
       tries(300),
     );
