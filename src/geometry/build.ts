@@ -27,7 +27,9 @@ import {
   twoFormComponent,
 } from './forms.js';
 import type { ComponentSymbol, Geometry } from './geometry.js';
+import { isInvariant } from './invariant-components.js';
 import { type FormTerm, GEOMETRY_FOLDER, type GeometryFile, readGeometryFile } from './read-geometry.js';
+import { NO_ISOTROPY } from './read-isotropy.js';
 
 const METRICS: Record<Theory['signature'], FrameMetric> = { '-+++': [-1, 1, 1, 1], '+---': [1, -1, -1, -1] };
 
@@ -65,6 +67,7 @@ export function buildGeometry(id: string, file: GeometryFile, metric: FrameMetri
   const connection = completeConnection(id, file, metric);
   const torsion = torsionTensor(frame, connection, metric);
   const curvature = curvatureTensor(frame, connection, metric);
+  refuseBrokenIsotropy(id, file, [torsion, curvature], metric);
   const named = nameComponents(file, [torsion, curvature]);
   const symbols = makeRing(constantsOf(named.map((c) => c.name)));
   const symbolic = (tensor: SparseTensor): SparseTensor => inSymbols(tensor, named, symbols);
@@ -81,6 +84,7 @@ export function buildGeometry(id: string, file: GeometryFile, metric: FrameMetri
     lapse: file.lapse,
     rates: file.rates,
     isotropic: file.isotropic,
+    isotropy: file.isotropy,
     variables: file.variables,
     components: named,
     tensors: { ring: symbols, metric, torsion: symbolic(torsion), curvature: symbolic(curvature) },
@@ -94,6 +98,7 @@ export function buildGeometry(id: string, file: GeometryFile, metric: FrameMetri
       { name: 'dd = 0 on the cobasis', holds: true },
       ...(traceless ? [{ name: 'structure constants have zero trace', holds: true }] : []),
       { name: 'the metric connection has no torsion', holds: true },
+      ...(file.isotropy === NO_ISOTROPY ? [] : [{ name: 'torsion and curvature have the isotropy', holds: true }]),
     ],
   };
 }
@@ -110,6 +115,25 @@ const refusal = (id: string, code: string, message: string, hint: string): Input
   const diagnostic: Diagnostic = { code, severity: 'error', message, hint, file: `rules/geometry/${id}.yaml` };
   return new InputError([diagnostic]);
 };
+
+/** An isotropy that the connection does not have would take components from the tensors that are added to it. */
+function refuseBrokenIsotropy(
+  id: string,
+  { isotropy, ring }: GeometryFile,
+  tensors: readonly SparseTensor[],
+  metric: FrameMetric,
+): void {
+  const vanishes = (terms: readonly (readonly [number, Poly])[]): boolean =>
+    isZero(
+      sum(
+        ring,
+        terms.map(([sign, value]) => scale(value, sign)),
+      ),
+    );
+  if (tensors.every(({ rank, entries }) => isInvariant(entries, rank, isotropy, metric, vanishes))) return;
+  const message = 'torsion or curvature changes under the declared isotropy';
+  throw refusal(id, 'geometry-isotropy', message, 'list only what leaves coframe and connection unchanged');
+}
 
 /** dd = 0 is the Jacobi identity of the structure constants. */
 function refuseBadCobasis(id: string, frame: FrameData): void {

@@ -6,6 +6,7 @@ import type { Poly } from '../algebra/poly.js';
 import type { Ring } from '../algebra/ring.js';
 import type { GeometricTensors } from '../tensor/invariants.js';
 import type { Connection, FrameData } from './cartan.js';
+import type { Isotropy } from './invariant-components.js';
 
 /** A function of time (a field), or a constant of the geometry (a parameter, for instance k). */
 export interface GeometrySymbol {
@@ -55,6 +56,8 @@ export interface Geometry {
   /** Field → name of its logarithmic rate, a → H. */
   readonly rates: ReadonlyMap<string, string>;
   readonly isotropic: IsotropicRoles | undefined;
+  /** What leaves the geometry at one point unchanged; further tensors get the components that it allows. */
+  readonly isotropy: Isotropy;
   readonly variables: readonly AlternativeVariables[];
   /** Independent components; generators of `tensors.ring` in the same order. */
   readonly components: readonly ComponentSymbol[];

@@ -14,6 +14,8 @@ import { asList, asMap, asRecord, asText } from '../notation/yaml-shape.js';
 import { readYaml, type YamlNode } from '../notation/yaml-source.js';
 import { passageOf } from '../notation/yaml-text.js';
 import type { GeometrySymbol, IsotropicRoles } from './geometry.js';
+import type { Isotropy } from './invariant-components.js';
+import { readIsotropy } from './read-isotropy.js';
 
 /** Highest order of a field's time derivatives that any expression of a derivation needs. */
 export const MAX_JET_ORDER = 3;
@@ -45,6 +47,7 @@ export interface GeometryFile {
   readonly lapse: string;
   readonly rates: ReadonlyMap<string, string>;
   readonly isotropic: IsotropicRoles | undefined;
+  readonly isotropy: Isotropy;
   readonly variables: readonly {
     readonly key: string;
     readonly fields: readonly GeometrySymbol[];
@@ -72,7 +75,7 @@ const KEYS = {
     'variables',
     'variable-fields',
   ],
-  optional: ['isotropic'],
+  optional: ['isotropic', 'isotropy'],
 };
 
 /** Name of a radical in the ring; no user symbol can be spelled so. */
@@ -240,6 +243,7 @@ export function readGeometryText(text: string, file: string): GeometryFile {
     );
     return { key, fields: all, images, ring: into };
   });
+  const isotropy = readIsotropy(values.get('isotropy'), problems);
   if (problems.length > 0) stop();
   return {
     title: textOf(at('title'), 'title'),
@@ -255,6 +259,7 @@ export function readGeometryText(text: string, file: string): GeometryFile {
     lapse,
     rates,
     isotropic: isotropicRoles(values.get('isotropic'), { fieldNames, parameterNames }, problems, stop),
+    isotropy,
     variables,
   };
 }
