@@ -6,7 +6,7 @@ import type { Fraction } from './algebra/fraction.js';
 import type { Poly } from './algebra/poly.js';
 import type { Ring } from './algebra/ring.js';
 import type { Geometry } from './geometry/geometry.js';
-import type { LagrangianTerm, TensorFactor, Theory } from './notation/theory.js';
+import type { LagrangianTerm, TensorFactor, Theory, TheorySymbol } from './notation/theory.js';
 import type { TensorSum } from './tensor/expression.js';
 import type { CovariantEquations, Momenta } from './tensor/variation.js';
 
@@ -93,6 +93,14 @@ export interface CovariantTheory {
   readonly checks: readonly Check[];
 }
 
+/** The Lagrangian written in conventions other than the internal ones. */
+export interface LagrangianElsewhere {
+  /** What the user calls these conventions: the name of a preset, a file, or `the theory file`. */
+  readonly name: string;
+  readonly terms: readonly LagrangianTerm[];
+  readonly symbols: readonly TheorySymbol[];
+}
+
 export interface Derivation {
   readonly theory: Theory;
   readonly geometry: Geometry;
@@ -120,6 +128,8 @@ export interface Derivation {
   readonly screening: readonly Poly[] | undefined;
   readonly friedmann: FriedmannForm | undefined;
   readonly scalarTensor: ScalarTensorForm;
+  /** In the conventions of the theory file when they are not the internal ones, and in those asked for. */
+  readonly elsewhere?: readonly LagrangianElsewhere[];
   /** Present when it was asked for. */
   readonly covariant?: CovariantTheory;
   readonly checks: readonly Check[];

@@ -1,10 +1,12 @@
 /** `untwist derive`: one theory file in; a summary on the terminal and a folder of results out. */
 import { resolve } from 'node:path';
-import type { Derivation } from '../derivation.js';
+import type { Derivation, LagrangianElsewhere } from '../derivation.js';
 import { derive } from '../derive.js';
 import { derivationJson } from '../emit/json.js';
 import { loadGeometry } from '../geometry/build.js';
+import { type ConventionKey, internalWith } from '../notation/conventions.js';
 import { InputError, renderDiagnostic } from '../notation/diagnostics.js';
+import { lagrangianIn } from '../notation/output-conventions.js';
 import { readTheory } from '../notation/read-theory.js';
 import type { Theory } from '../notation/theory.js';
 import { EXIT, type Io } from './io.js';
@@ -19,6 +21,7 @@ export interface DeriveOptions {
   readonly factor?: boolean;
   readonly covariant?: boolean;
   readonly momenta?: boolean;
+  readonly conventions?: string;
   readonly json?: boolean;
   readonly force?: boolean;
 }
@@ -38,7 +41,7 @@ export async function deriveCommand(path: string, options: DeriveOptions, io: Io
   const theory = readTheory(text, file, { set: options.set });
   for (const warning of theory.warnings) io.stderr(`${renderDiagnostic(warning, { color: io.color })}\n`);
   try {
-    if (options.json) io.stdout(derivationJson(await derived(theory, options)));
+    if (options.json) io.stdout(derivationJson(await derived(theory, options, io)));
     else await writeResults(theory, options, io);
     return EXIT.done;
   } catch (error) {
@@ -56,7 +59,7 @@ async function writeResults(theory: Theory, options: DeriveOptions, io: Io): Pro
   refuseExisting(folder, Object.values(files), options.force ?? false);
   const progress = progressLine(io);
   try {
-    const derivation = await derived(theory, options, progress.step);
+    const derivation = await derived(theory, options, io, progress.step);
     const variables = chosenVariables(derivation, options.variables);
     progress.step('typesetting');
     const [{ derivationTex, equationsTex }, { typescriptModule }, { reportHtml }, { summary }] = await Promise.all([
@@ -83,7 +86,29 @@ async function writeResults(theory: Theory, options: DeriveOptions, io: Io): Pro
   }
 }
 
-async function derived(theory: Theory, options: DeriveOptions, onStep?: (what: string) => void): Promise<Derivation> {
+async function derived(
+  theory: Theory,
+  options: DeriveOptions,
+  io: Io,
+  onStep?: (what: string) => void,
+): Promise<Derivation> {
+  const elsewhere = await writtenElsewhere(theory, options.conventions, io);
+  const derivation = await reduced(theory, options, onStep);
+  return elsewhere.length > 0 ? { ...derivation, elsewhere } : derivation;
+}
+
+/** The Lagrangian as the theory file has it, when that is not the internal form, and as the user wants to see it. */
+async function writtenElsewhere(theory: Theory, asked: string | undefined, io: Io): Promise<LagrangianElsewhere[]> {
+  const own = Object.entries(internalWith(theory.signature)).some(
+    ([k, v]) => theory.conventions[k as ConventionKey] !== v,
+  );
+  const out = own ? [{ name: 'the theory file', ...lagrangianIn(theory, theory.conventions) }] : [];
+  if (asked === undefined) return out;
+  const { conventionsOption } = await import('./conventions-option.js');
+  return [...out, { name: asked, ...lagrangianIn(theory, await conventionsOption(asked, io)) }];
+}
+
+async function reduced(theory: Theory, options: DeriveOptions, onStep?: (what: string) => void): Promise<Derivation> {
   if (!options.covariant && !options.momenta) return derive(theory, onStep);
   const keepMomenta = options.momenta ?? false;
   if (!loadGeometry(theory.geometry, theory.signature).traceless)

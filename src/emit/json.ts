@@ -7,6 +7,7 @@ import { infix } from '../algebra/infix.js';
 import type { Poly } from '../algebra/poly.js';
 import { printRational } from '../algebra/rational.js';
 import type { CovariantTheory, Derivation, ScalarTensorForm } from '../derivation.js';
+import { printLagrangian } from '../notation/print.js';
 import type { TensorSum } from '../tensor/expression.js';
 import { factorsTex } from './latex-tensors.js';
 
@@ -82,6 +83,14 @@ export function derivationObject(d: Derivation): Record<string, unknown> {
     fluids: d.theory.matter.map((m) => ({ name: m.name, density: m.density, w: printRational(m.w) })),
     eliminated: texts(d.relations.eliminated),
     conditions: d.relations.conditions.map((c) => `${infix(c.value)} = 0`),
+    ...(d.elsewhere
+      ? {
+          lagrangianIn: d.elsewhere.map((e) => ({
+            conventions: e.name,
+            text: printLagrangian(e.terms, { symbols: e.symbols }),
+          })),
+        }
+      : {}),
     lagrangian: infix(d.lagrangian),
     reduced: infix(d.reducedGravity),
     dropped: infix(d.dropped),

@@ -75,6 +75,13 @@ export function theorySection(writer: Writer): Section {
       equationDisplays({ left: '\\mathcal{L}', terms: typed, part }),
     ),
   );
+  (derivation.elsewhere ?? []).forEach(({ name, terms, symbols: theirs }, i) => {
+    const lines = equationDisplays({ left: '\\mathcal{L}', terms: typedTerms(latexTerms(terms, theirs)), part });
+    const text = prose`In the conventions of ${name} the same Lagrangian reads`;
+    passages.push(
+      passage(`lagrangian-in-${i + 1}`, `The Lagrangian in the conventions of ${name}`, { text: [text] }, lines),
+    );
+  });
   if (relations.eliminated.size > 0) {
     const rows = polyRows(
       viewer,

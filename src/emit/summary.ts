@@ -59,6 +59,11 @@ export function summary(d: Derivation, options: SummaryOptions): string {
     'Lagrangian as understood',
     wrapped('', lagrangianLines(d.theory.lagrangian, { unicode: true, symbols: d.theory.symbols })),
   );
+  for (const { name, terms, symbols } of d.elsewhere ?? [])
+    section(
+      `Lagrangian in the conventions of ${name}`,
+      wrapped('', lagrangianLines(terms, { unicode: true, symbols })),
+    );
   section(
     'Imposed',
     [...d.relations.eliminated].flatMap(([name, value]) => wrapped(`${unicodeName(name)} = `, [scalar(value)])),
