@@ -3,8 +3,8 @@
  * before the other fields. Both orders are total on distinct monomials, so that output never depends on a ring's layout.
  */
 import { signOfRational, subtractRational } from '../algebra/rational.js';
-import type { BracketTerm, Factor } from './display.js';
 import type { DisplaySymbol, SymbolRole } from './display-symbols.js';
+import type { BracketTerm, Factor } from './display-terms.js';
 
 const ROLE_ORDER: readonly SymbolRole[] = [
   'constant',

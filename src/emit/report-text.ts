@@ -1,6 +1,10 @@
 /** Text as HTML: escaping, and paragraphs with formulas. */
 import type { Prose } from './latex-text.js';
-import type { Typesetter } from './report-math.js';
+
+/** What typesets a formula within a line. */
+export interface InlineTypesetter {
+  inline(tex: string): string;
+}
 
 const ENTITIES: Readonly<Record<string, string>> = {
   '&': '&amp;',
@@ -21,5 +25,5 @@ export const escapeHtml = (text: string): string =>
     .replace(/[&<>"']/g, (c) => ENTITIES[c]!);
 
 /** A paragraph's content: text escaped, formulas typeset. */
-export const proseHtml = (paragraph: Prose, typesetter: Typesetter): string =>
+export const proseHtml = (paragraph: Prose, typesetter: InlineTypesetter): string =>
   paragraph.map((piece) => (typeof piece === 'string' ? escapeHtml(piece) : typesetter.inline(piece.math))).join('');
