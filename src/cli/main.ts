@@ -4,6 +4,7 @@
 import { Command, CommanderError, Option } from 'commander';
 import { InputError, renderDiagnostic } from '../notation/diagnostics.js';
 import { EXIT, type Io } from './io.js';
+import { addLagrangianCommands } from './lagrangian-commands.js';
 
 const collect = (value: string, previous: string[]): string[] => [...previous, value];
 
@@ -39,6 +40,9 @@ export async function main(args: readonly string[], world: Io): Promise<number> 
       const { deriveCommand } = await import('./derive-command.js');
       code = await deriveCommand(theory, options, io);
     });
+  addLagrangianCommands(program, io, (exit) => {
+    code = exit;
+  });
   try {
     await program.parseAsync([...args], { from: 'user' });
     return code;

@@ -18,7 +18,12 @@ export interface Kind {
   readonly slots: number;
   /** Closed group, identity first. */
   readonly group: readonly SignedPermutation[];
+  /** Whether it stands before kinds of other names. */
+  readonly leads?: boolean;
 }
+
+/** Kinds are ordered by this text. */
+const rankName = ({ name, leads }: Kind): string => (leads ? ` ${name}` : name);
 
 /** Lines that connect slots: a number that occurs twice is a dummy, once is a free index. */
 export interface Factor {
@@ -166,7 +171,7 @@ function walkPart(
   const start: Walk = { placed: [], numbers: new Map(), arranged: [], sign: 1 };
   const before = interchangeable(factors, group, ends);
   if (!before) return undefined;
-  const kinds = [...new Set(group.map((i) => factors[i]!.kind.name))].sort();
+  const kinds = [...new Set(group.map((i) => rankName(factors[i]!.kind)))].sort();
   const code: number[] = [];
   let walks: Walk[] = [start];
   let placements = 0;
@@ -176,7 +181,7 @@ function walkPart(
     for (const walk of walks) {
       const candidates = step === 0 ? group : [nextFactor(walk, ends)];
       for (const f of candidates) {
-        const rank = kinds.indexOf(factors[f]!.kind.name);
+        const rank = kinds.indexOf(rankName(factors[f]!.kind));
         placements += factors[f]!.kind.group.length;
         if (placements > MAX_PLACEMENTS) throw new CanonicalLimitError();
         for (const element of factors[f]!.kind.group) {
@@ -203,7 +208,7 @@ function walkPart(
   }
   if (walks.some((w) => w.sign !== walks[0]!.sign)) return undefined;
   const { sign, arranged } = walks[0]!;
-  const names = arranged.map((f) => f.kind.name).join();
+  const names = arranged.map((f) => rankName(f.kind)).join();
   return { sign, code, names, factors: arranged };
 }
 

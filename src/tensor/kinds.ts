@@ -69,7 +69,7 @@ const BUILT_IN: readonly TensorKind[] = [
       { pair: [0, 2], to: 'T', keep: [1], sign: 1 },
     ],
   ),
-  makeKind('epsilon', 4, antisymmetric(4, 0, 3)),
+  { ...makeKind('epsilon', 4, antisymmetric(4, 0, 3)), leads: true },
   makeKind('eta', 2, [exchange(2, 0, 1, 1)]),
   partKind('T', 3, 'vector', [exchange(3, 1, 2, -1)]),
   partKind('T', 3, 'axial', antisymmetric(3, 0, 2)),

@@ -7,6 +7,7 @@ import { polyOfScalar } from '../notation/scalar-poly.js';
 import type { DeclaredTensor, LagrangianTerm, ScalarTerm } from '../notation/theory.js';
 import { canonicalSum, type TensorSum, type TensorTerm } from './expression.js';
 import { type KindTable, kindTable, makeKind } from './kinds.js';
+import type { ScalarCombination } from './relations.js';
 
 /** A ring with these names as constants. */
 export const ringOfNames = (names: Iterable<string>): Ring => makeRing(constantsOf(new Set(names)));
@@ -36,6 +37,14 @@ export const scalarsOf = (p: Poly): ScalarTerm[] =>
       .map(([g, e]) => [p.ring.generators[g]!.name, e] as const)
       .sort(([a], [b]) => (a < b ? -1 : a > b ? 1 : 0)),
   }));
+
+/** A sum whose coefficients are numbers. @throws RangeError when one contains a symbol. */
+export const combinationOf = (sum: TensorSum): ScalarCombination =>
+  sum.map(({ coefficient, factors }) => {
+    const [only, more] = scalarsOf(coefficient);
+    if (!only || more || only.powers.length > 0) throw new RangeError('a coefficient is no number');
+    return { coefficient: only.coefficient, factors };
+  });
 
 /** The sum as terms that the notation prints and reads back, one for each monomial of a coefficient. */
 export const lagrangianOf = (sum: TensorSum): LagrangianTerm[] =>

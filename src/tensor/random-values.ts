@@ -30,6 +30,16 @@ export interface RandomPoint {
   components(factors: readonly TensorSymbol[], free: readonly string[]): Float64Array;
 }
 
+/** More components than this in an intermediate product are refused. */
+export const MAX_DENSE = 4 ** 11;
+
+/** Thrown when a product needs more intermediate components than MAX_DENSE. */
+export class TooLargeError extends RangeError {
+  constructor() {
+    super(`a product of tensors needs more than ${MAX_DENSE} intermediate components`);
+  }
+}
+
 /** Linear congruential steps are enough here: what is needed is independence, not secrecy. */
 function generatorOf(seed: number): () => number {
   let state = (seed * 2_654_435_761) >>> 0;
@@ -163,6 +173,7 @@ class Space {
     const shared = a.names.filter((n) => b.names.includes(n));
     const freeA = a.names.filter((n) => !shared.includes(n));
     const freeB = b.names.filter((n) => !shared.includes(n));
+    if (size ** (freeA.length + freeB.length) > MAX_DENSE) throw new TooLargeError();
     const offsets = (names: readonly string[], of: Placed): Int32Array =>
       this.grid(
         names.map((name) => size ** (of.names.length - 1 - of.names.indexOf(name))),

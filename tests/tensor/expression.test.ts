@@ -60,7 +60,7 @@ describe('ε', () => {
 
   it('pairs go first when there are three or four', () => {
     expect(shown([term('eps_abcd eps^abcd eps_efgh eps^efgh')])).toBe('576·');
-    expect(shown([term('eps_abcd eps^abcd eps^efgh R_efgh')])).toBe('-24·R(_a_b_c_d)epsilon(^a^b^c^d)');
+    expect(shown([term('eps_abcd eps^abcd eps^efgh R_efgh')])).toBe('-24·epsilon(_a_b_c_d)R(^a^b^c^d)');
   });
 
   it('vanishes against a symmetric pair', () => {
