@@ -4,9 +4,10 @@
  * another prime. A false relation survives one fresh point with probability about 1/p, so CHECKS points leave less than
  * 10^-30.
  */
+import { remember } from '../algebra/memo.js';
 import { echelonMod, multiplyMod, PRIMES, reconstruct, residue } from '../algebra/modular.js';
 import { ONE, type Rational } from '../algebra/rational.js';
-import type { TensorSymbol } from './expression.js';
+import { factorsKey, type TensorSymbol } from './expression.js';
 import type { KindTable } from './kinds.js';
 import { type RandomPoint, randomPoint } from './random-values.js';
 
@@ -38,15 +39,11 @@ export const linearRelations = (products: readonly (readonly TensorSymbol[])[], 
 
 /** Values of sums at a point; a product that occurs in several is evaluated once. */
 function valuesAt(point: RandomPoint, sums: readonly ScalarCombination[]): Float64Array {
-  const known = new Map<readonly TensorSymbol[], number>();
+  const known = new Map<string, number>();
   const { prime } = point;
   return Float64Array.from(sums, (sum) =>
     sum.reduce((total, { coefficient, factors }) => {
-      let value = known.get(factors);
-      if (value === undefined) {
-        value = point.value(factors);
-        known.set(factors, value);
-      }
+      const value = remember(known, factorsKey(factors), () => point.value(factors));
       return (total + multiplyMod(residue(coefficient, prime), value, prime)) % prime;
     }, 0),
   );
