@@ -99,7 +99,7 @@ describe('screeningConditions', () => {
             g(c),
             // A lapse in every term: a number without any field would change no equation.
             g('N', random.pick([1, 1, -1])),
-            random.chance(60) ? g('k') : constant(ring, 1),
+            g('k', random.pick([0, 1, 1, 2])),
             randomPoly(random, ring, names),
           ]),
         ),
@@ -123,6 +123,11 @@ describe('screeningConditions', () => {
     const p = product(ring, [g('k'), g('c1'), add(multiply(g('a'), g('D(phi,1)')), multiply(g('phi'), g('D(a,1)')))]);
     const { reduced } = dropTotalDerivatives(p, ['a', 'phi'], 'N');
     expect(screeningConditions(reduced, 'k', ['k'], [])).toEqual([]);
+  });
+
+  it('look at every power of k', () => {
+    const p = sum(ring, [product(ring, [g('k', 2), g('c1'), g('N')]), product(ring, [g('k'), g('c2'), g('a')])]);
+    expect(screeningConditions(p, 'k', ['k'], []).map(infix)).toEqual(['c1', 'c2']);
   });
 
   it('contain a number when no coupling can remove k', () => {

@@ -179,6 +179,8 @@ describe('relations that cannot hold', () => {
   it('are refused when conditions exclude each other', () => {
     expect(codeOf(() => solve('c1 c2 = 1', 'c1 c2 = 2'))).toBe('contradiction');
     expect(codeOf(() => solve('c1 c2 = c3^2', '2 c1 c2 = 2 c3^2 + 1'))).toBe('contradiction');
+    // Only with a value for c3 do the two exclude each other.
+    expect(codeOf(() => solve('c1 c2 = 1', 'c1 c2 = c3^2', 'c3 = 2'))).toBe('contradiction');
     expect(codeOf(() => solve('c1 c2 = c3', 'c0^2 = c0 c1 + c2^2 c3^2', 'c1 c2 = 2 c3'))).toBe('accepted');
   });
 

@@ -191,6 +191,11 @@ describe('a Lagrangian without a bi-scalar form', () => {
     expect(refusal(add(whole, missing)).offending).toBe('6*phi*D(a,1)*D(psi,1)/a');
   });
 
+  it('or knows a length by itself', () => {
+    const massive = product(ring, [volume, g('a', 2), g('phi')]);
+    expect(refusal(add(base, massive)).offending).toBe('a^2*phi');
+  });
+
   it('is judged at k = 0 only', () => {
     const curved = product(ring, [volume, power(hubble, 3), rate('phi'), g('k')]);
     const { obstruction } = found(add(base, curved));
