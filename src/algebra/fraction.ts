@@ -5,7 +5,7 @@
  * other or to the numerator, so equality is `equalFraction`, not sameness of form. Imports polynomials.
  */
 
-import { timeDerivative } from './calculus.js';
+import { partial, timeDerivative } from './calculus.js';
 import { divideExactly, splitUnit } from './division.js';
 import { compareSimplicity } from './linear.js';
 import {
@@ -95,20 +95,25 @@ export const equalFraction = (a: Fraction, b: Fraction): boolean =>
     expand(b.numerator, lacking(b.denominator, a.denominator)),
   );
 
-/** d/dt by the quotient rule: (n/Πb^p)' = (n' Πb − n Σ p b' Π of the others) / Πb^(p+1). */
-export function timeDerivativeOfFraction(a: Fraction): Fraction {
-  const bases = a.denominator.map((f) => f.base);
+/** A derivation applied by the quotient rule: (n/Πb^p)' = (n' Πb − n Σ p b' Π of the others) / Πb^(p+1). */
+function derivative(a: Fraction, of: (p: Poly) => Poly): Fraction {
+  const moving = a.denominator.filter((f) => !isZero(of(f.base)));
+  const still = a.denominator.filter((f) => !moving.includes(f));
+  const bases = moving.map((f) => f.base);
   const { ring } = a.numerator;
-  const product = (of: readonly Poly[]): Poly => of.reduce(multiply, constant(ring, 1));
-  const slopes = a.denominator.map(({ base, power: n }, i) =>
-    product([scale(timeDerivative(base), n), ...bases.filter((_, j) => j !== i)]),
+  const product = (factors: readonly Poly[]): Poly => factors.reduce(multiply, constant(ring, 1));
+  const slopes = moving.map(({ base, power: n }, i) =>
+    product([scale(of(base), n), ...bases.filter((_, j) => j !== i)]),
   );
-  const top = subtract(multiply(timeDerivative(a.numerator), product(bases)), multiply(a.numerator, sum(ring, slopes)));
-  return fraction(
-    top,
-    a.denominator.map(({ base, power: n }) => ({ base, power: n + 1 })),
-  );
+  const top = subtract(multiply(of(a.numerator), product(bases)), multiply(a.numerator, sum(ring, slopes)));
+  return fraction(top, [...moving.map(({ base, power: n }) => ({ base, power: n + 1 })), ...still]);
 }
+
+/** d/dt. */
+export const timeDerivativeOfFraction = (a: Fraction): Fraction => derivative(a, timeDerivative);
+
+/** Partial derivative with respect to one generator, all others held fixed. */
+export const partialOfFraction = (a: Fraction, name: string): Fraction => derivative(a, (p) => partial(p, name));
 
 /** Whether the value obeys the invariant stated at the top of this module. */
 export const isCanonicalFraction = (a: Fraction): boolean =>

@@ -52,6 +52,25 @@ export function powerRational(a: Rational, n: number): Rational {
   return { num: a.num ** BigInt(n), den: a.den ** BigInt(n) };
 }
 
+/** Integer part of the root of a natural number, by Newton's method from above. */
+function integerRoot(n: bigint): bigint {
+  if (n < 2n) return n;
+  let x = 1n << BigInt((n.toString(2).length + 1) >> 1);
+  for (;;) {
+    const y = (x + n / x) >> 1n;
+    if (y >= x) return x;
+    x = y;
+  }
+}
+
+/** The non-negative root when it is rational, else undefined. */
+export function squareRootOf(a: Rational): Rational | undefined {
+  if (a.num < 0n) return undefined;
+  const num = integerRoot(a.num);
+  const den = integerRoot(a.den);
+  return num * num === a.num && den * den === a.den ? { num, den } : undefined;
+}
+
 /** Text `p` or `p/q`; what it prints is read back by the expression grammar of docs/formats.md. */
 export const printRational = (a: Rational): string => (a.den === 1n ? `${a.num}` : `${a.num}/${a.den}`);
 

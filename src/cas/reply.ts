@@ -1,5 +1,6 @@
 /**
- * Reads the text that a computer algebra package replies with: integers, names, + - * / ^ and brackets, nothing else.
+ * Reads the text that a computer algebra package replies with: integers, names, + - * / ^ and brackets, and where they
+ * are asked for elementary functions and powers with denominator 2, nothing else.
  * A reply is untrusted: it is read into a tree within stated limits and then built up in the kernel; anything that is not
  * of this form (decimal points, functions, unknown names) is an error. Imports the algebra only.
  */
@@ -20,7 +21,9 @@ export type Expression =
   | { readonly kind: 'name'; readonly name: string }
   | { readonly kind: '+' | '-' | '*' | '/'; readonly left: Expression; readonly right: Expression }
   | { readonly kind: 'negative'; readonly of: Expression }
-  | { readonly kind: 'power'; readonly base: Expression; readonly exponent: number };
+  | { readonly kind: 'power'; readonly base: Expression; readonly exponent: number }
+  | { readonly kind: 'root'; readonly base: Expression; readonly halves: number }
+  | { readonly kind: 'call'; readonly name: string; readonly of: Expression };
 
 const MAX_LENGTH = 200_000;
 const MAX_DEPTH = 200;
@@ -28,8 +31,12 @@ const MAX_DEPTH = 200;
 const MAX_OPERATORS = 5_000;
 const MAX_DIGITS = 1_000;
 
-/** The tree of a reply. @throws ReplyError. */
-export function readReply(text: string): Expression {
+/**
+ * The tree of a reply.
+ * @param functions names of functions that may be called; with any, powers n/2 are read too.
+ * @throws ReplyError.
+ */
+export function readReply(text: string, functions: ReadonlySet<string> = new Set()): Expression {
   if (text.length > MAX_LENGTH) throw new ReplyError(`a reply of ${text.length} characters`);
   const tokens = tokensOf(text);
   let at = 0;
@@ -75,10 +82,21 @@ export function readReply(text: string): Expression {
     const base = atom();
     if (tokens[at] !== '^') return base;
     at++;
+    const halves = functions.size > 0 ? halfExponent() : undefined;
+    if (halves !== undefined) return { kind: 'root', base, halves };
     const exponent = integerExponent();
     // a^b^c is written by neither package; its meaning would be a guess.
     if (tokens[at] === '^') fail();
     return { kind: 'power', base, exponent };
+  }
+  /** `(n/2)` or `(-n/2)`. */
+  function halfExponent(): number | undefined {
+    const negative = tokens[at + 1] === '-';
+    const [open, top, slash, bottom, close] = tokens.slice(at, at + 6).filter((t) => t !== '-');
+    if (open !== '(' || slash !== '/' || bottom !== '2' || close !== ')' || !/^\d{1,3}$/.test(top ?? ''))
+      return undefined;
+    at += negative ? 6 : 5;
+    return negative ? -Number(top) : Number(top);
   }
   function integerExponent(): number {
     const bracket = tokens[at] === '(';
@@ -105,6 +123,12 @@ export function readReply(text: string): Expression {
     }
     if (!/^[A-Za-z]/.test(token)) fail();
     at++;
+    if (tokens[at] === '(' && functions.has(token)) {
+      at++;
+      const of = sum();
+      expect(')');
+      return { kind: 'call', name: token, of };
+    }
     return { kind: 'name', name: token };
   }
 
@@ -158,6 +182,8 @@ export function valueOfReply(
       case 'power':
         if (Math.abs(e.exponent) > room) throw new ReplyError(`the power ${e.exponent} in a reply`);
         return power(value(e.base, room / Math.max(1, Math.abs(e.exponent))), e.exponent);
+      default:
+        throw new ReplyError('a function where a polynomial was asked for');
     }
   };
   return value(tree, maxExponent);

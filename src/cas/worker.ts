@@ -6,23 +6,35 @@
 import { parentPort, workerData } from 'node:worker_threads';
 
 /** What is asked: to factor a polynomial in some symbols, written with integers, names and + - * ^. */
-export interface Question {
+export interface FactorQuestion {
   readonly library: 'nerdamer' | 'algebrite';
   readonly polynomial: string;
   readonly symbols: readonly string[];
 }
 
+/** What is asked: an antiderivative of an expression in v1, written with integers and + - * / ^. */
+export interface IntegralQuestion {
+  readonly library: 'algebrite';
+  readonly integrand: string;
+}
+
+export type Question = FactorQuestion | IntegralQuestion;
+
 /** What comes back: the text of the library, or why there is none. */
 export type Answer = { readonly reply: string } | { readonly fault: string };
 
 const LIBRARIES: Readonly<Record<Question['library'], (question: Question) => Promise<string>>> = {
-  async nerdamer({ polynomial }) {
+  async nerdamer(question) {
+    if ('integrand' in question) throw new Error('nerdamer is not asked for antiderivatives');
+    const { polynomial } = question;
     const { default: nerdamer } = await import('nerdamer/nerdamer.core.js');
     await import('nerdamer/Algebra.js');
     return nerdamer(`factor(${polynomial})`).toString();
   },
-  async algebrite({ polynomial, symbols }) {
+  async algebrite(question) {
     const { default: algebrite } = await import('algebrite');
+    if ('integrand' in question) return algebrite.run(`integral(${question.integrand},v1)`);
+    const { polynomial, symbols } = question;
     return algebrite.run(`factor(${[polynomial, ...symbols].join(',')})`);
   },
 };
