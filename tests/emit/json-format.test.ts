@@ -1,0 +1,91 @@
+/** The shape of derivation.json as docs/formats.md states it, by a general-purpose schema validator. */
+import { readdirSync, readFileSync } from 'node:fs';
+import * as v from 'valibot';
+import { describe, expect, it } from 'vitest';
+import { withCovariant } from '../../src/covariant.js';
+import { derive } from '../../src/derive.js';
+import { derivationJson } from '../../src/emit/json.js';
+import { readTheory } from '../../src/notation/read-theory.js';
+import { evaluate } from '../oracle/infix.js';
+
+const names = new Set<string>();
+/** An expression that the grammar of docs/formats.md reads; its names are remembered. */
+const expression = v.pipe(
+  v.string(),
+  v.check((text) => {
+    evaluate<number>(text, {
+      integer: () => 1,
+      name: (name) => {
+        names.add(name);
+        return 1;
+      },
+      add: () => 1,
+      sub: () => 1,
+      mul: () => 1,
+      div: () => 1,
+      pow: () => 1,
+    });
+    return true;
+  }, 'not an expression of docs/formats.md'),
+);
+const expressions = v.record(v.string(), expression);
+const tensors = v.array(v.strictObject({ coefficient: expression, tensors: v.string() }));
+
+const format = v.looseObject({
+  untwist: v.literal(1),
+  theory: v.string(),
+  geometry: v.string(),
+  variables: v.array(v.string()),
+  parameters: v.array(v.string()),
+  sources: v.array(v.string()),
+  fluids: v.array(
+    v.strictObject({ name: v.string(), density: v.string(), w: v.pipe(v.string(), v.regex(/^-?\d+(\/\d+)?$/)) }),
+  ),
+  eliminated: expressions,
+  conditions: v.array(v.pipe(v.string(), v.endsWith(' = 0'))),
+  lagrangian: expression,
+  reduced: expression,
+  dropped: expression,
+  equations: expressions,
+  combinations: v.array(expression),
+  screening: v.optional(v.array(expression)),
+  friedmann: v.optional(v.strictObject({ rho_T: expression, p_T: expression })),
+  scalarTensor: v.variant('form', [
+    v.looseObject({
+      form: v.literal('bi-scalar'),
+      validFor: v.picklist(['every k', 'k = 0']),
+      G4: expression,
+      kinetic: expressions,
+      current: expressions,
+      potential: expression,
+      curvatureObstruction: expression,
+    }),
+    v.looseObject({ form: v.literal('none'), reason: v.string(), offending: v.optional(expression) }),
+  ]),
+  covariant: v.optional(v.looseObject({ lagrangian: tensors, E_ab: tensors, E_abc: tensors, metricTerms: tensors })),
+  checks: v.pipe(
+    v.array(v.strictObject({ name: v.string(), holds: v.literal(true), detail: v.string() })),
+    v.minLength(5),
+  ),
+  warnings: v.array(v.string()),
+});
+
+const folder = new URL('../../rules/examples/', import.meta.url);
+
+describe('derivation.json', () => {
+  for (const file of readdirSync(folder).filter((f) => f.endsWith('.yaml')))
+    it(`of ${file} has the documented shape, and lists every symbol`, () => {
+      names.clear();
+      const theory = readTheory(readFileSync(new URL(file, folder), 'utf8'), file);
+      const json: unknown = JSON.parse(derivationJson(withCovariant(derive(theory), false)));
+      const { variables, parameters } = v.parse(format, json);
+      expect([...names].filter((n) => !variables.includes(n) && !parameters.includes(n))).toEqual([]);
+    });
+
+  it('is refused by the validator when a key is wrong', () => {
+    const theory = readTheory('untwist: 1\nname: x\nscales: { M: mass }\nlagrangian: M^2 R\n', 'x.yaml');
+    const json = JSON.parse(derivationJson(derive(theory))) as Record<string, unknown>;
+    expect(v.safeParse(format, json).success).toBe(true);
+    expect(v.safeParse(format, { ...json, equations: 'none' }).success).toBe(false);
+  });
+});
