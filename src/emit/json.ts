@@ -43,6 +43,11 @@ const covariantObject = (c: CovariantTheory): Record<string, unknown> => ({
   metricTerms: tensorSum(c.inMetricTerms),
 });
 
+const covariantCoefficients = (c: CovariantTheory): Poly[] =>
+  [c.lagrangian, c.momenta.torsion, c.momenta.curvature, c.equations.coframe, c.equations.connection, c.inMetricTerms]
+    .flat()
+    .map((t) => t.coefficient);
+
 /** Every polynomial that the JSON prints. */
 function expressions(d: Derivation): Poly[] {
   const form = d.scalarTensor;
@@ -55,6 +60,7 @@ function expressions(d: Derivation): Poly[] {
     ...d.combinations,
     ...(d.screening ?? []),
     ...(d.friedmann ? [d.friedmann.rhoT, d.friedmann.pT] : []),
+    ...(d.covariant ? covariantCoefficients(d.covariant) : []),
     ...d.relations.eliminated.values(),
     ...d.relations.conditions.map((c) => c.value),
     ...(form.form === 'none'
