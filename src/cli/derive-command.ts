@@ -51,6 +51,22 @@ export async function deriveCommand(path: string, options: DeriveOptions, io: Io
   }
 }
 
+/** Terms of all equations together beyond which nobody reads them and typesetting takes minutes. */
+const MAX_TYPESET_TERMS = 50_000;
+
+function refuseEndless({ equations }: Derivation): void {
+  const terms = [...equations.values()].reduce((n, e) => n + e.size, 0);
+  if (terms <= MAX_TYPESET_TERMS) return;
+  throw new InputError([
+    {
+      code: 'terms-limit',
+      severity: 'error',
+      message: `the equations have ${terms} terms; more than ${MAX_TYPESET_TERMS} are not typeset`,
+      hint: 'give --json, which prints all of them and nothing else',
+    },
+  ]);
+}
+
 const isOutput = (code: string): boolean => code.startsWith('output-') || code === 'unknown-variables';
 
 async function writeResults(theory: Theory, options: DeriveOptions, io: Io): Promise<void> {
@@ -61,6 +77,7 @@ async function writeResults(theory: Theory, options: DeriveOptions, io: Io): Pro
   try {
     const derivation = await derived(theory, options, io, progress.step);
     const variables = chosenVariables(derivation, options.variables);
+    refuseEndless(derivation);
     progress.step('typesetting');
     const [{ derivationTex, equationsTex }, { typescriptModule }, { reportHtml }, { summary }] = await Promise.all([
       import('../emit/latex.js'),

@@ -141,6 +141,17 @@ describe('untwist derive', () => {
     expect(contentOf(out)).toEqual({ 'derivation.tex': 'old' });
   });
 
+  it('typesets no equations that nobody would read, but prints them as JSON', async () => {
+    const { file, out, folder } = harbour(
+      'untwist: 1\nname: Old pier\nlagrangian: R^5/M^6\nscales: { M: mass }\ngeometry: bianchi-i\n',
+    );
+    const { code, err } = await run(['derive', file, '--out', out]);
+    expect(code).toBe(1);
+    expect(err).toMatch(/error: the equations have \d{5,} terms; more than 50000 are not typeset\nhint: give --json/);
+    expect(Object.keys(contentOf(folder))).toEqual(['pier.yaml']);
+    expect((await run(['derive', file, '--json'])).code).toBe(0);
+  });
+
   it('names the file for a fault that has no place in it', async () => {
     const { file } = harbour(`${THEORY}geometry: flwr\n`);
     const { code, err } = await run(['derive', file, '--json']);
