@@ -10,11 +10,11 @@ import { remember } from '../algebra/memo.js';
 import { scale } from '../algebra/poly.js';
 import { ONE } from '../algebra/rational.js';
 import { makeRing } from '../algebra/ring.js';
-import { bundledBasis } from './basis-file.js';
 import { contractions } from './enumerate.js';
 import { canonicalSum, factorsKey, type TensorSum, type TensorSymbol, type TensorTerm } from './expression.js';
 import { MAX_CONTENT_SLOTS } from './independent-scalars.js';
 import type { KindTable, TensorKind } from './kinds.js';
+import { inPreferredOrder } from './preference.js';
 import { TooLargeError } from './random-values.js';
 import { relationsOfSums, type ScalarCombination } from './relations.js';
 import type { Step } from './rewrite.js';
@@ -27,9 +27,6 @@ export interface Density {
   /** The product of the sum that is to be eliminated. */
   readonly eliminates: readonly TensorSymbol[];
 }
-
-/** The basis whose invariants come first. */
-const PREFERRED = 'monomials';
 
 export const DIMENSION_RULE = 'four-dimensions';
 const DIMENSION_WHY = 'a linear relation that holds in four dimensions, found and tested on random exact components';
@@ -115,13 +112,9 @@ function reduceGroup(
   for (const { sum } of zeros) for (const { factors } of sum) known.set(factorsKey(factors), factors);
   for (const content of new Set([...known.values()].map(contentOf)))
     for (const factors of productsOf(content, kinds)) known.set(factorsKey(factors), factors);
-  const preferred = bundledBasis(PREFERRED).entries.map((e) => factorsKey(e.sum[0]!.factors));
-  const rank = (key: string): number => {
-    const place = preferred.indexOf(key);
-    return last.has(key) ? preferred.length + 1 : place < 0 ? preferred.length : place;
-  };
-  const keys = [...known.keys()].sort((a, b) => rank(a) - rank(b) || a.length - b.length || (a < b ? -1 : 1));
-  const products = keys.map((key): ScalarCombination => [{ coefficient: ONE, factors: known.get(key)! }]);
+  const ordered = inPreferredOrder([...known.values()], last);
+  const keys = ordered.map(factorsKey);
+  const products = ordered.map((factors): ScalarCombination => [{ coefficient: ONE, factors }]);
   const { basis, dependent } = relationsOfSums([...zeros.map((z) => z.sum), ...products], kinds);
   return group.flatMap((term): TensorTerm[] => {
     const coefficients = dependent.get(zeros.length + keys.indexOf(factorsKey(term.factors)));
@@ -130,7 +123,7 @@ function reduceGroup(
     const after = coefficients.flatMap((c, n): TensorTerm[] => {
       const at = basis[n]! - zeros.length;
       if (c.num === 0n || at < 0) return [];
-      return [{ coefficient: scale(term.coefficient, c), factors: known.get(keys[at]!)! }];
+      return [{ coefficient: scale(term.coefficient, c), factors: ordered[at]! }];
     });
     steps.push({
       ruleId: used.length === 0 ? DIMENSION_RULE : used.map((z) => z.ruleId).join(', '),

@@ -6,6 +6,7 @@ import { InputError } from '../notation/diagnostics.js';
 import { contractions } from './enumerate.js';
 import type { TensorSymbol } from './expression.js';
 import { type KindTable, kindTable } from './kinds.js';
+import { inPreferredOrder } from './preference.js';
 import { linearRelations } from './relations.js';
 
 export interface Content {
@@ -17,7 +18,7 @@ export type Parity = 'even' | 'odd';
 
 export interface IndependentScalars {
   readonly parity: Parity;
-  /** Each product that is no combination of earlier ones. */
+  /** In the order of preference.ts, each product that is no combination of earlier ones. */
   readonly basis: readonly (readonly TensorSymbol[])[];
   /** The other canonical products, along the basis. */
   readonly dependent: readonly { readonly factors: readonly TensorSymbol[]; readonly along: readonly Rational[] }[];
@@ -50,7 +51,7 @@ export function independentScalars(
     ...Array.from({ length: curvature }, () => kinds.get('R/4')!),
     ...(parity === 'odd' ? [kinds.get('epsilon/4')!] : []),
   ];
-  const products = contractions(makeRing([]), tensors, kinds);
+  const products = inPreferredOrder(contractions(makeRing([]), tensors, kinds));
   const { basis, dependent } = linearRelations(products, kinds);
   return {
     parity,

@@ -8,13 +8,13 @@ describe('untwist invariants', () => {
     expect(out).toBe(
       [
         'even parity: 3',
-        '  T_a T^a',
         '  T_{abc} T^{abc}',
         '  T_{abc} T^{bac}',
+        '  T_a T^a',
         '',
         'odd parity: 2; 2 more are combinations of them',
         '  ε_{abcd} T^a T^{bcd}',
-        '  ε_{abcd} T^{ab}{}_e T^{cde}',
+        '  ε_{abcd} T_e{}^{ab} T^{ecd}',
         '',
       ].join('\n'),
     );
