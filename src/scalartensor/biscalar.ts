@@ -4,7 +4,7 @@
  * form on the metric geometry and compared equation by equation.
  */
 import { eulerLagrange, partial } from '../algebra/calculus.js';
-import { coefficientOf, collect, monomialOf, substitute } from '../algebra/collect.js';
+import { coefficientOf, collect, monomialOf, partition, substitute } from '../algebra/collect.js';
 import {
   constant,
   equals,
@@ -86,17 +86,7 @@ export function biScalarForm(gravity: Gravity, roles: BiScalarRoles): BiScalarOu
     return {
       found: false,
       reason: 'the coefficient of H times a velocity must be the derivative of the coefficient of H² and is not',
-      offending: sum(
-        ring,
-        wrong.map(({ q, excess }) =>
-          product(ring, [
-            excess,
-            generator(ring, jetName(q, 1)),
-            generator(ring, jetName(a, 1)),
-            generator(ring, a, -1),
-          ]),
-        ),
-      ),
+      offending: mismatch(coefficient, a, scalars, wrong),
     };
   const functions: BiScalarFunctions = {
     g4: scale(inverse, rational(-1, 6)),
@@ -105,6 +95,31 @@ export function biScalarForm(gravity: Gravity, roles: BiScalarRoles): BiScalarOu
     potential: negate(coefficient()),
   };
   return { found: true, functions, obstruction: verified(gravity, functions, roles) };
+}
+
+/** The terms of the Lagrangian in H² and H q̇ that do not fit each other; `excess` is what H q̇ has too much. */
+function mismatch(
+  coefficient: QuadraticForm['coefficient'],
+  a: string,
+  scalars: readonly string[],
+  wrong: readonly { readonly q: string; readonly excess: Poly }[],
+): Poly {
+  const { ring } = coefficient();
+  const places = scalars.map((q) => positionOf(ring, q));
+  const rate = (q: string): Poly =>
+    multiply(generator(ring, jetName(q, 1)), q === a ? generator(ring, a, -1) : constant(ring, 1));
+  const powersOf = (e: (g: number) => number, lowered?: string): string =>
+    places.map((g, i) => e(g) - (scalars[i] === lowered ? 1 : 0)).join();
+  const unfit = wrong.map(({ q, excess }) => {
+    const groups = collect(excess, (g) => places.includes(g)).map(({ monomial: powers }) => new Map(powers));
+    return { q, powers: new Set(groups.map((powers) => powersOf((g) => powers.get(g) ?? 0))) };
+  });
+  const [squares] = partition(coefficient(a, a), (e) => unfit.some(({ q, powers }) => powers.has(powersOf(e, q))));
+  const mixed = unfit.map(({ q, powers }) => {
+    const [terms] = partition(coefficient(a, q), (e) => powers.has(powersOf(e)));
+    return product(ring, [terms, rate(a), rate(q)]);
+  });
+  return sum(ring, [product(ring, [squares, rate(a), rate(a)]), ...mixed]);
 }
 
 interface QuadraticForm {

@@ -188,7 +188,17 @@ describe('a Lagrangian without a bi-scalar form', () => {
     const whole = byHand({ ...randomFunctions(new Random(1)), g4: multiply(g('phi'), g('psi')) });
     expect(biScalarForm(known(whole), ROLES).found).toBe(true);
     const missing = scale(product(ring, [volume, hubble, rate('psi'), g('phi')]), 6);
-    expect(refusal(add(whole, missing)).offending).toBe('6*phi*D(a,1)*D(psi,1)/a');
+    expect(refusal(add(whole, missing)).offending).toBe('-6*phi*psi*D(a,1)^2/a^2');
+    const doubled = scale(missing, -1);
+    expect(refusal(add(whole, doubled)).offending).toBe('-6*phi*psi*D(a,1)^2/a^2 - 12*phi*D(a,1)*D(psi,1)/a');
+  });
+
+  it('names terms that the Lagrangian has: H² ψ² without its partner, for u² v²', () => {
+    const difference = subtract(hubble, g('phi'));
+    const quartic = product(ring, [volume, difference, difference, g('psi', 2), g('c')]);
+    expect(refusal(add(quartic, byHand({ ...randomFunctions(new Random(1)), g4: g('phi') }))).offending).toBe(
+      'c*psi^2*D(a,1)^2/a^2',
+    );
   });
 
   it('or knows a length by itself', () => {
