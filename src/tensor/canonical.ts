@@ -185,15 +185,16 @@ function walkPart(
         placements += factors[f]!.kind.group.length;
         if (placements > MAX_PLACEMENTS) throw new CanonicalLimitError();
         for (const element of factors[f]!.kind.group) {
-          const placed = place(walk, f, rank, factors[f]!, element, ends, before);
+          const placed = write(walk, rank, factors[f]!, element, ends, before);
           if (!placed) continue;
-          const { written, next } = placed;
+          const { written, fresh } = placed;
           const order = best === undefined ? -1 : compareCodes(written, best);
           if (order > 0) continue;
           if (order < 0) {
             best = written;
             kept = new Map();
           }
+          const next = advance(walk, f, factors[f]!, element, fresh);
           const key = stateKey(next);
           const twin = kept.get(key);
           if (twin === undefined) kept.set(key, next);
@@ -212,8 +213,8 @@ function walkPart(
   return { sign, code, names, factors: arranged };
 }
 
-const stateKey = (walk: Walk): string =>
-  `${[...walk.placed].sort((a, b) => a - b)}|${[...walk.numbers].sort((a, b) => a[0] - b[0]).join(';')}`;
+/** Dummies are numbered in the order in which they are met, so their order tells their numbers. */
+const stateKey = (walk: Walk): string => `${[...walk.placed].sort((a, b) => a - b)}|${[...walk.numbers.keys()].join()}`;
 
 /** The unplaced factor at the other end of the lowest open dummy. */
 function nextFactor(walk: Walk, ends: ReadonlyMap<number, readonly number[]>): number {
@@ -230,41 +231,52 @@ function nextFactor(walk: Walk, ends: ReadonlyMap<number, readonly number[]>): n
 }
 
 /**
- * Places a factor in one arrangement of its slots: what it writes, and the walk after it. Undefined when interchangeable
+ * What a factor writes in one arrangement of its slots, and the dummies that it numbers. Undefined when interchangeable
  * dummies would come in another order than their own.
  */
-function place(
-  walk: Walk,
-  f: number,
+function write(
+  { numbers }: Walk,
   rank: number,
-  factor: Factor,
-  element: SignedPermutation,
+  { lines }: Factor,
+  { places }: SignedPermutation,
   ends: ReadonlyMap<number, readonly number[]>,
   before: ReadonlyMap<number, number>,
-): { written: number[]; next: Walk } | undefined {
-  const numbers = new Map(walk.numbers);
-  const lines = element.places.map((p) => factor.lines[p]!);
+): { written: number[]; fresh: number[] } | undefined {
+  const fresh: number[] = [];
   const written = [rank];
-  for (const line of lines) {
+  for (const place of places) {
+    const line = lines[place]!;
     if (ends.get(line)!.length === 1) {
       // Free indices come first, in their own order.
       written.push(line - 1e6);
       continue;
     }
-    let number = numbers.get(line);
-    if (number === undefined) {
-      const first = before.get(line);
-      if (first !== undefined && !numbers.has(first)) return undefined;
-      number = numbers.size + 1;
-      numbers.set(line, number);
+    const known = numbers.get(line);
+    if (known !== undefined) {
+      written.push(known);
+      continue;
     }
-    written.push(number);
+    let at = fresh.indexOf(line);
+    if (at < 0) {
+      const first = before.get(line);
+      if (first !== undefined && !numbers.has(first) && !fresh.includes(first)) return undefined;
+      at = fresh.push(line) - 1;
+    }
+    written.push(numbers.size + at + 1);
   }
-  const next: Walk = {
-    placed: [...walk.placed, f],
-    numbers,
-    arranged: [...walk.arranged, { kind: factor.kind, lines }],
-    sign: (walk.sign * element.sign) as 1 | -1,
-  };
-  return { written, next };
+  return { written, fresh };
 }
+
+/** The walk with one more factor. */
+const advance = (
+  walk: Walk,
+  f: number,
+  { kind, lines }: Factor,
+  { places, sign }: SignedPermutation,
+  fresh: readonly number[],
+): Walk => ({
+  placed: [...walk.placed, f],
+  numbers: new Map([...walk.numbers, ...fresh.map((line, i) => [line, walk.numbers.size + i + 1] as const)]),
+  arranged: [...walk.arranged, { kind, lines: places.map((p) => lines[p]!) }],
+  sign: (walk.sign * sign) as 1 | -1,
+});

@@ -1,6 +1,6 @@
 /**
  * `npm run bench`: times the task of task.ts in this program and in two general-purpose libraries in one run, checks that
- * all of them got the same result, times a whole derivation, prints the ratios and writes docs/benchmarks.md.
+ * all of them got the same result, times a whole derivation and canonical forms, prints the ratios and writes docs/benchmarks.md.
  */
 import { readFileSync, writeFileSync } from 'node:fs';
 import { cpus, totalmem } from 'node:os';
@@ -86,6 +86,9 @@ const whole = [
 const ratio = (derivation.medianMs / nothing.medianMs).toFixed(1);
 const machine = `${cpus().length} × ${cpus()[0]?.model.trim() ?? 'unknown'}, ${Math.round(totalmem() / 2 ** 30)} GB, ${process.platform}, Node ${process.version}`;
 
+const { canonicalSection } = await import('./canonical.js');
+const canonical = await canonicalSection();
+
 const page = `# Benchmarks
 
 Written by \`npm run bench\`, which also checks that all results are the same. Times of one machine mean little by
@@ -109,7 +112,8 @@ The first run in a fresh process, before anything is compiled to machine code, t
 ${whole.join('\n')}
 
 Ratio of medians: ${ratio}.
-`;
+
+${canonical}`;
 writeFileSync(new URL('../../docs/benchmarks.md', import.meta.url), page);
 console.log(
   [
@@ -119,6 +123,8 @@ console.log(
     ...whole,
     `ratio: ${ratio}`,
     `first run: ${ms(coldMs)} ms`,
+    '',
+    canonical,
     'Written: docs/benchmarks.md',
   ].join('\n'),
 );
