@@ -85,7 +85,7 @@ export function derivationObject(d: Derivation): Record<string, unknown> {
     geometry: d.geometry.id,
     variables: d.geometry.fields.map((f) => f.name),
     parameters: parametersOf(d),
-    sources: d.fluids.filter((f) => f.isSource).map((f) => f.density),
+    sources: d.fluids.filter((f) => f.isSource && !d.relations.eliminated.has(f.density)).map((f) => f.density),
     fluids: d.theory.matter.map((m) => ({ name: m.name, density: m.density, w: printRational(m.w) })),
     eliminated: texts(d.relations.eliminated),
     conditions: d.relations.conditions.map((c) => `${infix(c.value)} = 0`),

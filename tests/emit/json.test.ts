@@ -123,6 +123,11 @@ describe('derivation.json', () => {
     );
   });
 
+  it('has no source that a relation made zero', () => {
+    const json = read({ lagrangian: '1/2 M^2 R', matter: ['{ fluid: x, w: "1/5" }'], impose: ['rho_x = 0'] });
+    expect([json.sources, json.parameters]).toEqual([[], ['k', 'M']]);
+  });
+
   it('prints texts that another reader evaluates to the values of the kernel', () => {
     const d = of(FULL);
     const json = derivationObject(d) as Record<string, unknown>;
