@@ -1,4 +1,7 @@
+import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
+import { basisNames, bundledBasis, readBasis } from '../../src/tensor/basis-file.js';
+import { PREDICATES } from '../../src/tensor/conditions.js';
 import { kindsWith, namesIn, ringOfNames, sumOf } from '../../src/tensor/lagrangian-sum.js';
 import { applyRule, equalSums } from '../../src/tensor/rewrite.js';
 import type { Example, Rule, RuleFile } from '../../src/tensor/rule.js';
@@ -74,6 +77,36 @@ describe('examples of the bundled rules', () => {
           rule.no.some((e) => e.given.length === 0),
           rule.id,
         ).toBe(true);
+  });
+});
+
+describe('docs/rules.md', () => {
+  const page = readFileSync(new URL('../../docs/rules.md', import.meta.url), 'utf8');
+  const block = (begin: string): string => new RegExp(`\`\`\`yaml\n(${begin}[\\s\\S]*?)\`\`\``).exec(page)![1]!;
+
+  it('shows a rule file whose examples hold', () => {
+    const file = readRuleFile(block('untwist-rules: 1'), 'docs/rules.md');
+    expect(file.rules).toHaveLength(2);
+    for (const rule of file.rules)
+      for (const example of [...rule.yes, ...rule.no]) {
+        expect(fault(rule, example, file)).toBe(undefined);
+        expect(fault(rule, renamed(example, rule), file)).toBe(undefined);
+      }
+  });
+
+  it('lists the conditions with their meanings', () => {
+    const rows = [...page.matchAll(/^\| `([a-z-]+)((?: \?[a-z])*)` \| (.*) \|$/gm)].filter((m) =>
+      PREDICATES.has(m[1]!),
+    );
+    expect(rows.map((m) => [m[1], m[2]!.split('?').length - 1, m[3]])).toEqual(
+      [...PREDICATES].map(([name, { arity, meaning }]) => [name, arity, meaning]),
+    );
+  });
+
+  it('shows a basis, and lists the bundled ones with their sources', () => {
+    expect(readBasis(block('untwist-basis: 1'), 'docs/rules.md').entries).toHaveLength(2);
+    for (const name of basisNames()) expect(page).toContain(`| \`${name}\` |`);
+    for (const name of basisNames()) expect(page).toContain(`| ${bundledBasis(name).source} |`);
   });
 });
 
