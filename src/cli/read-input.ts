@@ -9,6 +9,9 @@ import type { Io } from './io.js';
 const refuse = (code: string, message: string, hint: string): InputError =>
   new InputError([{ code, severity: 'error', message, hint }]);
 
+const notText = (what: string): InputError =>
+  refuse('not-text', `${what} is not UTF-8 text`, 'a theory file is YAML; see docs/notation.md');
+
 export interface InputText {
   readonly file: string;
   readonly text: string;
@@ -37,7 +40,12 @@ function beginning(path: string, most: number): Buffer {
 
 /** @throws InputError `file-missing`, `file-unreadable`, `size-limit`, `not-text`. */
 export async function readInput(path: string, io: Io): Promise<InputText> {
-  if (path === '-') return { file: '<stdin>', text: await io.stdin() };
+  if (path === '-') {
+    const text = await io.stdin();
+    // What was no UTF-8 arrives as the replacement mark, which no theory contains.
+    if (text.includes('\ufffd')) throw notText('standard input');
+    return { file: '<stdin>', text };
+  }
   let bytes: Buffer;
   try {
     bytes = beginning(path, MAX_BYTES + 1);
@@ -49,7 +57,7 @@ export async function readInput(path: string, io: Io): Promise<InputText> {
   try {
     return { file: path, text: new TextDecoder('utf-8', { fatal: true }).decode(bytes) };
   } catch {
-    throw refuse('not-text', `${path} is not UTF-8 text`, 'a theory file is YAML; see docs/notation.md');
+    throw notText(path);
   }
 }
 

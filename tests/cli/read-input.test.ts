@@ -56,6 +56,8 @@ describe('readInput', () => {
     expect(await refusal(file)).toBe(
       `error: ${file} is not UTF-8 text\nhint: a theory file is YAML; see docs/notation.md`,
     );
+    const stdin = Buffer.from([0x6e, 0x3a, 0xe9]).toString('utf8');
+    await expect(readInput('-', world({ stdin }))).rejects.toThrow('standard input is not UTF-8 text');
   });
 
   it('refuses a file that is too long, and one that never ends', async () => {
