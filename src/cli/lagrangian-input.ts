@@ -11,6 +11,8 @@ import type { TensorTerm } from '../tensor/expression.js';
 import type { KindTable } from '../tensor/kinds.js';
 import { kindsWith, ringOfNames, tensorTerms } from '../tensor/lagrangian-sum.js';
 import type { SumStyle } from '../tensor/print-sum.js';
+import { TooLargeError } from '../tensor/random-values.js';
+import { RelationLimitError } from '../tensor/relations.js';
 import { SymmetryError } from '../tensor/symmetry.js';
 import type { Io } from './io.js';
 import { readInput } from './read-input.js';
@@ -66,9 +68,17 @@ export function userFault<T>(file: string, run: () => T): T {
   try {
     return run();
   } catch (error) {
-    if (!(error instanceof CanonicalLimitError || error instanceof SymmetryError)) throw error;
-    const code = error instanceof SymmetryError ? 'bad-symmetry' : 'arrangements-limit';
-    const hint = 'use fewer equal tensors in one product, or tensors with less symmetry';
-    throw new InputError([{ code, severity: 'error', message: error.message, hint, file }]);
+    const [code, hint] = faultOf(error);
+    if (code === undefined) throw error;
+    throw new InputError([{ code, severity: 'error', message: (error as Error).message, hint: hint!, file }]);
   }
+}
+
+function faultOf(error: unknown): readonly [code?: string, hint?: string] {
+  if (error instanceof CanonicalLimitError)
+    return ['arrangements-limit', 'use fewer equal tensors in one product, or tensors with less symmetry'];
+  if (error instanceof SymmetryError) return ['bad-symmetry', 'declare fewer symmetries'];
+  if (error instanceof TooLargeError || error instanceof RelationLimitError)
+    return ['relations-limit', 'use products of lower degree, and invariants without large numbers'];
+  return [];
 }

@@ -62,7 +62,7 @@ export async function translateCommand(path: string, options: TranslateOptions, 
 async function basisOf(name: string, io: Io): Promise<CouplingBasis> {
   if (!/[./\\]/.test(name) && !existsSync(name)) return bundledBasis(name);
   const { file, text } = await readInput(name, io);
-  return readBasis(text, file);
+  return userFault(file, () => readBasis(text, file));
 }
 
 /** Σ value · invariant and what is outside, as terms. */

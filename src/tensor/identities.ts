@@ -16,7 +16,7 @@ import { MAX_CONTENT_SLOTS } from './independent-scalars.js';
 import type { KindTable, TensorKind } from './kinds.js';
 import { inPreferredOrder } from './preference.js';
 import { TooLargeError } from './random-values.js';
-import { relationsOfSums, type ScalarCombination } from './relations.js';
+import { RelationLimitError, relationsOfSums, type ScalarCombination } from './relations.js';
 import type { Step } from './rewrite.js';
 
 /** A sum that is a total derivative when the volume element is multiplied in. */
@@ -72,7 +72,7 @@ export function reduceByRelations(sum: TensorSum, kinds: KindTable, densities: r
     try {
       terms = [...terms, ...reduceGroup(group, zeros, kinds, steps)];
     } catch (error) {
-      if (!(error instanceof TooLargeError)) throw error;
+      if (!(error instanceof TooLargeError || error instanceof RelationLimitError)) throw error;
       skipped.push(group);
       terms = [...terms, ...group];
     }

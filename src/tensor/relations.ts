@@ -17,6 +17,13 @@ const CHECKS = 4;
 const COMPUTING = PRIMES.slice(0, -1);
 const CHECK_PRIME = PRIMES.at(-1)!;
 
+/** Thrown when the coefficients of a relation are beyond what the primes can tell. */
+export class RelationLimitError extends RangeError {
+  constructor() {
+    super('the coefficients of a linear relation are too large');
+  }
+}
+
 /** Numbers times scalar products. */
 export type ScalarCombination = readonly {
   readonly coefficient: Rational;
@@ -30,7 +37,7 @@ export interface Relations {
   readonly dependent: ReadonlyMap<number, readonly Rational[]>;
 }
 
-/** The relations among scalar products; earlier ones are preferred as basis. @throws RangeError as relationsOfSums. */
+/** The relations among scalar products; earlier ones are preferred as basis. @throws as relationsOfSums. */
 export const linearRelations = (products: readonly (readonly TensorSymbol[])[], kinds: KindTable): Relations =>
   relationsOfSums(
     products.map((factors) => [{ coefficient: ONE, factors }]),
@@ -80,7 +87,8 @@ function holds({ basis, dependent }: Relations, sums: readonly ScalarCombination
 /**
  * The relations among sums of scalar products; earlier ones are preferred as basis. One prime serves for coefficients up to
  * about 5800 in numerator and denominator; others are taken in addition when it does not.
- * @throws RangeError when the coefficients are beyond what all primes together can tell, about 4 · 10^11.
+ * @throws RelationLimitError when the coefficients are beyond what all primes together can tell, about 4 · 10^11;
+ * TooLargeError.
  */
 export function relationsOfSums(sums: readonly ScalarCombination[], kinds: KindTable): Relations {
   const forms: ReturnType<typeof echelonAt>[] = [];
@@ -105,5 +113,5 @@ export function relationsOfSums(sums: readonly ScalarCombination[], kinds: KindT
     const relations = { basis, dependent };
     if (basis.length + dependent.size === sums.length && holds(relations, sums, kinds)) return relations;
   }
-  throw new RangeError('the coefficients of a linear relation are too large');
+  throw new RelationLimitError();
 }

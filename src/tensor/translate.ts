@@ -22,7 +22,7 @@ export interface Translation {
 
 /**
  * Writes a sum in a basis. Densities count as zero; an invariant that is then a combination of earlier ones gets no coupling.
- * @throws InputError `parts-limit`; CanonicalLimitError; RangeError when a coefficient of a relation is too large.
+ * @throws InputError `parts-limit`; CanonicalLimitError; as relationsOfSums.
  */
 export function translate(
   ring: Ring,

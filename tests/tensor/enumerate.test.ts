@@ -34,10 +34,11 @@ describe('independent scalars by enumeration and rank, and by characters of O(4)
       expect([count(content, false), count(content, true)]).toEqual([even, odd]);
     }, 60_000);
 
-  it('curvature³ even: the rank is that of the character count', () => {
-    const { even } = invariantCounts({ curvature: 3 });
+  it('curvature³: the rank is that of the character count', () => {
+    const { even, odd } = invariantCounts({ curvature: 3 });
     expect(Math.abs(even - Math.round(even))).toBeLessThan(1e-6);
     expect(count({ curvature: 3 }, false)).toBe(Math.round(even));
+    expect(count({ curvature: 3 }, true)).toBe(Math.round(odd));
   }, 120_000);
 });
 
