@@ -114,7 +114,8 @@ function refuseGrowth(p: Poly, eliminated: ReadonlyMap<string, Poly>, blame: Bla
 /**
  * @param constants names of constants in the order of their declaration.
  * @throws InputError `contradiction` when a relation reduces to a non-zero number, alone or as a linear combination with
- * conditions, or sets a density that changes with time equal to anything but zero; as `applyImposed`.
+ * conditions, or sets a density that changes with time equal to anything but zero; `unknown-symbol` for a parameter that
+ * the geometry lacks; as `applyImposed`.
  */
 export function solveRelations(ring: Ring, relations: readonly Relation[], constants: readonly string[]): Imposed {
   let eliminated = new Map<string, Poly>();
@@ -153,6 +154,11 @@ export function solveRelations(ring: Ring, relations: readonly Relation[], const
     refuseImpossible(origin);
   };
   for (const { left, right, subject, text, origin } of relations) {
+    const missing = [...left, ...right].flatMap((t) => t.powers).find(([name]) => !ring.position.has(name));
+    if (missing) {
+      const message = `the geometry of this theory has no ${missing[0]}`;
+      throw refuse(origin, undefined, 'unknown-symbol', message, 'leave the relation out, or choose another geometry');
+    }
     const value = applyImposed(subtract(polyOfScalar(ring, left), polyOfScalar(ring, right)), eliminated, origin);
     if (isZero(value)) continue;
     refuseNumber(value, origin, '');

@@ -192,6 +192,18 @@ describe('relations that cannot hold', () => {
   });
 });
 
+it('a parameter that the geometry lacks is refused', () => {
+  const flat = makeRing(constantsOf(CONSTANTS));
+  expect(refusal(() => solveRelations(flat, [relation('c0 = 1'), relation('k = 0')], CONSTANTS))).toBe(
+    [
+      '--set:1:1: error: the geometry of this theory has no k',
+      '    k = 0',
+      '    ^^^^^',
+      'hint: leave the relation out, or choose another geometry',
+    ].join('\n'),
+  );
+});
+
 describe('applyImposed', () => {
   const p: Poly = monomial(ring, rational(3), [
     ['c0', -1],
