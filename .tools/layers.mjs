@@ -12,7 +12,7 @@ const FLOORS = {
   tensor: ['algebra', 'notation'],
   geometry: ['algebra', 'notation', 'tensor'],
   mechanics: ['algebra', 'geometry'],
-  scalartensor: ['algebra', 'geometry', 'mechanics'],
+  scalartensor: ['algebra', 'notation', 'geometry', 'mechanics'],
   cas: ['algebra'],
   '.': ['algebra', 'notation', 'tensor', 'geometry', 'mechanics', 'scalartensor', 'cas'],
   emit: ['algebra', 'notation', 'tensor', 'geometry', 'mechanics', 'scalartensor', 'cas', '.'],
