@@ -5,8 +5,10 @@
 import type { Fraction } from './algebra/fraction.js';
 import type { Poly } from './algebra/poly.js';
 import type { Ring } from './algebra/ring.js';
+import type { Knowledge } from './algebra/signs.js';
 import type { Geometry } from './geometry/geometry.js';
 import type { LagrangianTerm, TensorFactor, Theory, TheorySymbol } from './notation/theory.js';
+import type { ScalarFields } from './scalar-fields.js';
 import type { TensorSum } from './tensor/expression.js';
 import type { CovariantEquations, Momenta } from './tensor/variation.js';
 
@@ -128,6 +130,10 @@ export interface Derivation {
   readonly screening: readonly Poly[] | undefined;
   readonly friedmann: FriedmannForm | undefined;
   readonly scalarTensor: ScalarTensorForm;
+  /** Assumptions as knowledge about signs; present when the theory has any. */
+  readonly knowledge?: Knowledge;
+  /** Conformal frames, classes of the scalars, canonical fields: present when asked for. */
+  readonly scalarFields?: ScalarFields;
   /** In the conventions of the theory file when they are not the internal ones, and in those asked for. */
   readonly elsewhere?: readonly LagrangianElsewhere[];
   /** Present when it was asked for. */

@@ -8,6 +8,7 @@ import { moveTo, symbolsOf } from './algebra/collect.js';
 import { fraction } from './algebra/fraction.js';
 import { add, equals, generator, isZero, multiply, type Poly } from './algebra/poly.js';
 import type { Ring } from './algebra/ring.js';
+import { knowledgeFor } from './assumptions.js';
 import type { Check, Derivation, FluidValue, FriedmannForm, ScalarTensorForm } from './derivation.js';
 import type { Geometry } from './geometry/geometry.js';
 import { symbolicValue } from './geometry/reduction.js';
@@ -30,6 +31,7 @@ export function derive(theory: Theory, onStep: (what: string) => void = () => {}
   const setting = settingOf(theory, onStep);
   const { geometry, ring, relations, terms, gravity, matter, fluids, lagrangian, couple, fix } = setting;
   if (!geometry.traceless) throw classB(geometry);
+  const knowledge = theory.assumptions && knowledgeFor(theory, ring, relations, (p) => fix(couple(p)));
 
   onStep('varying the Lagrangian');
   const fields = geometry.fields.map((f) => f.name);
@@ -91,6 +93,7 @@ export function derive(theory: Theory, onStep: (what: string) => void = () => {}
     friedmann: friedmann && fixFriedmann(friedmann, fix),
     // The form speaks about other values of k too, so a value imposed on k is not put into its obstruction.
     scalarTensor,
+    ...(knowledge ? { knowledge } : {}),
     checks,
   });
 }

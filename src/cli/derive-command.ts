@@ -19,6 +19,13 @@ export interface DeriveOptions {
   readonly set: readonly string[];
   readonly variables?: string;
   readonly factor?: boolean;
+  readonly assume?: readonly string[];
+  readonly frame?: 'einstein';
+  /** Ω² of a frame of the user. */
+  readonly omega?: string;
+  readonly canonical?: boolean;
+  /** A number, as typed. */
+  readonly order?: string;
   readonly covariant?: boolean;
   readonly momenta?: boolean;
   readonly conventions?: string;
@@ -38,7 +45,7 @@ const filesOf = (slug: string) => ({
 /** @returns the exit code. @throws InputError for everything that the user can mend. */
 export async function deriveCommand(path: string, options: DeriveOptions, io: Io): Promise<number> {
   const { file, text } = await readInput(path, io);
-  const theory = readTheory(text, file, { set: options.set });
+  const theory = readTheory(text, file, { set: options.set, assume: options.assume ?? [] });
   for (const warning of theory.warnings) io.stderr(`${renderDiagnostic(warning, { color: io.color })}\n`);
   try {
     if (options.json) io.stdout(derivationJson(await derived(theory, options, io)));
@@ -110,7 +117,7 @@ async function derived(
   onStep?: (what: string) => void,
 ): Promise<Derivation> {
   const elsewhere = await writtenElsewhere(theory, options.conventions, io);
-  const derivation = await reduced(theory, options, onStep);
+  const derivation = await withFields(await reduced(theory, options, onStep), options, onStep);
   return elsewhere.length > 0 ? { ...derivation, elsewhere } : derivation;
 }
 
@@ -123,6 +130,32 @@ async function writtenElsewhere(theory: Theory, asked: string | undefined, io: I
   if (asked === undefined) return out;
   const { conventionsOption } = await import('./conventions-option.js');
   return [...out, { name: asked, ...lagrangianIn(theory, await conventionsOption(asked, io)) }];
+}
+
+/** Frames, classes and canonical fields, when they were asked for or there are assumptions that they may use. */
+async function withFields(
+  derivation: Derivation,
+  options: DeriveOptions,
+  onStep?: (what: string) => void,
+): Promise<Derivation> {
+  const { frame, omega, canonical = false } = options;
+  const order = orderOf(options.order);
+  if (!frame && omega === undefined && !canonical && !derivation.knowledge) return derivation;
+  const { withScalarFields } = await import('../scalar-fields.js');
+  return withScalarFields(derivation, { einstein: frame !== undefined, omega2: omega, canonical, order }, onStep);
+}
+
+const DEFAULT_ORDER = 6;
+const MAX_ORDER = 24;
+
+function orderOf(text: string | undefined): number {
+  if (text === undefined) return DEFAULT_ORDER;
+  const order = /^\d{1,3}$/.test(text.trim()) ? Number(text) : 0;
+  if (order >= 1 && order <= MAX_ORDER) return order;
+  const message = `${JSON.stringify(text.slice(0, 40))} is no order of a series`;
+  throw new InputError([
+    { code: 'bad-order', severity: 'error', message, hint: `a whole number from 1 to ${MAX_ORDER}`, file: '--order' },
+  ]);
 }
 
 async function reduced(theory: Theory, options: DeriveOptions, onStep?: (what: string) => void): Promise<Derivation> {

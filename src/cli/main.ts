@@ -29,8 +29,22 @@ export async function main(args: readonly string[], world: Io): Promise<number> 
       collect,
       [],
     )
+    .option(
+      '--assume <inequality>',
+      'take an inequality between constants for true, for instance "a4 > 0"',
+      collect,
+      [],
+    )
     .option('--variables <pair>', 'variables of the printed equations: phi,psi (default), u,v (torsion) or h,f')
     .option('--factor', 'also print the functions of the scalar-tensor form in factors')
+    .addOption(
+      new Option('--frame <name>', 'also put the scalar-tensor form into another conformal frame').choices([
+        'einstein',
+      ]),
+    )
+    .option('--omega <Omega^2>', 'the same with a conformal factor of your own, for instance "1 + phi^2/M^2"')
+    .option('--canonical', 'also look for canonical fields, where a kinetic term decouples')
+    .option('--order <n>', 'order in the field of series where a canonical field has no closed form (default: 6)')
     .option('--covariant', 'also derive the field equations in index notation')
     .option('--momenta', 'the same with the field momenta kept as symbols')
     .option('--json', 'print the JSON alone and write no file')

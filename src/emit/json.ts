@@ -10,6 +10,7 @@ import type { CovariantTheory, Derivation, ScalarTensorForm } from '../derivatio
 import { printLagrangian } from '../notation/print.js';
 import type { TensorSum } from '../tensor/expression.js';
 import { factorsTex } from './latex-tensors.js';
+import { scalarFieldSymbols, scalarFieldsObject } from './scalar-fields-json.js';
 
 /** Version of the format; it grows when a key changes its meaning. */
 export const FORMAT_VERSION = 1;
@@ -73,7 +74,7 @@ function expressions(d: Derivation): Poly[] {
 
 /** Names of all symbols of any printed expression that are not fields, in the order of the ring. */
 export function parametersOf(d: Derivation): string[] {
-  const used = new Set(expressions(d).flatMap(symbolsOf));
+  const used = new Set([...expressions(d).flatMap(symbolsOf), ...scalarFieldSymbols(d)]);
   return d.ring.generators.filter((g) => g.kind !== 'jet' && used.has(g.name)).map((g) => g.name);
 }
 
@@ -83,7 +84,7 @@ export function derivationObject(d: Derivation): Record<string, unknown> {
     untwist: FORMAT_VERSION,
     theory: d.theory.name,
     geometry: d.geometry.id,
-    variables: d.geometry.fields.map((f) => f.name),
+    variables: d.fields.map((f) => f.name),
     parameters: parametersOf(d),
     sources: d.fluids.filter((f) => f.isSource && !d.relations.eliminated.has(f.density)).map((f) => f.density),
     fluids: d.theory.matter.map((m) => ({ name: m.name, density: m.density, w: printRational(m.w) })),
@@ -106,6 +107,7 @@ export function derivationObject(d: Derivation): Record<string, unknown> {
     ...(d.screening ? { screening: d.screening.map(infix) } : {}),
     ...(d.friedmann ? { friedmann: { rho_T: infix(d.friedmann.rhoT), p_T: infix(d.friedmann.pT) } } : {}),
     scalarTensor: scalarTensorObject(d.scalarTensor),
+    ...scalarFieldsObject(d),
     ...(d.covariant ? { covariant: covariantObject(d.covariant) } : {}),
     checks: d.checks.map(({ name, holds, detail }) => ({ name, holds, detail })),
     warnings: d.theory.warnings.map((w) => w.message),

@@ -9,6 +9,7 @@ import { readLagrangian } from './lagrangian.js';
 import { MAX_DIAGNOSTICS, MAX_TEXT } from './limits.js';
 import { reservedMeaning } from './names.js';
 import { type Passage, plainPassage } from './passage.js';
+import { readAssumptions } from './read-assumptions.js';
 import { readConventions } from './read-conventions.js';
 import { readMatter } from './read-matter.js';
 import {
@@ -30,7 +31,7 @@ import { passageOf } from './yaml-text.js';
 
 const KEYS = {
   required: ['untwist', 'name', 'lagrangian'],
-  optional: ['conventions', 'constants', 'scales', 'impose', 'matter', 'geometry', 'symbols', 'tensors'],
+  optional: ['conventions', 'constants', 'scales', 'impose', 'assume', 'matter', 'geometry', 'symbols', 'tensors'],
 };
 const DEFAULT_GEOMETRY = 'flrw';
 const MAX_TITLE = 200;
@@ -38,6 +39,8 @@ const MAX_TITLE = 200;
 export interface TheoryOptions {
   /** Relations of the command line (`--set`), applied after those of the file. */
   readonly set?: readonly string[];
+  /** Assumptions of the command line (`--assume`), beside those of the file. */
+  readonly assume?: readonly string[];
 }
 
 /**
@@ -74,6 +77,7 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
   const { symbols: named, matter } = namedSymbols(values.get('symbols'), declarations, components, problems, warnings);
   const typed = read('lagrangian', (node) => readTerms(node, named, tensors, keep, warnings), []);
   const typedRelations = readRelations(values.get('impose'), options.set ?? [], named, matter, keep);
+  const assumptions = readAssumptions(values.get('assume'), options.assume ?? [], named, matter, units, keep);
   if (problems.length > 0) throw new InputError(limited(inOrder(problems)));
   warnings.push(...unusedWarnings(declarations, units, tensors, typed, typedRelations));
   const { signature } = conventions;
@@ -85,7 +89,7 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
     ]);
   }
   const relations = typedRelations.map((relation) => relationToMass(relation, units));
-  const used = usedNames(lagrangian, relations);
+  const used = usedNames(lagrangian, [...relations, ...assumptions]);
   const isUnit = ({ name: n }: TheorySymbol): boolean => unitNames(units).includes(n) && !used.has(n);
   return {
     name,
@@ -97,6 +101,7 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
     tensors,
     lagrangian,
     relations,
+    ...(assumptions.length > 0 ? { assumptions } : {}),
     matter,
     geometry,
     warnings: inOrder(warnings),
@@ -117,7 +122,10 @@ function refuseUnitDensities(
   problems.push(errorAt(node.origin, 'unit-symbol', message, 'give the vacuum density another name'));
 }
 
-function usedNames(lagrangian: readonly LagrangianTerm[], relations: readonly Relation[]): ReadonlySet<string> {
+function usedNames(
+  lagrangian: readonly LagrangianTerm[],
+  relations: readonly Pick<Relation, 'left' | 'right'>[],
+): ReadonlySet<string> {
   const scalars = [...lagrangian.map((t) => t.scalar), ...relations.flatMap((r) => [...r.left, ...r.right])];
   return new Set(scalars.flatMap(({ powers }) => powers.map(([name]) => name)));
 }
@@ -249,7 +257,7 @@ function unusedWarnings(
 
 /** Those of the file by place, then those of --set. */
 function inOrder(diagnostics: readonly Diagnostic[]): readonly Diagnostic[] {
-  const late = (d: Diagnostic): number => (d.file === '--set' ? 1 : 0);
+  const late = (d: Diagnostic): number => (d.file?.startsWith('--') ? 1 : 0);
   return [...diagnostics].sort((a, b) => late(a) - late(b) || (late(a) === 0 ? (a.start ?? 0) - (b.start ?? 0) : 0));
 }
 

@@ -96,6 +96,16 @@ export interface Relation {
   readonly origin: Origin;
 }
 
+/** left > right and the like, as typed in `assume`: used to decide signs, never for rewriting. */
+export interface AssumedInequality {
+  readonly left: ScalarSum;
+  readonly right: ScalarSum;
+  readonly relation: '>' | '<' | '>=' | '<=' | '!=';
+  /** As the user typed it, white space folded. */
+  readonly text: string;
+  readonly origin: Origin;
+}
+
 /** A place in a text the user wrote; offsets count UTF-16 units from its start. */
 export interface Origin {
   readonly file: string;
@@ -121,6 +131,8 @@ export interface Theory {
   readonly lagrangian: readonly LagrangianTerm[];
   /** In order: those of the file, then those of --set. */
   readonly relations: readonly Relation[];
+  /** In order: those of the file, then those of --assume; absent when there are none. */
+  readonly assumptions?: readonly AssumedInequality[];
   readonly matter: readonly MatterComponent[];
   /** Name of a file in rules/geometry, without its ending. */
   readonly geometry: string;

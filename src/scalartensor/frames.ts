@@ -58,7 +58,7 @@ export const coefficientsIn = (polys: readonly Poly[]): Poly[] =>
 /** What may divide a sign condition of a form. */
 export const candidatesOf = (f: BiScalarFunctions): Poly[] => [
   f.g4,
-  ...coefficientsIn([f.g4, ...f.kinetic.values(), ...f.current.values()]),
+  ...coefficientsIn([f.g4, ...f.kinetic.values(), ...f.current.values(), f.potential]),
 ];
 
 /** What is known when a value is taken for positive, listed as `text`. */

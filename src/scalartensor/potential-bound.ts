@@ -104,6 +104,7 @@ function inForm(
     if (rest.signs === POSITIVE) return decided(verdict, ofA, ofC, rest);
     return unknown(...(isCone ? [scale(b, sign === POSITIVE ? 1 : -1), discriminant] : [discriminant]));
   }
+  if (isZero(a) && isZero(c)) return unknown(b);
   const opposite =
     (ofA.signs === POSITIVE && ofC.signs === NEGATIVE) || (ofA.signs === NEGATIVE && ofC.signs === POSITIVE);
   if (opposite) return decided('unbounded', ofA, ofC);
