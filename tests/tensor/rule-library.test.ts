@@ -1,4 +1,8 @@
 import { describe, expect, it } from 'vitest';
+import { freeSlots } from '../../src/notation/tensor-expression.js';
+import { kindTable } from '../../src/tensor/kinds.js';
+import { namesIn, ringOfNames, tensorTerms } from '../../src/tensor/lagrangian-sum.js';
+import { neverFired } from '../../src/tensor/rewrite.js';
 import {
   bundledIds,
   bundledRules,
@@ -6,7 +10,9 @@ import {
   type RuleFolder,
   readManifest,
 } from '../../src/tensor/rule-library.js';
+import { simplify } from '../../src/tensor/simplify.js';
 import { errorText } from '../notation/rendered.js';
+import { PRIME, RandomTensors } from '../oracle/tensors.js';
 
 const FILES: ReadonlyMap<RuleFolder, readonly string[]> = new Map([
   ['parts', ['a.yaml', 'b.yaml']],
@@ -43,6 +49,51 @@ describe('the bundled rules', () => {
     const all = [...bundledRules('parts'), ...bundledRules('identities')];
     expect(bundledIds().size).toBe(all.length);
     for (const rule of all) expect(bundledIds().get(rule.id)).toMatch(/^rules\/(parts|identities)\/[a-z-]+\.yaml$/);
+  });
+
+  it('all apply in the whole pipeline: none is hidden by another', () => {
+    const all = [...bundledRules('parts'), ...bundledRules('identities')];
+    const kinds = kindTable();
+    const steps = all.flatMap((rule) =>
+      rule.yes
+        .filter((e) => e.input.every((t) => freeSlots(t).length === 0))
+        .flatMap((e) => {
+          const terms = tensorTerms(ringOfNames(namesIn(e.input)), e.input);
+          return simplify(terms, { kinds, given: new Set(e.given) }).steps;
+        }),
+    );
+    expect(neverFired(all, steps).map((r) => r.id)).toEqual([]);
+  });
+
+  it('without torsion hold on random curvatures with exchange of pairs and cyclic identity', () => {
+    /** ½(R_abcd + R_cdab) without its totally antisymmetric part, and no torsion. */
+    class Metric extends RandomTensors {
+      override component(head: string, at: readonly number[]): number {
+        if (head === 'T') return 0;
+        if (head !== 'R' || at.length !== 4) return super.component(head, at);
+        const [a, b, c, d] = at as [number, number, number, number];
+        const pairs = (...i: number[]): number =>
+          super.component('R', i) +
+          super.component(
+            'R',
+            [2, 3, 0, 1].map((n) => i[n]!),
+          );
+        // Six times the tensor, so that there is no division.
+        return (((2 * pairs(a, b, c, d) - pairs(a, c, d, b) - pairs(a, d, b, c)) % PRIME) + PRIME) % PRIME;
+      }
+    }
+    const rules = bundledRules('identities').filter((r) => r.when.some((c) => c.predicate === 'torsion-free'));
+    expect(rules.length).toBeGreaterThan(4);
+    for (const { id, left, right } of rules) {
+      if (left.some((f) => f.slots.some((s) => s.name.startsWith('?')))) continue;
+      const tensors = new Metric(17, 4);
+      const total = right.reduce(
+        (sum, { coefficient, factors }) =>
+          sum - (2 * Number(coefficient.num) * tensors.value(factors)) / Number(coefficient.den),
+        2 * tensors.value(left),
+      );
+      expect(Math.abs(total) % PRIME, id).toBe(0);
+    }
   });
 
   it('are read from the files of the manifest', () => {
