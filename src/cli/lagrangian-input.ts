@@ -1,5 +1,4 @@
 /** What the commands on Lagrangians read: a theory with its sum of products, imposed relations applied. */
-import { symbolsOf } from '../algebra/collect.js';
 import type { Ring } from '../algebra/ring.js';
 import { InputError, renderDiagnostic } from '../notation/diagnostics.js';
 import { applyImposed, solveRelations } from '../notation/impose.js';
@@ -30,7 +29,7 @@ export interface LagrangianInput {
   readonly terms: readonly TensorTerm[];
   /** Style in which sums are printed, in the conventions of the file. */
   readonly style: (form: SumStyle['form']) => SumStyle;
-  /** Every symbol of the Lagrangian as a constant. */
+  /** That every symbol of the theory is a constant. */
   readonly facts: ReadonlySet<string>;
 }
 
@@ -59,7 +58,7 @@ export async function lagrangianInput(path: string, set: readonly string[], io: 
     typed,
     terms,
     style: (form) => ({ form, symbols, tensors: theory.tensors, written }),
-    facts: new Set(terms.flatMap((t) => symbolsOf(t.coefficient).map((name) => `constant ${name}`))),
+    facts: new Set(theory.symbols.map((s) => `constant ${s.name}`)),
   };
 }
 

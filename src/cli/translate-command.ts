@@ -4,6 +4,7 @@ import { basename, dirname } from 'node:path';
 import Table from 'cli-table3';
 import { infix } from '../algebra/infix.js';
 import { equals, isZero } from '../algebra/poly.js';
+import { type Diagnostic, InputError } from '../notation/diagnostics.js';
 import { latexLagrangian, latexScalar, printLagrangian, printScalar } from '../notation/print.js';
 import { readTheory } from '../notation/read-theory.js';
 import { collectScalars, multiplyScalarTerms } from '../notation/scalar-term.js';
@@ -42,21 +43,31 @@ export async function translateCommand(path: string, options: TranslateOptions, 
   const translation = inBasis(input.terms);
   // The relations of the file stay in it, so the text is rewritten without them.
   const typed = inBasis(input.typed);
-  const text = rewritten(input, typed);
-  const again = inBasis(tensorTerms(input.ring, readTheory(text, input.file).lagrangian));
-  const sameCouplings = typed.couplings.every(({ value }, i) => equals(value, again.couplings[i]!.value));
-  if (!sameCouplings || !equalSums(typed.outside, again.outside, input.kinds))
-    throw new Error('check failed: the theory rewritten is another theory');
-  if (options.json) io.stdout(`${JSON.stringify({ ...json(input, translation), theory: text }, null, 2)}\n`);
+  const text = termsIn(typed).length === 0 ? undefined : rewritten(input, typed);
+  if (text !== undefined) {
+    const again = inBasis(tensorTerms(input.ring, readTheory(text, input.file).lagrangian));
+    const sameCouplings = typed.couplings.every(({ value }, i) => equals(value, again.couplings[i]!.value));
+    if (!sameCouplings || !equalSums(typed.outside, again.outside, input.kinds))
+      throw new Error('check failed: the theory rewritten is another theory');
+  } else if (write !== undefined) throw new InputError([vanishing(input.file)]);
+  if (options.json) io.stdout(`${JSON.stringify({ ...json(input, translation), theory: text ?? null }, null, 2)}\n`);
   else if (options.latex) io.stdout(latexArray(input, translation));
   else if (write !== '-') io.stdout(table(input, translation, io.color));
-  if (write === '-' && !options.json) io.stdout(text);
-  else if (write !== undefined && write !== '-') {
+  if (text === undefined || write === undefined) return EXIT.done;
+  if (write !== '-') {
     writeFolder(dirname(write), new Map([[basename(write), text]]));
     io.stderr(`Written: ${write}\n`);
-  }
+  } else if (!options.json) io.stdout(text);
   return EXIT.done;
 }
+
+const vanishing = (file: string): Diagnostic => ({
+  code: 'empty-lagrangian',
+  severity: 'error',
+  message: 'the Lagrangian vanishes in this basis',
+  hint: 'its terms cancel, or are total derivatives',
+  file,
+});
 
 /** A bundled basis by its name, or a file of the user. */
 async function basisOf(name: string, io: Io): Promise<CouplingBasis> {
@@ -79,10 +90,12 @@ const termsIn = ({ couplings, outside }: Translation): LagrangianTerm[] => [
 function rewritten({ text, file, style }: LagrangianInput, translation: Translation): string {
   const lines = termLines(termsIn(translation), style('plain'));
   const root = asMap(readYaml(text, file), 'a theory file', [])!;
-  const { start, end } = root.entries.get('lagrangian')!.value.origin;
+  const { key, value: old } = root.entries.get('lagrangian')!;
+  const { start, end } = old.origin;
+  const indent = ' '.repeat(key.origin.start - text.lastIndexOf('\n', key.origin.start - 1) + 1);
   // Inside { } a text cannot be a block.
   const inFlow = text[root.origin.start] === '{';
-  const value = inFlow ? `'${lines.join(' ')}'` : `|\n${lines.map((line) => `  ${line}\n`).join('')}`;
+  const value = inFlow ? `'${lines.join(' ')}'` : `|\n${lines.map((line) => `${indent}${line}\n`).join('')}`;
   const rest = text.slice(end);
   return `${text.slice(0, start)}${value}${inFlow ? rest : rest.replace(/^[^\S\n]*\n/, '')}`;
 }

@@ -18,7 +18,7 @@ describe('lagrangianInput', () => {
       printSum(canonicalSum(terms, input.kinds), input.style('plain'));
     expect(text(input.typed)).toBe('1/2 c0 M^2 R + b3 M^2 T_a T^a');
     expect(text(input.terms)).toBe('1/2 c0 M^2 R + 2 c0 M^2 T_a T^a');
-    expect([...input.facts].sort()).toEqual(['constant M', 'constant c0']);
+    expect([...input.facts].sort()).toEqual(['constant M', 'constant b3', 'constant c0']);
   });
 
   it('knows densities of matter and k as symbols of relations', async () => {

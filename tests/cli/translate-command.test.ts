@@ -61,6 +61,43 @@ describe('untwist translate', () => {
     expect((await translate(flow, '--to', 'monomials', '--write', '-')).out).toBe(flow);
   });
 
+  it.each([
+    ['a comment behind it', 'untwist: 1\nname: x\nlagrangian: R_{ab} R^{ba} # why\nmatter: [dust]\n'],
+    ['no line end', 'untwist: 1\nname: x\nlagrangian: R_{ab} R^{ba}'],
+    [
+      'a folded block in the middle',
+      'untwist: 1\nname: x\nlagrangian: >-\n  R_{ab}\n  R^{ba}\n\n\n# note\nmatter: [dust]\n',
+    ],
+    ['quotes over two lines', "untwist: 1\nname: x\nlagrangian:\n  'R_{ab}\n   R^{ba}'\nmatter: [dust]\n"],
+    ['indentation', '  untwist: 1\n  name: x\n  lagrangian: R_{ab} R^{ba}\n  matter: [dust]\n'],
+    ['carriage returns', 'untwist: 1\r\nname: x\r\nlagrangian: |\r\n  R_{ab}\r\n  R^{ba}\r\nmatter: [dust]\r\n'],
+  ])('keeps a file with %s readable', async (_, text) => {
+    const { code, out } = await translate(text, '--to', 'monomials', '--write', '-');
+    expect(code).toBe(0);
+    const [before, after] = [readTheory(text, 'a.yaml'), readTheory(out, 'b.yaml')];
+    expect(after.lagrangian).toEqual(before.lagrangian);
+    expect(after.matter).toEqual(before.matter);
+  });
+
+  it('says when nothing is left to write', async () => {
+    const text = theory("'c1 R^2 - 4 c1 R_{ab} R^{ba} + c1 R_{abcd} R^{cdab}'");
+    const dropped = await translate(text, '--to', 'monomials', '--modulo-boundary', '--write', '-');
+    expect([dropped.code, dropped.out]).toEqual([1, '']);
+    expect(dropped.err).toMatch(/the Lagrangian vanishes in this basis/);
+    expect(JSON.parse((await translate(text, '--to', 'monomials', '--modulo-boundary', '--json')).out).theory).toBe(
+      null,
+    );
+  });
+
+  it('with imposed relations: the table uses them, the file keeps them', async () => {
+    const text = theory("'c1 R_{abcd} R^{cdab} + c2 R^2'", 'impose: "c2 = 3 c1"');
+    const { out } = await translate(text, '--to', 'monomials', '--modulo-boundary');
+    expect(out).toMatch(/│ a1 +│ 2 c1 +│/);
+    const written = (await translate(text, '--to', 'monomials', '--modulo-boundary', '--write', '-')).out;
+    expect(written).toContain('(-c1 + c2) R^2');
+    expect(written).toContain('impose: "c2 = 3 c1"');
+  });
+
   it('writes a file, and only replaces one when told to', async () => {
     const file = join(scratch(), 'new.yaml');
     const args = ['translate', HARBOUR, '--to', 'irreducible', '--write', file];
