@@ -15,8 +15,9 @@ const FLOORS = {
   scalartensor: ['algebra', 'notation', 'geometry', 'mechanics'],
   cas: ['algebra'],
   '.': ['algebra', 'notation', 'tensor', 'geometry', 'mechanics', 'scalartensor', 'cas'],
-  emit: ['algebra', 'notation', 'tensor', 'geometry', 'mechanics', 'scalartensor', 'cas', '.'],
-  cli: ['algebra', 'notation', 'tensor', 'geometry', 'mechanics', 'scalartensor', 'cas', '.', 'emit'],
+  compare: ['algebra', 'notation', 'geometry', 'mechanics', '.'],
+  emit: ['algebra', 'notation', 'tensor', 'geometry', 'mechanics', 'scalartensor', 'cas', '.', 'compare'],
+  cli: ['algebra', 'notation', 'tensor', 'geometry', 'mechanics', 'scalartensor', 'cas', '.', 'compare', 'emit'],
 };
 /** Files at the top of src that stand above everything. */
 const ROOF = new Set(['index.ts', 'bin.ts']);

@@ -1,0 +1,246 @@
+/**
+ * Tests printed equations against a theory: on every branch of its equations, or on the one that the user names. What holds
+ * for matter of any pressure holds for the matter of the theory, so that is tried first.
+ */
+
+import { symbolsOf } from '../algebra/collect.js';
+import { splitUnit } from '../algebra/division.js';
+import { infix } from '../algebra/infix.js';
+import { remember } from '../algebra/memo.js';
+import { equals, generator, isZero, type Poly } from '../algebra/poly.js';
+import type { Derivation } from '../derivation.js';
+import { errorAt, InputError } from '../notation/diagnostics.js';
+import { plainPassage } from '../notation/passage.js';
+import type { Branch } from './branches.js';
+import { BoundError } from './budget.js';
+import { type Claim, readClaim } from './claim.js';
+import { consequence, type Residual, type Verdict } from './consequence.js';
+import type { JetSpace } from './jet-space.js';
+import { RANKINGS, type RankingName } from './ranking.js';
+import { type Repair, repairsOf } from './repair.js';
+import { BOUNDS, type Bound, equationsOf, type Solved, solve } from './system.js';
+import { type Vocabulary, vocabularyOf } from './vocabulary.js';
+
+export interface ClaimOptions {
+  readonly claims: readonly string[];
+  /** Definitions of symbols, each in terms of earlier ones. */
+  readonly where?: readonly string[];
+  /** Relations `x = y` and `x != y` that name a branch. */
+  readonly branch?: readonly string[];
+  /** Whether the matter may have any equation of state. */
+  readonly anyMatter?: boolean;
+}
+
+/** The verdict on one branch of the equations. */
+export interface BranchVerdict {
+  /** Relations that single the branch out; empty when there is only one. */
+  readonly branch: readonly string[];
+  readonly result: Verdict;
+}
+
+export interface ClaimReport {
+  readonly claim: Claim;
+  readonly verdict: 'holds' | 'fails' | 'undecided';
+  /** Whether the verdict was reached for matter of any pressure. */
+  readonly anyMatter: boolean;
+  /** Why nothing was decided, when no branch was. */
+  readonly reason: string | undefined;
+  readonly branches: readonly BranchVerdict[];
+  /** What left minus right comes to where the claim fails, in its simplest form. */
+  readonly residual: Residual | undefined;
+  readonly repairs: readonly Repair[];
+}
+
+/** A branch without solutions, with the relation between couplings that it would need. */
+export interface Impossible {
+  readonly branch: readonly string[];
+  readonly needs: string;
+}
+
+export interface ClaimsReport {
+  /** Relations of the user that name the branch. */
+  readonly branch: readonly string[];
+  readonly where: readonly string[];
+  readonly impossible: readonly Impossible[];
+  readonly claims: readonly ClaimReport[];
+}
+
+/**
+ * @throws InputError for texts that cannot be read, and `no-solution` when the equations have none on the branch.
+ */
+export function decideClaims(d: Derivation, options: ClaimOptions): ClaimsReport {
+  const { anyMatter = false, branch = [], where = [] } = options;
+  const question = questionOf(d, options);
+  const general = new Settlement(d, question, true);
+  const own = anyMatter ? undefined : new Settlement(d, question, false);
+  const claims = question.claims.map((claim): ClaimReport => {
+    const first = general.report(claim);
+    return !own || first.verdict === 'holds' ? first : combined(own.report(claim), first);
+  });
+  return { branch, where, impossible: (own?.used ? own : general).impossible(), claims };
+}
+
+/** The claims and what they are tested under, read once. */
+interface Question {
+  readonly vocabulary: Vocabulary;
+  readonly claims: readonly Claim[];
+  readonly branch: readonly string[];
+  readonly zero: readonly { readonly name: string; readonly poly: Poly }[];
+  readonly nonzero: readonly Poly[];
+}
+
+function questionOf(d: Derivation, { claims, where = [], branch = [] }: ClaimOptions): Question {
+  const vocabulary = vocabularyOf(d, where);
+  const chosen = branch.map((text) => readBranch(vocabulary, text));
+  const equal = chosen.filter((c) => c.equal);
+  return {
+    vocabulary,
+    claims: claims.map((text) => readClaim(vocabulary, text)),
+    branch,
+    zero: [...vocabulary.defining, ...equal].map(({ text, poly }) => ({ name: text, poly })),
+    nonzero: chosen.filter((c) => !c.equal).map((c) => splitUnit(c.poly).reduced),
+  };
+}
+
+/** The equations for one choice of matter, solved under one ranking after the other as far as claims need it. */
+class Settlement {
+  used = false;
+  private readonly d: Derivation;
+  private readonly question: Question;
+  private readonly anyMatter: boolean;
+  private readonly attempts = new Map<string, Solved | BoundError>();
+
+  constructor(d: Derivation, question: Question, anyMatter: boolean) {
+    this.d = d;
+    this.question = question;
+    this.anyMatter = anyMatter;
+  }
+
+  /** The first answer that is none of "undecided". */
+  report(claim: Claim): ClaimReport {
+    this.used = true;
+    let best: ClaimReport | undefined;
+    for (const bound of BOUNDS)
+      for (const ranking of RANKINGS) {
+        const report = this.under(ranking, bound, claim);
+        if (report.verdict !== 'undecided') return report;
+        best = report;
+      }
+    return best!;
+  }
+
+  impossible(): Impossible[] {
+    for (const solved of this.attempts.values())
+      if (!(solved instanceof BoundError))
+        return solved.solutions.deadEnds
+          .filter((e) => symbolsOf(e.needs).length > 0)
+          .map((e) => ({ branch: relationsOf(e), needs: `${infix(e.needs)} = 0` }));
+    return [];
+  }
+
+  private under(ranking: RankingName, bound: Bound, claim: Claim): ClaimReport {
+    const key = `${ranking} ${bound.products}`;
+    const solved = remember(this.attempts, key, () => this.solve(ranking, bound));
+    const base = { claim, anyMatter: this.anyMatter, residual: undefined, repairs: [] };
+    if (solved instanceof BoundError)
+      return { ...base, verdict: 'undecided', reason: `solving the equations needs ${solved.message}`, branches: [] };
+    const { branches } = solved.solutions;
+    const results = branches.map(
+      (b): BranchVerdict => ({
+        branch: this.relations(b),
+        result: consequence(solved, b, claim.poly),
+      }),
+    );
+    const fails = branches.filter((_, i) => results[i]!.result.verdict === 'fails');
+    const open = results.map((r) => r.result).find((r) => r.verdict === 'undecided');
+    const verdict = fails.length > 0 ? 'fails' : open ? 'undecided' : 'holds';
+    const others = branches.filter((b) => !fails.includes(b));
+    return {
+      ...base,
+      verdict,
+      reason: verdict === 'undecided' ? open?.reason : undefined,
+      branches: results,
+      residual: simplest(results.flatMap(({ result }) => (result.verdict === 'fails' ? [result.residual] : []))),
+      repairs: fails.length > 0 ? repairsOf(solved, [...fails, ...others], claim) : [],
+    };
+  }
+
+  /** The choices that the user did not make and that are not made everywhere. */
+  private relations(branch: Branch): string[] {
+    const { nonzero, vocabulary } = this.question;
+    const assumed = [...nonzero, ...ratesOf(vocabulary.space)];
+    return relationsOf({ ...branch, nonzero: branch.nonzero.filter((p) => !assumed.some((q) => equals(p, q))) });
+  }
+
+  private solve(ranking: RankingName, bound: Bound): Solved | BoundError {
+    const { vocabulary, zero, nonzero } = this.question;
+    const { space } = vocabulary;
+    const equations = (more: readonly Poly[]) =>
+      equationsOf(space, this.d, this.anyMatter, { zero, nonzero: [...nonzero, ...more] });
+    try {
+      // Static universes are solutions of their own; they are looked at only where nothing else is left.
+      const moving = solve(equations(ratesOf(space)), ranking, bound);
+      if (moving.solutions.branches.length > 0) return moving;
+      const all = solve(equations([]), ranking, bound);
+      if (all.solutions.branches.length === 0) throw noSolution(this.question.branch, all);
+      return all;
+    } catch (error) {
+      if (error instanceof BoundError) return error;
+      throw error;
+    }
+  }
+}
+
+const ratesOf = ({ rates, ring }: JetSpace): Poly[] =>
+  [...new Set(rates.values())].filter((name) => ring.position.has(name)).map((name) => generator(ring, name));
+
+function noSolution(branch: readonly string[], { solutions }: Solved): InputError {
+  const where = branch.length === 0 ? '' : ` with ${branch.join(', ')}`;
+  const wanted = solutions.deadEnds.map((e) => e.needs).filter((p) => symbolsOf(p).length > 0);
+  const needs = [...new Set(wanted.map((p) => `${infix(p)} = 0`))].slice(0, 3).join(' or ');
+  const hint = needs === '' ? 'every claim would follow' : `a solution would need ${needs}; impose it with --set`;
+  const message = `the equations have no solution${where} for general couplings`;
+  return new InputError([{ code: 'no-solution', severity: 'error', message, hint }]);
+}
+
+const weight = ({ top, bottom }: Residual): number => top.size + bottom.reduce((n, f) => n + f.base.size * f.power, 0);
+
+const simplest = (residuals: readonly Residual[]): Residual | undefined =>
+  residuals.reduce<Residual | undefined>((best, r) => (best && weight(best) <= weight(r) ? best : r), undefined);
+
+/** The verdict for the theory's own matter, with what was seen better for any matter. */
+function combined(own: ClaimReport, general: ClaimReport | undefined): ClaimReport {
+  if (own.verdict !== 'fails' || general?.verdict !== 'fails') return own;
+  const lone = general.branches.length === 1 && own.branches.length === 1;
+  const residuals = [general.residual, own.residual].filter((r) => r !== undefined);
+  return {
+    ...own,
+    residual: lone ? simplest(residuals) : own.residual,
+    repairs: general.repairs.length > 0 ? general.repairs : own.repairs,
+  };
+}
+
+/** The choices that single out a branch, as relations. */
+export function relationsOf({ zero, nonzero }: Pick<Branch, 'zero' | 'nonzero'>): string[] {
+  return [...zero.map((p) => `${infix(p)} = 0`), ...nonzero.map((p) => `${infix(p)} != 0`)];
+}
+
+interface ChosenBranch {
+  readonly text: string;
+  readonly poly: Poly;
+  readonly equal: boolean;
+}
+
+/** `psi = 0` or `u != 0`. */
+function readBranch(vocabulary: Vocabulary, text: string): ChosenBranch {
+  const differs = /!=|\\neq?(?![A-Za-z])|≠/.exec(text);
+  const written = differs ? `${text.slice(0, differs.index)}=${text.slice(differs.index + differs[0].length)}` : text;
+  const { poly } = readClaim(vocabulary, written, '--branch');
+  const folded = text.trim().replace(/\s+/g, ' ');
+  const place = plainPassage(text, '--branch').locate(0, text.length);
+  if (isZero(poly)) {
+    const message = differs ? `${folded} can never hold` : `${folded} is an identity`;
+    throw new InputError([errorAt(place, 'bad-branch', message, 'a branch is a relation such as psi = 0 or u != 0')]);
+  }
+  return { text: folded, poly, equal: differs === null };
+}
