@@ -6,9 +6,9 @@ import { eulerLagrange } from './algebra/calculus.js';
 import { moveTo, symbolsOf } from './algebra/collect.js';
 import { splitUnit } from './algebra/division.js';
 import { add, equals, isZero, type Poly, zero } from './algebra/poly.js';
-import { covariantTheory, ringWith } from './covariant.js';
+import { covariantTheory } from './covariant.js';
 import type { Check, Derivation } from './derivation.js';
-import { componentEvaluator, equationComponents, projected } from './geometry/covariant-components.js';
+import { componentEvaluator, equationComponents, projected, ringWith } from './geometry/covariant-components.js';
 import { maskOf } from './geometry/forms.js';
 import type { Geometry } from './geometry/geometry.js';
 import { symbolicValue } from './geometry/reduction.js';
@@ -47,6 +47,7 @@ export function deriveClassB(
   const derivation: Derivation = {
     theory,
     geometry,
+    fields: geometry.fields,
     ring,
     relations,
     terms,

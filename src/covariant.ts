@@ -5,12 +5,12 @@
 import { eulerLagrange } from './algebra/calculus.js';
 import { moveTo } from './algebra/collect.js';
 import { constant, equals, multiply, type Poly, sum } from './algebra/poly.js';
-import { constantsOf, makeRing, type Ring } from './algebra/ring.js';
 import type { Check, CovariantTheory, Derivation } from './derivation.js';
 import { geometryNames, loadGeometry } from './geometry/build.js';
-import { componentEvaluator, equationComponents, projected } from './geometry/covariant-components.js';
+import { componentEvaluator, equationComponents, projected, ringWith } from './geometry/covariant-components.js';
 import type { Geometry } from './geometry/geometry.js';
 import { density } from './geometry/reduction.js';
+import { InputError } from './notation/diagnostics.js';
 import { canonicalSum, type TensorSum } from './tensor/expression.js';
 import { inMetricTerms, metricKinds } from './tensor/metric-decomposition.js';
 import {
@@ -45,6 +45,7 @@ export function covariantTheory(
   keepMomenta = false,
   onStep: (what: string) => void = () => {},
 ): CovariantTheory {
+  refuseMultipliersAndSpin(d.theory);
   const kinds = variationKinds();
   const lagrangian = canonicalSum(d.terms, kinds);
   const momenta = fieldMomenta(lagrangian, kinds);
@@ -69,6 +70,15 @@ export function covariantTheory(
   return { lagrangian, momenta, equations, withMomenta, inMetricTerms: metricTerms, keepMomenta, checks };
 }
 
+/** Their covariant equations would need the multiplier and spin tensors themselves, which only have components here. */
+function refuseMultipliersAndSpin({ constraints = [], spins = [] }: CovariantInput['theory']): void {
+  const [first] = [...constraints, ...spins];
+  if (!first) return;
+  const message = 'the covariant equations are those of the Lagrangian alone, without multipliers and spin';
+  const hint = 'leave out constrain and spin, or --covariant; reduced equations with them need a class A geometry';
+  throw new InputError([{ code: 'covariant-alone', severity: 'error', message, hint, ...first.origin }]);
+}
+
 /**
  * Where the components of field equations differ from the reduced equations, as `geometry: field`; empty when they agree.
  */
@@ -76,13 +86,6 @@ export const covariantMismatches = (d: CovariantInput, equations: CovariantEquat
   comparable(d).flatMap((geometry) => {
     return compare(d, geometry, equations, d.terms).fields.map((q) => `${geometry.id}: ${q}`);
   });
-
-/** Jets of a geometry and every constant of a ring. */
-export function ringWith(geometry: Geometry, ring: Ring): Ring {
-  const known = new Set(geometry.ring.generators.map((g) => g.name));
-  const constants = ring.generators.filter((g) => g.kind === 'constant' && !known.has(g.name)).map((g) => g.name);
-  return makeRing([...geometry.ring.generators, ...constantsOf(constants)]);
-}
 
 /** Fields whose reduced equation differs from the projection of the covariant ones; whether the metric form agrees. */
 function compare(

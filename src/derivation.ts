@@ -6,9 +6,12 @@ import type { Fraction } from './algebra/fraction.js';
 import type { Poly } from './algebra/poly.js';
 import type { Ring } from './algebra/ring.js';
 import type { Knowledge } from './algebra/signs.js';
-import type { Geometry } from './geometry/geometry.js';
+import type { Geometry, GeometrySymbol } from './geometry/geometry.js';
+import type { Branch } from './mechanics/branches.js';
+import type { ConstrainedTensor } from './multipliers.js';
 import type { LagrangianTerm, TensorFactor, Theory, TheorySymbol } from './notation/theory.js';
 import type { ScalarFields } from './scalar-fields.js';
+import type { SpinTensor } from './spin.js';
 import type { TensorSum } from './tensor/expression.js';
 import type { CovariantEquations, Momenta } from './tensor/variation.js';
 
@@ -103,19 +106,67 @@ export interface LagrangianElsewhere {
   readonly symbols: readonly TheorySymbol[];
 }
 
+/** What the constraints leave on one branch of their solutions. Expressions are in the branch's own ring. */
+export interface ConstrainedBranch extends Branch {
+  /** `psi = 0, phi = sqrt(-k)/a (k < 0)`; either sign of a root is meant. */
+  readonly name: string;
+  /** Volume times the Lagrangian, matter included, in the fields that are left. */
+  readonly lagrangian: Poly;
+  /** Its gravitational part without total derivatives. */
+  readonly reduced: Poly;
+  /** Euler–Lagrange expressions of `lagrangian`, by field; the multipliers are gone unless their constraint remains. */
+  readonly equations: ReadonlyMap<string, Poly>;
+  /** Equations of the solved fields, which fix the multipliers. */
+  readonly multiplierEquations: ReadonlyMap<string, Poly>;
+  /** Multipliers that no equation fixes. */
+  readonly undetermined: readonly string[];
+  /** Equations of the solved fields without any multiplier: further conditions on this branch. */
+  readonly further: ReadonlyMap<string, Poly>;
+  readonly friedmann: Pick<FriedmannForm, 'rhoT' | 'pT'> | undefined;
+  readonly scalarTensor: ScalarTensorForm;
+}
+
+/** Constraints by multipliers and what follows from them. */
+export interface Constrained {
+  readonly tensors: readonly ConstrainedTensor[];
+  readonly branches: readonly ConstrainedBranch[];
+  /** Whether every branch was found; otherwise the search was given up at its limit. */
+  readonly complete: boolean;
+}
+
+/** The connection eliminated in favour of spin, where it is algebraic. */
+export interface SpinElimination {
+  /** Field → its value on the equations of the connection. */
+  readonly solution: ReadonlyMap<string, Fraction>;
+  /** What spin adds to the energy density and, where it depends on the scale factor alone, to the pressure. */
+  readonly rho: Fraction;
+  readonly p: Fraction | undefined;
+}
+
+export interface SpinResult {
+  readonly tensors: readonly SpinTensor[];
+  readonly averages: readonly FluidValue[];
+  /** Volume times what couples spin to the connection. */
+  readonly interaction: Poly;
+  /** Undefined when there is nothing to eliminate; a text says why it cannot be done. */
+  readonly elimination: SpinElimination | string | undefined;
+}
+
 export interface Derivation {
   readonly theory: Theory;
   readonly geometry: Geometry;
+  /** Functions of time that are varied: those of the geometry, then multipliers. */
+  readonly fields: readonly GeometrySymbol[];
   /** Jets of the geometry's fields (orders 0 to 3), its parameters, all symbols of the theory, M, densities. */
   readonly ring: Ring;
   readonly relations: ImposedRelations;
   /** The Lagrangian after the relations were applied; like terms collected. */
   readonly terms: readonly { readonly coefficient: Poly; readonly factors: LagrangianTerm['factors'] }[];
   readonly invariants: readonly InvariantValue[];
-  /** Exact a³N·L of the torsion theory, without matter. */
+  /** Exact a³N·L of the torsion theory with its multipliers, without matter. */
   readonly gravity: Poly;
   readonly fluids: readonly FluidValue[];
-  /** gravity − Σ (volume) ρ: what the equations are derived from. */
+  /** gravity − Σ (volume) ρ, with the interaction of spin: what the equations are derived from. */
   readonly lagrangian: Poly;
   /** gravity = reducedGravity + d/dt dropped. */
   readonly reducedGravity: Poly;
@@ -136,6 +187,10 @@ export interface Derivation {
   readonly scalarFields?: ScalarFields;
   /** In the conventions of the theory file when they are not the internal ones, and in those asked for. */
   readonly elsewhere?: readonly LagrangianElsewhere[];
+  /** Present when the theory has constraints. */
+  readonly constrained?: Constrained;
+  /** Present when matter has spin. */
+  readonly spin?: SpinResult;
   /** Present when it was asked for. */
   readonly covariant?: CovariantTheory;
   readonly checks: readonly Check[];

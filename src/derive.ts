@@ -9,6 +9,7 @@ import { fraction } from './algebra/fraction.js';
 import { add, equals, generator, isZero, multiply, type Poly } from './algebra/poly.js';
 import type { Ring } from './algebra/ring.js';
 import { knowledgeFor } from './assumptions.js';
+import { constrainedTheory } from './constrained.js';
 import type { Check, Derivation, FluidValue, FriedmannForm, ScalarTensorForm } from './derivation.js';
 import type { Geometry } from './geometry/geometry.js';
 import { symbolicValue } from './geometry/reduction.js';
@@ -20,6 +21,7 @@ import { InputError } from './notation/diagnostics.js';
 import type { Theory } from './notation/theory.js';
 import { biScalarForm, type Gravity } from './scalartensor/biscalar.js';
 import { PLANCK_MASS, settingOf } from './setting.js';
+import { spinResult } from './spin-elimination.js';
 
 /**
  * Derives everything about a theory.
@@ -27,18 +29,20 @@ import { PLANCK_MASS, settingOf } from './setting.js';
  * @throws InputError when the theory is at fault (unknown geometry, contradictory relations, a limit exceeded);
  * Error when a check fails, which means that this program is wrong.
  */
-export function derive(theory: Theory, onStep: (what: string) => void = () => {}): Derivation {
-  const setting = settingOf(theory, onStep);
-  const { geometry, ring, relations, terms, gravity, matter, fluids, lagrangian, couple, fix } = setting;
+export function derive(given: Theory, onStep: (what: string) => void = () => {}): Derivation {
+  const setting = settingOf(given, onStep);
+  const { theory, geometry, ring, relations, terms, gravity, spin, matter, fluids, lagrangian, couple, fix } = setting;
   if (!geometry.traceless) throw classB(geometry);
   const knowledge = theory.assumptions && knowledgeFor(theory, ring, relations, (p) => fix(couple(p)));
 
   onStep('varying the Lagrangian');
-  const fields = geometry.fields.map((f) => f.name);
+  const fields = setting.fields.map((f) => f.name);
   const variation = (of: Poly) => new Map(fields.map((q) => [q, eulerLagrange(of, q)] as const));
   const gravityEquations = variation(gravity);
   const matterEquations = variation(matter);
-  const equations = new Map(fields.map((q) => [q, add(gravityEquations.get(q)!, matterEquations.get(q)!)] as const));
+  // What couples to the connection acts on it like a part of gravity; the metric analogue is that of gravity alone.
+  const coupledEquations = isZero(spin) ? gravityEquations : variation(add(gravity, spin));
+  const equations = new Map(fields.map((q) => [q, add(coupledEquations.get(q)!, matterEquations.get(q)!)] as const));
 
   const checks: Check[] = geometry.checks.map((c) => ({ ...c, detail: `geometry ${geometry.id}` }));
   const check = (name: string, detail: string, holds: boolean): void => {
@@ -67,15 +71,18 @@ export function derive(theory: Theory, onStep: (what: string) => void = () => {}
     fields.every((q) => isZero(eulerLagrange(boundary, q))),
   );
 
-  const friedmann = friedmannOf(geometry, ring, gravityEquations, couple, check);
+  const friedmann = friedmannOf(geometry, ring, coupledEquations, couple, check);
   onStep('looking for the scalar-tensor form');
-  const scalarTensor = scalarTensorOf(geometry, ring, { reduced, equations: gravityEquations }, check);
+  const branches = setting.constrained.length > 0 ? constrainedTheory(setting, equations, check) : undefined;
+  const scalarTensor =
+    branches?.scalarTensor ?? scalarTensorOf(geometry, ring, { reduced, equations: gravityEquations }, check);
   const parameters = geometry.parameters.map((p) => p.name);
   const scales = theory.symbols.filter((s) => s.role === 'scale').map((s) => s.name);
   const curvature = geometry.isotropic?.curvature;
   return Object.freeze({
     theory,
     geometry,
+    fields: setting.fields,
     ring,
     relations,
     terms,
@@ -89,10 +96,14 @@ export function derive(theory: Theory, onStep: (what: string) => void = () => {}
     dropped: fix(primitive),
     equations: new Map([...equations].map(([q, e]) => [q, fix(e)])),
     combinations: couplingCombinations(fix(reduced), parameters, scales).filter((p) => symbolsOf(p).length > 0),
-    screening: curvature === undefined ? undefined : screeningConditions(reduced, curvature, parameters, scales),
+    // With constraints k acts through their solutions, which the coefficients do not show.
+    screening:
+      curvature === undefined || branches ? undefined : screeningConditions(reduced, curvature, parameters, scales),
     friedmann: friedmann && fixFriedmann(friedmann, fix),
     // The form speaks about other values of k too, so a value imposed on k is not put into its obstruction.
     scalarTensor,
+    ...(branches ? { constrained: branches.constrained } : {}),
+    ...(theory.spins ? { spin: spinResult(setting, friedmann, check) } : {}),
     ...(knowledge ? { knowledge } : {}),
     checks,
   });

@@ -3,7 +3,18 @@
  */
 import { moveTo } from './algebra/collect.js';
 import { remember } from './algebra/memo.js';
-import { add, generator, isZero, monomial, multiply, negate, type Poly, scale, sum } from './algebra/poly.js';
+import {
+  generator,
+  isZero,
+  monomial,
+  multiply,
+  negate,
+  type Poly,
+  power,
+  product,
+  scale,
+  sum,
+} from './algebra/poly.js';
 import {
   addRational,
   multiplyRational,
@@ -16,15 +27,18 @@ import {
 import { constantsOf, exponentAt, type Generator, jetsOf, makeRing, type Ring } from './algebra/ring.js';
 import type { Derivation, FluidValue } from './derivation.js';
 import { loadGeometry } from './geometry/build.js';
-import type { Geometry } from './geometry/geometry.js';
+import type { Geometry, GeometrySymbol } from './geometry/geometry.js';
 import { MAX_JET_ORDER } from './geometry/read-geometry.js';
 import { density, MAX_REDUCED_TERMS, ReductionLimitError } from './geometry/reduction.js';
+import { type ConstrainedTensor, constrainedTensors } from './multipliers.js';
 import { InputError } from './notation/diagnostics.js';
 import { applyImposed, type Imposed, solveRelations } from './notation/impose.js';
 import { printLagrangian } from './notation/print.js';
 import { polyOfScalar } from './notation/scalar-poly.js';
 import { UNIT } from './notation/scalar-term.js';
 import type { LagrangianTerm, MatterComponent, Theory } from './notation/theory.js';
+import { type SpinTensor, spinInteraction, spinTensors } from './spin.js';
+import { spinAverage } from './spin-average.js';
 import { ContractionLimitError } from './tensor/contraction.js';
 import { dummyFreeKey, NoComponentsError } from './tensor/invariants.js';
 import { expandParts } from './tensor/parts.js';
@@ -35,12 +49,21 @@ export const PLANCK_MASS = 'M';
 export interface Setting {
   readonly theory: Theory;
   readonly geometry: Geometry;
+  /** Those of the geometry, then the multipliers. */
+  readonly fields: readonly GeometrySymbol[];
   readonly ring: Ring;
   readonly relations: Imposed;
   readonly terms: Derivation['terms'];
   readonly fluids: readonly FluidValue[];
-  /** Reduced Lagrangians: of torsion and curvature, of matter, and their sum. */
+  readonly constrained: readonly ConstrainedTensor[];
+  readonly spins: readonly SpinTensor[];
+  /** Averages of spins, the last of the fluids. */
+  readonly averages: readonly FluidValue[];
+  /** Reduced Lagrangians: of torsion and curvature with the multipliers, of spin, of matter, and their sum. */
   readonly gravity: Poly;
+  /** What couples spin to the connection; zero without it. */
+  readonly spin: Poly;
+  /** Fluids and averages of spins. */
   readonly matter: Poly;
   readonly lagrangian: Poly;
   /** Applies the relations between couplings. */
@@ -54,24 +77,25 @@ export interface Setting {
  * @param onStep is told what is about to be done, for a progress line.
  * @throws InputError when the theory is at fault (unknown geometry, contradictory relations, a limit exceeded).
  */
-export function settingOf(theory: Theory, onStep: (what: string) => void): Setting {
-  const geometry = loadGeometry(theory.geometry, theory.signature);
+export function settingOf(given: Theory, onStep: (what: string) => void): Setting {
+  const geometry = loadGeometry(given.geometry, given.signature);
+  const spins = spinTensors(given, geometry);
+  // Components of spin tensors are symbols of the theory from here on.
+  const theory: Theory =
+    spins.length === 0 ? given : { ...given, symbols: [...given.symbols, ...spins.flatMap((s) => s.components)] };
   refuseFieldNames(theory, geometry);
   const fluidsWanted = theory.matter.map((m) => ({ ...m, exponents: dilution(geometry, m) }));
   refuseSteepDilution(fluidsWanted);
-  const ring = ringOf(theory, geometry, fluidsWanted);
-  const constants = theory.symbols.filter((s) => s.role === 'constant').map((s) => s.name);
-  const relations = solveRelations(ring, theory.relations, constants);
-  // Relations for the geometry's own parameters wait until the form that needs the parameter as a symbol is found.
-  const isParameter = (name: string): boolean => geometry.parameters.some((p) => p.name === name);
-  const inCouplings = new Map([...relations.eliminated].filter(([name]) => !isParameter(name)));
-  const inParameters = new Map([...relations.eliminated].filter(([name]) => isParameter(name)));
-  const couple = (p: Poly): Poly => applyImposed(p, inCouplings, relations.origins);
-  const fix = (p: Poly): Poly => applyImposed(p, inParameters, relations.origins);
+  const narrow = ringOf(theory, geometry, fluidsWanted);
+  const constrained = constrainedTensors(theory, geometry, narrow, relationsIn(narrow, theory, geometry).couple);
+  const multipliers = constrained.flatMap((c) => c.multipliers);
+  refuseNames(theory, new Map(multipliers.map((m) => [m.name, m.meaning])));
+  const ring = multipliers.length === 0 ? narrow : ringOf(theory, geometry, fluidsWanted, multipliers);
+  const { relations, couple, fix } = relationsIn(ring, theory, geometry);
 
   const terms = collectTerms(ring, expandParts(theory.lagrangian).terms, couple);
   let size = 0;
-  const gravity = sum(
+  const free = sum(
     ring,
     terms.map(({ coefficient, factors }, i) => {
       onStep(`contracting product ${i + 1} of ${terms.length}`);
@@ -83,28 +107,92 @@ export function settingOf(theory: Theory, onStep: (what: string) => void): Setti
       });
     }),
   );
-  const fluids = fluidsWanted.map((m) => fluidValue(ring, m, couple));
+  const volume = moveTo(geometry.volume, ring);
+  const gravity = sum(ring, [
+    free,
+    ...multipliers.map((m) => product(ring, [generator(ring, m.name), volume, moveTo(m.value, ring)])),
+  ]);
+  const averages = spinAverages(theory, geometry, terms, ring);
+  const fluids = [...fluidsWanted.map((m) => fluidValue(ring, m, couple)), ...averages];
   const spatialVolume = moveTo(geometry.spatialVolume, ring);
   const lapse = generator(ring, geometry.lapse);
   const matter = sum(
     ring,
     fluids.map(({ rho }) => negate(multiply(multiply(spatialVolume, lapse), rho))),
   );
-  const lagrangian = add(gravity, matter);
-  return { theory, geometry, ring, relations, terms, fluids, gravity, matter, lagrangian, couple, fix };
+  const spin = spinInteraction(theory, geometry, ring, spins, couple);
+  return {
+    theory,
+    geometry,
+    fields: [...geometry.fields, ...multipliers],
+    ring,
+    relations,
+    terms,
+    fluids,
+    constrained,
+    spins,
+    averages,
+    gravity,
+    spin,
+    matter,
+    lagrangian: sum(ring, [gravity, spin, matter]),
+    couple,
+    fix,
+  };
+}
+
+/** Relations between couplings act at once; those for the geometry's parameters wait until the form is found. */
+function relationsIn(
+  ring: Ring,
+  theory: Theory,
+  geometry: Geometry,
+): { readonly relations: Imposed; readonly couple: (p: Poly) => Poly; readonly fix: (p: Poly) => Poly } {
+  const constants = theory.symbols.filter((s) => s.role === 'constant').map((s) => s.name);
+  const relations = solveRelations(ring, theory.relations, constants);
+  const isParameter = (name: string): boolean => geometry.parameters.some((p) => p.name === name);
+  const inCouplings = new Map([...relations.eliminated].filter(([name]) => !isParameter(name)));
+  const inParameters = new Map([...relations.eliminated].filter(([name]) => isParameter(name)));
+  return {
+    relations,
+    couple: (p) => applyImposed(p, inCouplings, relations.origins),
+    fix: (p) => applyImposed(p, inParameters, relations.origins),
+  };
+}
+
+/** Averages of spins, as fluids of density −c s²/V² with p = ρ. */
+function spinAverages(
+  { spins = [] }: Theory,
+  geometry: Geometry,
+  terms: Derivation['terms'],
+  ring: Ring,
+): readonly FluidValue[] {
+  return spins.flatMap((source): FluidValue[] => {
+    if (source.kind !== 'weyssenhoff') return [];
+    const coefficient = spinAverage(terms, geometry.tensors.metric, ring, source.origin);
+    const diluted = power(moveTo(geometry.spatialVolume, ring), -2);
+    const rho = negate(product(ring, [coefficient, generator(ring, source.name, 2), diluted]));
+    return [{ name: source.name, density: source.name, rho, pressure: rho, isSource: false }];
+  });
 }
 
 /** Users may not name a constant like a field or parameter of their geometry. */
 function refuseFieldNames(theory: Theory, geometry: Geometry): void {
   const taken = new Map([...geometry.fields, ...geometry.parameters].map((s) => [s.name, s.meaning]));
   for (const [field, rate] of geometry.rates) taken.set(rate, `expansion rate of ${field}`);
+  refuseNames(
+    theory,
+    new Map([...taken].map(([name, meaning]) => [name, `the ${meaning} of the geometry ${geometry.id}`])),
+  );
+}
+
+function refuseNames(theory: Theory, taken: ReadonlyMap<string, string>): void {
   const clashes = theory.symbols.filter((s) => taken.has(s.name));
   if (clashes.length === 0) return;
   throw new InputError(
     clashes.map(({ name }) => ({
       code: 'reserved-name',
       severity: 'error',
-      message: `${name} is the ${taken.get(name)} of the geometry ${geometry.id}`,
+      message: `${name} is ${taken.get(name)}`,
       hint: 'choose another name',
     })),
   );
@@ -164,16 +252,27 @@ const hasPowerLaw = (fluid: Fluid): boolean => [...fluid.exponents.values()].eve
 const rings = new Map<string, Ring>();
 
 /** One ring per set of symbols, so that theories of one survey share it. */
-function ringOf(theory: Theory, geometry: Geometry, fluids: readonly Fluid[]): Ring {
+function ringOf(
+  theory: Theory,
+  geometry: Geometry,
+  fluids: readonly Fluid[],
+  multipliers: readonly GeometrySymbol[] = [],
+): Ring {
+  const fields = [...geometry.fields, ...multipliers].map((f) => f.name);
   const named = new Set([...geometry.parameters.map((p) => p.name), ...theory.symbols.map((s) => s.name), PLANCK_MASS]);
   const powerLaw = fluids.filter((f) => hasPowerLaw(f)).map((f) => f.density);
   for (const name of powerLaw) named.add(name);
   const sources = fluids
     .filter((f) => !hasPowerLaw(f))
     .map((f): Generator => ({ kind: 'source', name: f.density, exponents: f.exponents }));
-  const key = JSON.stringify([geometry.id, [...named], fluids.map((f) => [f.density, `${f.w.num}/${f.w.den}`])]);
+  const key = JSON.stringify([
+    geometry.id,
+    fields,
+    [...named],
+    fluids.map((f) => [f.density, `${f.w.num}/${f.w.den}`]),
+  ]);
   return remember(rings, key, () =>
-    makeRing([...geometry.fields.flatMap((f) => jetsOf(f.name, MAX_JET_ORDER)), ...sources, ...constantsOf(named)]),
+    makeRing([...fields.flatMap((name) => jetsOf(name, MAX_JET_ORDER)), ...sources, ...constantsOf(named)]),
   );
 }
 

@@ -71,7 +71,7 @@ export function symbolTable(
   for (const { name, latex, dimension } of geometry.parameters)
     put({ generator: name, name, latex, role: 'parameter', dimension });
   for (const { name, latex, role } of theory.symbols)
-    put({ generator: name, name, latex, role: role === 'vacuum' ? 'density' : role });
+    put({ generator: name, name, latex, role: role === 'vacuum' || role === 'spin' ? 'density' : role });
   for (const { density, latex } of theory.matter)
     if (table.get(density)?.role !== 'density') put({ generator: density, name: density, latex, role: 'density' });
   // What the program adds itself: the reduced Planck mass, and roots of parameters.

@@ -53,7 +53,8 @@ export function viewerOf(derivation: Derivation, key?: string): Viewer {
     const offered = [own.map((f) => f.name).join(','), ...geometry.variables.map((v) => v.key)];
     throw new RangeError(`no variables ${JSON.stringify(key)} in this geometry; it offers ${offered.join(' and ')}`);
   }
-  const fields = variables?.fields ?? geometry.fields;
+  const further = derivation.fields.filter((f) => !geometry.fields.some((g) => g.name === f.name));
+  const fields = [...(variables?.fields ?? geometry.fields), ...further];
   const ring = displayRing(derivation, fields);
   const images = imagesIn(ring, derivation, variables);
   const symbols = symbolTable(derivation, fields, rateField);

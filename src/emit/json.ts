@@ -9,6 +9,7 @@ import { printRational } from '../algebra/rational.js';
 import type { CovariantTheory, Derivation, ScalarTensorForm } from '../derivation.js';
 import { printLagrangian } from '../notation/print.js';
 import type { TensorSum } from '../tensor/expression.js';
+import { constrainedObject, constrainedSymbols } from './constrained-json.js';
 import { factorsTex } from './latex-tensors.js';
 import { scalarFieldSymbols, scalarFieldsObject } from './scalar-fields-json.js';
 
@@ -74,7 +75,7 @@ function expressions(d: Derivation): Poly[] {
 
 /** Names of all symbols of any printed expression that are not fields, in the order of the ring. */
 export function parametersOf(d: Derivation): string[] {
-  const used = new Set([...expressions(d).flatMap(symbolsOf), ...scalarFieldSymbols(d)]);
+  const used = new Set([...expressions(d).flatMap(symbolsOf), ...constrainedSymbols(d), ...scalarFieldSymbols(d)]);
   return d.ring.generators.filter((g) => g.kind !== 'jet' && used.has(g.name)).map((g) => g.name);
 }
 
@@ -108,6 +109,7 @@ export function derivationObject(d: Derivation): Record<string, unknown> {
     ...(d.friedmann ? { friedmann: { rho_T: infix(d.friedmann.rhoT), p_T: infix(d.friedmann.pT) } } : {}),
     scalarTensor: scalarTensorObject(d.scalarTensor),
     ...scalarFieldsObject(d),
+    ...constrainedObject(d, scalarTensorObject),
     ...(d.covariant ? { covariant: covariantObject(d.covariant) } : {}),
     checks: d.checks.map(({ name, holds, detail }) => ({ name, holds, detail })),
     warnings: d.theory.warnings.map((w) => w.message),

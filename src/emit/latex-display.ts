@@ -69,7 +69,7 @@ export function writerOf(derivation: Derivation, options: LatexOptions = {}): Wr
   const viewer = options.variables === undefined ? plain : viewerOf(derivation, options.variables);
   const { slug } = derivation.theory;
   const latex = (name: string): string =>
-    viewer.symbols.get(name)?.latex ?? derivation.geometry.fields.find((f) => f.name === name)?.latex ?? name;
+    viewer.symbols.get(name)?.latex ?? derivation.fields.find((f) => f.name === name)?.latex ?? name;
   return {
     derivation,
     viewer,

@@ -60,7 +60,7 @@ export function reductionSection(writer: Writer): Section {
 /** E_q = 0 for every field. */
 export function equationsSection(writer: Writer): Section {
   const { derivation, passage, viewer, latex } = writer;
-  const { geometry, equations } = derivation;
+  const { geometry, equations, fields } = derivation;
   const definition = fixedRow(
     'E_{q}',
     '\\frac{\\partial L}{\\partial q} - \\frac{\\mathrm{d}}{\\mathrm{d} t} \\frac{\\partial L}{\\partial \\dot{q}}',
@@ -76,7 +76,7 @@ export function equationsSection(writer: Writer): Section {
     rowDisplays([definition]),
   );
   const each = [...equations].map(([q, value]) => {
-    const field = geometry.fields.find((f) => f.name === q)!;
+    const field = fields.find((f) => f.name === q)!;
     const text = isZero(value)
       ? prose`The variation of ${math(field.latex)} (${field.meaning}) gives nothing: this expression vanishes identically.`
       : prose`Variation of ${math(field.latex)} (${field.meaning}):`;

@@ -129,6 +129,10 @@ function matterPassage(writer: Writer): ReturnType<Writer['passage']> {
     const name = m.kind === 'vacuum' ? 'vacuum energy' : m.name;
     return prose`${name} (${math(`w = ${printRational(m.w)}`)}, density ${math(latex(m.density))}${isConstant ? '' : ' at unit scale factor'})`;
   });
+  for (const { name } of derivation.spin?.averages ?? [])
+    each.push(
+      prose`randomly oriented spins (${math('w = 1')}, spin density ${math(latex(name))} at unit scale factor)`,
+    );
   const text = prose`Matter enters as minus its energy density per volume and is conserved on its own: ${enumerated(each)}. In total`;
   const rows: Equation[] = [
     { left: '\\rho', terms: total('rho') },
@@ -145,7 +149,7 @@ export function geometrySection(writer: Writer): Section {
   const components = componentTable(derivation);
   const rates = [...geometry.rates.keys()].map((a) => math(`${rate(a)} = ${rateTex(latex(a))}/${latex(a)}`));
   const fields = viewer.fields.map((f): Prose => prose`${math(f.latex)} (${f.meaning})`);
-  const names = new Map([...geometry.fields, ...geometry.parameters].map((s) => [s.name, s.latex]));
+  const names = new Map([...derivation.fields, ...geometry.parameters].map((s) => [s.name, s.latex]));
   const passages = [
     passage('fields', 'Geometry', {
       text: [

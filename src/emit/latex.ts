@@ -5,6 +5,7 @@
 import { remember } from '../algebra/memo.js';
 import type { Derivation } from '../derivation.js';
 import { analogueSection, checksSection, couplingsSection } from './latex-analogue.js';
+import { constraintsSection, spinSection } from './latex-constrained.js';
 import { covariantSection } from './latex-covariant.js';
 import { type LatexOptions, type Passage, type Section, writerOf } from './latex-display.js';
 import { equationsSection, friedmannSection, reductionSection } from './latex-results.js';
@@ -37,6 +38,8 @@ function writeSections(derivation: Derivation, options: LatexOptions): readonly 
     reductionSection(writer),
     equationsSection(writer),
     friedmannSection(writer),
+    constraintsSection(writer),
+    spinSection(writer),
     analogueSection(writer),
     covariantSection(writer),
     couplingsSection(writer),
@@ -50,6 +53,8 @@ const FOR_MANUSCRIPTS: ReadonlySet<string> = new Set([
   'reduction',
   'equations',
   'friedmann',
+  'constraints',
+  'spin',
   'scalar-tensor',
   'covariant',
 ]);

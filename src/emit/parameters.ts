@@ -22,11 +22,19 @@ export function expressionsOf(d: Derivation): Poly[] {
   const { friedmann: f, scalarTensor: s } = d;
   const covariant =
     s.form === 'none' ? [] : [s.g4, ...s.kinetic.values(), ...s.current.values(), s.potential, s.obstruction];
-  return [d.lagrangian, ...d.equations.values(), ...(f ? [f.rhoT, f.pT] : []), ...covariant];
+  const spin = d.spin && typeof d.spin.elimination === 'object' ? d.spin.elimination : undefined;
+  const fractions = spin ? [...spin.solution.values(), spin.rho, ...(spin.p ? [spin.p] : [])] : [];
+  const ofSpin = fractions.flatMap((x) => [x.numerator, ...x.denominator.map((y) => y.base)]);
+  return [d.lagrangian, ...d.equations.values(), ...(f ? [f.rhoT, f.pT] : []), ...covariant, ...ofSpin];
 }
 
 const PLANCK_MASS = 'reduced Planck mass';
-const ROLES = { constant: 'coupling constant', scale: 'scale', vacuum: 'energy density of the vacuum' } as const;
+const ROLES = {
+  constant: 'coupling constant',
+  scale: 'scale',
+  vacuum: 'energy density of the vacuum',
+  spin: 'spin density at unit spatial volume',
+} as const;
 
 /** Parameters that occur in any expression: symbols of the theory first, then those of the geometry, then densities. */
 export function modelParameters(d: Derivation): Parameter[] {
@@ -56,7 +64,7 @@ export function modelParameters(d: Derivation): Parameter[] {
 export function dimensionsOf(d: Derivation): ReadonlyMap<string, number> {
   const base = new Map<string, number>([['M', 1]]);
   for (const s of d.theory.symbols) base.set(s.name, s.dimension);
-  for (const s of [...d.geometry.parameters, ...d.geometry.fields]) base.set(s.name, s.dimension);
+  for (const s of [...d.geometry.parameters, ...d.fields]) base.set(s.name, s.dimension);
   for (const { density } of d.fluids) base.set(density, 4);
   return new Map(
     d.ring.generators.map((g) => {

@@ -50,7 +50,12 @@ export class BlockWriter {
 
   /** Declared symbols with what they stand for. */
   symbols(d: Derivation, latex: (name: string) => string): string {
-    const roles = { constant: 'constant', scale: 'scale', vacuum: 'vacuum energy density' } as const;
+    const roles = {
+      constant: 'constant',
+      scale: 'scale',
+      vacuum: 'vacuum energy density',
+      spin: 'spin density',
+    } as const;
     const rows = d.theory.symbols.map(({ name, role, dimension }) => [
       this.typesetter.inline(latex(name)),
       `<code>${escapeHtml(name)}</code>`,

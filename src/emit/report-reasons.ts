@@ -69,6 +69,24 @@ export function reasonsOf(sectionId: string, d: Derivation): Reasons {
           prose`Torsion and curvature are the field strengths of coframe and connection, so the variation passes through the field momenta and an integration by parts: ${math('\tfrac{1}{e}partial_{mu}(e V^{mu\nu}) = \nabla_{mu} V^{mu\nu} + T_{mu} V^{mu\nu} - \tfrac{1}{2} T^{\nu}{}_{mulambda} V^{mulambda}')}.`,
         ],
       };
+    case 'constraints':
+      return {
+        allowed: [
+          prose`A multiplier may be any tensor with the indices and slot symmetries of the constraint, but on a symmetric background only its invariant part meets something that does not vanish. On a branch the variation is restricted to solutions of the constraints, and its equations were compared with those of all fields by the chain rule.`,
+        ],
+        rule: [
+          prose`The components are the solutions of the linear conditions of invariance, Phys. Lett. A 75 (1979) 27 for torsion and curvature. A product splits into its factors; a root of a constant stands for either sign.`,
+        ],
+      };
+    case 'spin':
+      return {
+        allowed: [
+          prose`Matter that couples to the connection changes its equation but not the reduced gravity, so the metric analogue stays that of gravity alone. A field whose equation is algebraic and linear may be eliminated from the Lagrangian itself.`,
+        ],
+        rule: [
+          prose`Spin density falls with the volume, its square like the sixth power of the scale factor, Nature Phys. Sci. 242 (1973) 7, Rev. Mod. Phys. 48 (1976) 393.`,
+        ],
+      };
     case 'scalar-tensor':
       if (d.scalarTensor.form === 'none')
         return {

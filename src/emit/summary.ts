@@ -9,6 +9,7 @@ import { lagrangianLines, unicodeName } from '../notation/print.js';
 import type { TensorSum } from '../tensor/expression.js';
 import { sumOf, type Viewer, viewerOf } from './display.js';
 import { componentTable } from './display-symbols.js';
+import { branchLines, constraintTensorLines, spinLines } from './summary-constrained.js';
 import { dividedText, unicodeTensorTerms, unicodeTerms } from './unicode.js';
 
 export interface SummaryOptions {
@@ -80,6 +81,9 @@ export function summary(d: Derivation, options: SummaryOptions): string {
       [...viewer.replaced].map(([name, sum]) => `${unicodeName(name)} = ${unicodeTerms(sum).join(' ')}`),
     );
   section('Friedmann form', friedmannLines(d, viewer));
+  section('Constraints by multipliers', constraintTensorLines(d, viewer, wrapped));
+  section('Branches of the constraints', branchLines(d, wrapped));
+  section('Matter with spin', spinLines(d, viewer, wrapped));
   section('Metric analogue', analogueLines(d, viewer));
   section('Further components of the field equations', constraintLines(d, viewer));
   section('Covariant field equations of gravity', covariantLines(d, viewer));

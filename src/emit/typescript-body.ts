@@ -25,7 +25,7 @@ export interface Body {
 /** Names that the emitted module gives to its own things; locals keep clear of them. */
 const OWN = (
   'couplings jets theory geometry variables parameters sources lagrangian equations rhoT pT wT g4 kinetic current ' +
-  'potential curvatureObstruction Couplings Jets Equations Kinetic Current'
+  'potential curvatureObstruction rhoSpin pSpin connection Connection Couplings Jets Equations Kinetic Current'
 ).split(' ');
 const WIDTH = 110;
 

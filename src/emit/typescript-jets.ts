@@ -8,7 +8,7 @@ export type JetOrders = ReadonlyMap<string, number>;
 
 export function jetOrders(d: Derivation): JetOrders {
   const expressions = expressionsOf(d);
-  return new Map(d.geometry.fields.map(({ name }) => [name, Math.max(0, ...expressions.map((p) => orderIn(p, name)))]));
+  return new Map(d.fields.map(({ name }) => [name, Math.max(0, ...expressions.map((p) => orderIn(p, name)))]));
 }
 
 const LABELS = ['value', 'first', 'second', 'third'];

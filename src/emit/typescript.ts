@@ -5,7 +5,7 @@
 import { select } from '../algebra/collect.js';
 import type { Fraction } from '../algebra/fraction.js';
 import type { Poly } from '../algebra/poly.js';
-import type { BiScalarForm, Derivation, FriedmannForm } from '../derivation.js';
+import type { BiScalarForm, Derivation, FriedmannForm, SpinElimination } from '../derivation.js';
 import { commentText, propertyKey, stringLiteral } from './identifiers.js';
 import { dimensionsIn, dimensionsOf, modelParameters, type Parameter } from './parameters.js';
 import { planSize } from './shared-subexpressions.js';
@@ -26,7 +26,7 @@ interface Writer {
  * The module's text, ending in a newline. The same derivation gives the same text.
  * Exports `theory`, `geometry`, `variables`, `parameters`, `sources`; the interfaces `Couplings` and `Jets`; the functions
  * `lagrangian` and `equations` and, where the derivation has them, `rhoT`, `pT`, `wT`, `g4`, `kinetic`, `current`,
- * `potential`, `curvatureObstruction`. Every function takes (couplings, jets).
+ * `potential`, `curvatureObstruction`, `connection`, `rhoSpin`, `pSpin`. Every function takes (couplings, jets).
  */
 export function typescriptModule(d: Derivation): string {
   const dimensions = dimensionsOf(d);
@@ -43,6 +43,7 @@ export function typescriptModule(d: Derivation): string {
     lagrangian(writer),
     equations(writer),
     ...(d.friedmann ? friedmann(writer, d.friedmann) : []),
+    ...(typeof d.spin?.elimination === 'object' ? spin(writer, d.spin.elimination) : []),
     ...(d.scalarTensor.form === 'bi-scalar' ? scalarTensor(writer, d.scalarTensor) : []),
   ];
   return `${blocks.join('\n\n')}\n`;
@@ -105,7 +106,7 @@ function couplings({ parameters }: Writer): string {
 }
 
 function jets(d: Derivation, orders: JetOrders): string {
-  const members = d.geometry.fields.flatMap(({ name, meaning, dimension }) => [
+  const members = d.fields.flatMap(({ name, meaning, dimension }) => [
     doc([`${meaning} and its time derivatives; ${powerText(dimension)}, one more for each derivative`], '  '),
     `  readonly ${propertyKey(name)}: ${tupleType(orders.get(name) ?? 0)};`,
   ]);
@@ -237,6 +238,33 @@ const equationOfState = (w: Writer, { numerator, denominator }: Fraction): strin
     ],
     outputs: [{ numerator, denominator }],
   });
+
+/** What spin adds, and the connection that it makes. */
+function spin(w: Writer, { solution, rho, p }: SpinElimination): string[] {
+  const one = (name: string, text: string, { numerator, denominator }: Fraction) =>
+    writeFunction(w.derivation, {
+      name,
+      type: 'number',
+      doc: [`${text}, the connection eliminated by its equations.`],
+      outputs: [{ numerator, denominator }],
+    });
+  const members = [...solution.keys()].flatMap((q) => [
+    doc([`value of ${q} on the equations of the connection`], '  '),
+    `  readonly ${propertyKey(q)}: number;`,
+  ]);
+  const type = `${doc(['The connection that the metric and the spin make.'])}\nexport interface Connection {\n${members.join('\n')}\n}`;
+  const values = writeFunction(w.derivation, {
+    name: 'connection',
+    type: 'Connection',
+    doc: ['The solution of the equations of the connection, which are linear in it.'],
+    outputs: [...solution].map(([key, f]): Output => ({ key, ...f })),
+  });
+  return [
+    `${type}\n\n${values}`,
+    one('rhoSpin', 'What spin adds to the energy density; mass dimension 4', rho),
+    ...(p ? [one('pSpin', 'What spin adds to the pressure; mass dimension 4', p)] : []),
+  ];
+}
 
 const BACKGROUND = 'Equivalent to the torsion theory on the homogeneous, isotropic background';
 

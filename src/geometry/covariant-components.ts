@@ -6,7 +6,7 @@ import { partial, timeDerivative } from '../algebra/calculus.js';
 import { moveTo, substitute } from '../algebra/collect.js';
 import { remember } from '../algebra/memo.js';
 import { multiply, negate, type Poly, power, sum } from '../algebra/poly.js';
-import type { Ring } from '../algebra/ring.js';
+import { constantsOf, makeRing, type Ring } from '../algebra/ring.js';
 import { packIndices, type SparseTensor, TensorBuilder, unpackIndices } from '../tensor/components.js';
 import { contractOpen, type FrameMetric, namesOf } from '../tensor/contraction.js';
 import type { TensorSum, TensorSymbol } from '../tensor/expression.js';
@@ -16,6 +16,13 @@ import { type CovariantEquations, differentiated, isNabla } from '../tensor/vari
 import { type Connection, curvatureTensor, torsionFreeConnection } from './cartan.js';
 import { maskOf } from './forms.js';
 import type { Geometry } from './geometry.js';
+
+/** Jets of a geometry and every constant of a ring. */
+export function ringWith(geometry: Geometry, ring: Ring): Ring {
+  const known = new Set(geometry.ring.generators.map((g) => g.name));
+  const constants = ring.generators.filter((g) => g.kind === 'constant' && !known.has(g.name)).map((g) => g.name);
+  return makeRing([...geometry.ring.generators, ...constantsOf(constants)]);
+}
 
 /** Evaluates index expressions of one geometry in a ring that holds its jets and the couplings. */
 export interface ComponentEvaluator {

@@ -1,18 +1,19 @@
 /**
  * The `matter` list of a theory file: dust, radiation, { vacuum: X }, { fluid: name, w: "1/5" }. A vacuum density that
- * is not declared is declared here, with mass dimension 4.
+ * is not declared is declared here, with mass dimension 4. Matter with spin is left to read-spins.ts.
  */
 import { type Rational, rational } from '../algebra/rational.js';
 import { type Diagnostic, errorAt } from './diagnostics.js';
 import { MAX_DIGITS } from './limits.js';
 import { isNameText, nameFault } from './names.js';
+import { isSpin } from './read-spins.js';
 import { type Declarations, declare, type MatterDeclaration } from './read-symbols.js';
 import { nearest } from './suggest.js';
 import { asList, asRecord, asText } from './yaml-shape.js';
 import type { YamlNode, YamlText } from './yaml-source.js';
 
-const KNOWN = ['dust', 'radiation', 'vacuum', 'fluid'];
-const FORMS = 'matter is dust, radiation, { vacuum: X } or { fluid: name, w: "1/5" }';
+const KNOWN = ['dust', 'radiation', 'vacuum', 'fluid', 'spin'];
+const FORMS = 'matter is dust, radiation, { vacuum: X }, { fluid: name, w: "1/5" } or { spin: sigma, axial: q }';
 
 /** The components in the order of the file; faults are added to the problems. */
 export function readMatter(
@@ -23,6 +24,7 @@ export function readMatter(
   const components: MatterDeclaration[] = [];
   const densities = new Set<string>();
   for (const item of asList(node, 'matter', problems)?.items ?? []) {
+    if (isSpin(item)) continue;
     const component = readComponent(item, declarations, problems);
     if (component === undefined) continue;
     if (densities.has(component.density)) {

@@ -10,8 +10,10 @@ import { MAX_DIAGNOSTICS, MAX_TEXT } from './limits.js';
 import { reservedMeaning } from './names.js';
 import { type Passage, plainPassage } from './passage.js';
 import { readAssumptions } from './read-assumptions.js';
+import { readConstraints } from './read-constraints.js';
 import { readConventions } from './read-conventions.js';
 import { readMatter } from './read-matter.js';
+import { couplingTerms, declareSpins, internalSpin, readSpins } from './read-spins.js';
 import {
   type Declarations,
   declareUnits,
@@ -31,7 +33,18 @@ import { passageOf } from './yaml-text.js';
 
 const KEYS = {
   required: ['untwist', 'name', 'lagrangian'],
-  optional: ['conventions', 'constants', 'scales', 'impose', 'assume', 'matter', 'geometry', 'symbols', 'tensors'],
+  optional: [
+    'conventions',
+    'constants',
+    'scales',
+    'impose',
+    'assume',
+    'constrain',
+    'matter',
+    'geometry',
+    'symbols',
+    'tensors',
+  ],
 };
 const DEFAULT_GEOMETRY = 'flrw';
 const MAX_TITLE = 200;
@@ -65,6 +78,7 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
   const { units } = conventions;
   read('conventions', (node) => declareUnits(units, node.origin, declarations, problems), undefined);
   const components = read('matter', (node) => readMatter(node, declarations, problems), []);
+  const spinItems = declareSpins(values.get('matter'), declarations, problems);
   const tensors = read('tensors', (node) => readTensors(node, declarations, problems), []);
   refuseUnitDensities(values.get('matter'), components, units, problems);
   const geometry = read('geometry', (node) => readGeometryName(node, problems), DEFAULT_GEOMETRY);
@@ -78,9 +92,17 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
   const typed = read('lagrangian', (node) => readTerms(node, named, tensors, keep, warnings), []);
   const typedRelations = readRelations(values.get('impose'), options.set ?? [], named, matter, keep);
   const assumptions = readAssumptions(values.get('assume'), options.assume ?? [], named, matter, units, keep);
+  const typedConstraints = readConstraints(values.get('constrain'), named, tensors, keep);
+  const typedSpins = readSpins(spinItems, named, tensors, keep);
   if (problems.length > 0) throw new InputError(limited(inOrder(problems)));
-  warnings.push(...unusedWarnings(declarations, units, tensors, typed, typedRelations));
+  const everywhere = [...typed, ...typedConstraints.flatMap((c) => c.terms), ...typedSpins.flatMap(couplingTerms)];
+  warnings.push(...unusedWarnings(declarations, units, tensors, everywhere, typedRelations));
   const { signature } = conventions;
+  const constraints = typedConstraints.map((c) => ({
+    ...c,
+    terms: translate(c.terms, conventions, internalWith(signature)),
+  }));
+  const spins = typedSpins.map((s) => internalSpin(s, conventions));
   const lagrangian = translate(typed, conventions, internalWith(signature));
   if (lagrangian.length === 0) {
     const place = values.get('lagrangian')!.origin;
@@ -89,7 +111,10 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
     ]);
   }
   const relations = typedRelations.map((relation) => relationToMass(relation, units));
-  const used = usedNames(lagrangian, [...relations, ...assumptions]);
+  const used = usedNames(
+    [...lagrangian, ...constraints.flatMap((c) => c.terms), ...spins.flatMap(couplingTerms)],
+    [...relations, ...assumptions],
+  );
   const isUnit = ({ name: n }: TheorySymbol): boolean => unitNames(units).includes(n) && !used.has(n);
   return {
     name,
@@ -103,6 +128,8 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
     relations,
     ...(assumptions.length > 0 ? { assumptions } : {}),
     matter,
+    ...(constraints.length > 0 ? { constraints } : {}),
+    ...(spins.length > 0 ? { spins } : {}),
     geometry,
     warnings: inOrder(warnings),
   };
@@ -244,7 +271,7 @@ function unusedWarnings(
   // M defines the Friedmann form whether the Lagrangian contains it or not.
   const needless = new Set([PLANCK_MASS, ...unitNames(units)]);
   const unused = [...declarations.values()].filter(
-    ({ name, role }) => !used.has(name) && role !== 'vacuum' && !needless.has(name),
+    ({ name, role }) => !used.has(name) && role !== 'vacuum' && role !== 'spin' && !needless.has(name),
   );
   const heads = new Set(lagrangian.flatMap((t) => t.factors.map((f) => f.head)));
   const idle = tensors.flatMap(({ name, origin }) =>

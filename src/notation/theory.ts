@@ -4,7 +4,7 @@
  * indices obey Einstein's rule. Imports only exact rationals and diagnostics.
  */
 import type { Rational } from '../algebra/rational.js';
-import type { Conventions } from './conventions.js';
+import type { Conventions } from './convention-choices.js';
 import type { Diagnostic } from './diagnostics.js';
 
 /** A Laurent monomial in named symbols: coefficient · Π name^exponent (exponents are non-zero integers). */
@@ -60,8 +60,8 @@ export interface LagrangianTerm {
   readonly factors: readonly TensorFactor[];
 }
 
-/** What a symbol stands for: declared constant, declared scale, or the energy density of a vacuum fluid. */
-export type SymbolRole = 'constant' | 'scale' | 'vacuum';
+/** What a symbol stands for: declared constant, declared scale, energy density of a vacuum fluid, density of spin. */
+export type SymbolRole = 'constant' | 'scale' | 'vacuum' | 'spin';
 
 export interface TheorySymbol {
   readonly name: string;
@@ -106,6 +106,34 @@ export interface AssumedInequality {
   readonly origin: Origin;
 }
 
+/** A tensor expression that a multiplier sets to zero. */
+export interface TensorConstraint {
+  /** As the user typed it, white space folded. */
+  readonly text: string;
+  readonly terms: readonly LagrangianTerm[];
+  /** Free indices in the order of the first term's slots. */
+  readonly free: readonly IndexSlot[];
+  readonly origin: Origin;
+}
+
+/**
+ * Matter that couples to the connection. Its density dilutes with the spatial volume; `name` is its value at unit volume,
+ * or the tensor whose components are such densities.
+ */
+export type SpinSource =
+  /** Adds coupling · density · (the axial torsion along the matter's rest frame), which is psi on an isotropic geometry. */
+  | { readonly kind: 'axial'; readonly name: string; readonly coupling: ScalarSum; readonly origin: Origin }
+  /** Adds a scalar that is linear in the tensor. */
+  | {
+      readonly kind: 'tensor';
+      readonly name: string;
+      readonly tensor: DeclaredTensor;
+      readonly coupling: readonly LagrangianTerm[];
+      readonly origin: Origin;
+    }
+  /** Randomly oriented spins of density s, averaged into an effective fluid. */
+  | { readonly kind: 'weyssenhoff'; readonly name: string; readonly origin: Origin };
+
 /** A place in a text the user wrote; offsets count UTF-16 units from its start. */
 export interface Origin {
   readonly file: string;
@@ -134,6 +162,10 @@ export interface Theory {
   /** In order: those of the file, then those of --assume; absent when there are none. */
   readonly assumptions?: readonly AssumedInequality[];
   readonly matter: readonly MatterComponent[];
+  /** In order; absent when there are none. */
+  readonly constraints?: readonly TensorConstraint[];
+  /** In order; absent when there are none. */
+  readonly spins?: readonly SpinSource[];
   /** Name of a file in rules/geometry, without its ending. */
   readonly geometry: string;
   readonly warnings: readonly Diagnostic[];

@@ -54,7 +54,7 @@ describe('readMatter', () => {
         'test.yaml:4:30: error: unknown matter ghosts',
         '    matter: [dusk, { vacum: X }, ghosts]',
         '                                 ^^^^^^',
-        'hint: matter is dust, radiation, { vacuum: X } or { fluid: name, w: "1/5" }',
+        'hint: matter is dust, radiation, { vacuum: X }, { fluid: name, w: "1/5" } or { spin: sigma, axial: q }',
       ].join('\n'),
     );
   });
