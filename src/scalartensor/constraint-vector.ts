@@ -5,7 +5,17 @@
  * metric geometry again: it must be the Lagrangian that it came from, term by term.
  */
 import { involves, moveTo, substitute } from '../algebra/collect.js';
-import { equals, generator, leadingCoefficient, multiply, type Poly, product, scale, sum } from '../algebra/poly.js';
+import {
+  equals,
+  generator,
+  leadingCoefficient,
+  multiply,
+  type Poly,
+  power,
+  product,
+  scale,
+  sum,
+} from '../algebra/poly.js';
 import { divideRational, ONE, type Rational } from '../algebra/rational.js';
 import { constantsOf, jetName, makeRing, type Ring } from '../algebra/ring.js';
 import type { Comoving } from '../geometry/comoving.js';
@@ -41,8 +51,8 @@ export type ComponentLagrangian = readonly { readonly coefficient: Poly; readonl
 export interface ConstraintVectorForm {
   /** What each component of torsion and curvature becomes, in the ring of `form`. */
   readonly components: ReadonlyMap<string, Poly>;
-  /** The Lagrangian in component symbols, in a ring of these and the couplings. */
-  readonly inComponents: Poly;
+  /** The Lagrangian in component symbols, in a ring of these and the couplings; where it is known in them. */
+  readonly inComponents: Poly | undefined;
   /** The same with the components written out. */
   readonly form: VectorForm;
 }
@@ -85,9 +95,9 @@ function readingOf(roles: VectorRoles, scalars: readonly string[], constants: re
     [curvature, scale(product(wide, [g(SPATIAL_CURVATURE), g(a, 2)]), divideRational(ONE, perRound))],
     ...scalars.map((q): [string, Poly] => [jetName(q, 1), product(wide, [g(rateAlong(q)), g(lapse)])]),
   ]);
-  // Scalars contain no odd powers of a radical, and one that is nowhere needs no image.
-  const plain = makeRing(own.generators.filter((g) => g.kind !== 'radical'));
   const read = (p: Poly): Poly | undefined => {
+    // Scalars contain no odd powers of a radical, and one that is nowhere needs no image.
+    const plain = makeRing(p.ring.generators.filter((g) => g.kind !== 'radical'));
     const known = plain.generators.every(
       ({ name }) => images.has(name) || wide.position.has(name) || !involves(p, name),
     );
@@ -136,16 +146,18 @@ export const joined = (lagrangian: ComponentLagrangian, into: Ring): Poly =>
 /**
  * The constraint-vector form of a gravitational Lagrangian.
  * @param gravity a³N L, matter left out, before total derivatives are dropped.
- * @param lagrangian the same in component symbols: the form is made from it and compared with `gravity`.
- * @throws Error when the form has another value on the metric geometry than the Lagrangian: the program would be wrong.
+ * @param lagrangian the same in component symbols, where it is known: a second route to the form.
+ * @throws Error when the two routes differ, or when the form has another value on the metric geometry than the Lagrangian:
+ * the program would be wrong.
  */
 export function constraintVector(
   gravity: Poly,
-  lagrangian: ComponentLagrangian,
+  lagrangian: ComponentLagrangian | undefined,
   roles: VectorRoles,
   scalars: readonly string[],
 ): ConstraintVectorOutcome {
-  const reading = readingOf(roles, scalars, constantsIn(gravity.ring, roles.curvature));
+  const constants = constantsIn(gravity.ring, roles.curvature);
+  const reading = readingOf(roles, scalars, constants);
   if (!reading)
     return {
       found: false,
@@ -158,11 +170,19 @@ export function constraintVector(
     if (!image) return { found: false, reason: `the component ${name} is no scalar of n`, offending: value };
     components.set(name, image);
   }
-  const inComponents = joined(lagrangian, componentRing(roles, constantsIn(gravity.ring, roles.curvature)));
-  const images = new Map([...components].map(([name, p]) => [componentName(name), p]));
-  const form: VectorForm = { value: asFraction(substitute(inComponents, images, reading.ring)), scalars };
-  const there = asPoly(onBackground(form, backgroundOf(roles, gravity.ring)));
+  const background = backgroundOf(roles, gravity.ring);
+  const whole = reading.read(multiply(gravity, power(background.volume, -1)));
+  if (!whole) return { found: false, reason: 'the Lagrangian contains what is no scalar of n', offending: gravity };
+  const form: VectorForm = { value: asFraction(whole), scalars };
+  const there = asPoly(onBackground(form, background));
   if (!there || !equals(there, gravity))
     throw new Error('the constraint-vector form has another value on the metric geometry than the Lagrangian');
+  const inComponents = lagrangian && joined(lagrangian, componentRing(roles, constants));
+  if (inComponents && !equals(inVector(inComponents, components, reading.ring), whole))
+    throw new Error('the components give another constraint-vector form than the reduced Lagrangian');
   return { found: true, vector: { components, inComponents, form } };
 }
+
+/** A Lagrangian in component symbols with the components written out. */
+export const inVector = (inComponents: Poly, components: ReadonlyMap<string, Poly>, ring: Ring): Poly =>
+  substitute(inComponents, new Map([...components].map(([name, p]) => [componentName(name), moveTo(p, ring)])), ring);
