@@ -5,9 +5,11 @@
 import { remember } from '../algebra/memo.js';
 import type { Derivation } from '../derivation.js';
 import { analogueSection, checksSection, couplingsSection } from './latex-analogue.js';
+import { canonicalSection } from './latex-canonical.js';
 import { constraintsSection, spinSection } from './latex-constrained.js';
 import { covariantSection } from './latex-covariant.js';
 import { type LatexOptions, type Passage, type Section, writerOf } from './latex-display.js';
+import { framesSection, scalarsSection } from './latex-frames.js';
 import { equationsSection, friedmannSection, reductionSection } from './latex-results.js';
 import { commentText, escapeText, proseTex } from './latex-text.js';
 import { geometrySection, theorySection } from './latex-theory.js';
@@ -41,6 +43,9 @@ function writeSections(derivation: Derivation, options: LatexOptions): readonly 
     constraintsSection(writer),
     spinSection(writer),
     analogueSection(writer),
+    scalarsSection(writer),
+    framesSection(writer),
+    canonicalSection(writer),
     covariantSection(writer),
     couplingsSection(writer),
     checksSection(writer),
@@ -56,6 +61,8 @@ const FOR_MANUSCRIPTS: ReadonlySet<string> = new Set([
   'constraints',
   'spin',
   'scalar-tensor',
+  'frames',
+  'canonical',
   'covariant',
 ]);
 

@@ -9,6 +9,7 @@ import { lagrangianLines, unicodeName } from '../notation/print.js';
 import type { TensorSum } from '../tensor/expression.js';
 import { sumOf, type Viewer, viewerOf } from './display.js';
 import { componentTable } from './display-symbols.js';
+import { scalarFieldSections } from './scalar-fields-summary.js';
 import { branchLines, constraintTensorLines, spinLines } from './summary-constrained.js';
 import { dividedText, unicodeTensorTerms, unicodeTerms } from './unicode.js';
 
@@ -85,6 +86,11 @@ export function summary(d: Derivation, options: SummaryOptions): string {
   section('Branches of the constraints', branchLines(d, wrapped));
   section('Matter with spin', spinLines(d, viewer, wrapped));
   section('Metric analogue', analogueLines(d, viewer));
+  for (const { title, lines } of scalarFieldSections(d))
+    section(
+      title,
+      lines.flatMap(([left, terms]) => wrapped(left, terms)),
+    );
   section('Further components of the field equations', constraintLines(d, viewer));
   section('Covariant field equations of gravity', covariantLines(d, viewer));
   section('In factors', factoredLines(options.factored));
