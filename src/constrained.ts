@@ -4,11 +4,12 @@
  * from those of the theory with its multipliers by the chain rule.
  */
 import { eulerLagrange, partial, timeDerivative } from './algebra/calculus.js';
-import { involves, moveTo, substitute } from './algebra/collect.js';
+import { involves, moveTo, substitute, symbolsOf } from './algebra/collect.js';
 import { add, equals, generator, isZero, multiply, type Poly, subtract, sum, zero } from './algebra/poly.js';
 import { jetName, jetsOf, makeRing, type Ring } from './algebra/ring.js';
+import { ANY, type Knowledge, NEGATIVE, POSITIVE, signOf, VANISHING } from './algebra/signs.js';
 import type { BiScalarForm, Constrained, ConstrainedBranch, ScalarTensorForm } from './derivation.js';
-import { type Branch, branchesOf, branchName, onBranch } from './mechanics/branches.js';
+import { type Branch, branchesOf, branchName, type Condition, onBranch } from './mechanics/branches.js';
 import { friedmannForm } from './mechanics/friedmann.js';
 import { reduceRoots } from './mechanics/substitution.js';
 import { dropTotalDerivatives } from './mechanics/total-derivatives.js';
@@ -25,13 +26,14 @@ type Checker = (name: string, detail: string, holds: boolean) => void;
 export function constrainedTheory(
   setting: Setting,
   equations: ReadonlyMap<string, Poly>,
+  knowledge: Knowledge | undefined,
   check: Checker,
 ): { readonly constrained: Constrained; readonly scalarTensor: ScalarTensorForm } {
   const { geometry, theory, constrained: tensors, fix } = setting;
   const multipliers = tensors.flatMap((t) => t.multipliers);
   const ring = branchRing(setting);
   const solvable = geometry.fields.map((f) => f.name).filter((q) => q !== geometry.lapse && !geometry.rates.has(q));
-  const { branches, complete } = branchesOf(
+  const { branches: all, complete } = branchesOf(
     multipliers.map((m) => moveTo(fix(moveTo(m.value, setting.ring)), ring)),
     {
       unknowns: solvable,
@@ -40,13 +42,41 @@ export function constrainedTheory(
       scales: theory.symbols.filter((s) => s.role === 'scale').map((s) => s.name),
     },
   );
-  const found = branches.map((b) => constrainedBranch(setting, multipliers, equations, b, check));
+  const judged = all.map((branch) => judge(branch, knowledge));
+  const excluded = judged.flatMap(({ branch, used, isPossible }) =>
+    isPossible ? [] : [{ name: branchName(branch), used }],
+  );
+  const found = judged
+    .filter((j) => j.isPossible)
+    .map(({ branch, used }) => constrainedBranch(setting, multipliers, equations, branch, used, check));
   if (found.length > 0)
     check('branches of the constraints', 'every solution was put into the constraints that it solves', true);
   return {
-    constrained: { tensors, branches: found, complete },
-    scalarTensor: complete ? commonForm(setting, found) : none('the constraints have too many branches to follow'),
+    constrained: { tensors, branches: found, complete, excluded },
+    scalarTensor: complete
+      ? commonForm(setting, found, knowledge)
+      : none('the constraints have too many branches to follow'),
   };
+}
+
+/** Conditions of a branch under what is assumed: those that hold are dropped, one that cannot hold rules the branch out. */
+function judge(
+  branch: Branch,
+  knowledge: Knowledge | undefined,
+): { readonly branch: Branch; readonly used: readonly string[]; readonly isPossible: boolean } {
+  if (!knowledge) return { branch, used: [], isPossible: true };
+  const used: string[] = [];
+  const open: Condition[] = [];
+  for (const condition of branch.conditions) {
+    const { value, relation } = condition;
+    const known = symbolsOf(value).every((name) => knowledge.ring.position.has(name));
+    const verdict = known ? signOf(moveTo(value, knowledge.ring), knowledge) : { signs: ANY, used: [] };
+    const allowed = relation === '>' ? POSITIVE : relation === '=' ? VANISHING : POSITIVE | NEGATIVE;
+    if ((verdict.signs & allowed) === 0) return { branch, used: verdict.used, isPossible: false };
+    if ((verdict.signs & ~allowed) === 0 && relation !== '=') used.push(...verdict.used);
+    else open.push(condition);
+  }
+  return { branch: { ...branch, conditions: open }, used: [...new Set(used)], isPossible: true };
 }
 
 function branchRing({ ring, fields }: Setting): Ring {
@@ -59,6 +89,7 @@ function constrainedBranch(
   multipliers: readonly Multiplier[],
   equations: ReadonlyMap<string, Poly>,
   branch: Branch,
+  used: readonly string[],
   check: Checker,
 ): ConstrainedBranch {
   const { geometry, fix, fields } = setting;
@@ -99,6 +130,7 @@ function constrainedBranch(
     further: new Map([...ofSolved].filter(isNew)),
     friedmann: branchFriedmann(setting, branch, withSpin),
     scalarTensor: branchForm(setting, branch, kept, movable, gravity, reduced),
+    used,
   };
 }
 
@@ -204,7 +236,11 @@ function branchForm(
 }
 
 /** The form that all branches share, when together they cover every value of k. */
-function commonForm({ ring, geometry }: Setting, branches: readonly ConstrainedBranch[]): ScalarTensorForm {
+function commonForm(
+  { ring, geometry }: Setting,
+  branches: readonly ConstrainedBranch[],
+  knowledge: Knowledge | undefined,
+): ScalarTensorForm {
   const [first] = branches;
   if (!first) return none('the constraints have no solution');
   const forms = branches.map((b) => b.scalarTensor);
@@ -216,7 +252,7 @@ function commonForm({ ring, geometry }: Setting, branches: readonly ConstrainedB
     return none('the branches of the constraints have different forms');
   if (form.form === 'none') return form;
   const everywhere = shared.every((f) => f.form !== 'none' && f.validFor === 'every k');
-  return everywhere && coversCurvature(branches, geometry.isotropic!.curvature)
+  return everywhere && coversCurvature(branches, geometry.isotropic!.curvature, knowledge)
     ? form
     : branches.length === 1
       ? form
@@ -247,9 +283,12 @@ const sameFunctions = (a: BiScalarForm, b: BiScalarForm): boolean =>
   [...a.kinetic].every(([key, p]) => equals(p, b.kinetic.get(key)!)) &&
   [...a.current].every(([key, p]) => equals(p, b.current.get(key)!));
 
-/** Whether the branches leave out no sign of k. */
-function coversCurvature(branches: readonly ConstrainedBranch[], k: string): boolean {
-  const signs = new Set(
+const SIGNS = { '-': NEGATIVE, '0': VANISHING, '+': POSITIVE } as const;
+
+/** Whether the branches leave out no sign of k that the assumptions allow. */
+function coversCurvature(branches: readonly ConstrainedBranch[], k: string, knowledge: Knowledge | undefined): boolean {
+  const possible = knowledge ? signOf(generator(knowledge.ring, k), knowledge).signs : ANY;
+  const covered = new Set(
     branches.flatMap(({ conditions, values, name: _ }) => {
       const about = conditions.filter((c) => involves(c.value, k));
       if (about.length === 0 && !values.has(k)) return ['-', '0', '+'];
@@ -267,5 +306,5 @@ function coversCurvature(branches: readonly ConstrainedBranch[], k: string): boo
       return positive ? ['+'] : negative ? ['-'] : [];
     }),
   );
-  return signs.size === 3;
+  return (['-', '0', '+'] as const).every((sign) => covered.has(sign) || (possible & SIGNS[sign]) === 0);
 }

@@ -124,6 +124,8 @@ export interface ConstrainedBranch extends Branch {
   readonly further: ReadonlyMap<string, Poly>;
   readonly friedmann: Pick<FriedmannForm, 'rhoT' | 'pT'> | undefined;
   readonly scalarTensor: ScalarTensorForm;
+  /** Assumptions that made conditions of this branch true, which are no longer listed. */
+  readonly used: readonly string[];
 }
 
 /** Constraints by multipliers and what follows from them. */
@@ -132,6 +134,8 @@ export interface Constrained {
   readonly branches: readonly ConstrainedBranch[];
   /** Whether every branch was found; otherwise the search was given up at its limit. */
   readonly complete: boolean;
+  /** Branches that the assumptions rule out, and which of them. */
+  readonly excluded: readonly { readonly name: string; readonly used: readonly string[] }[];
 }
 
 /** The connection eliminated in favour of spin, where it is algebraic. */

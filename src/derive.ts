@@ -73,7 +73,7 @@ export function derive(given: Theory, onStep: (what: string) => void = () => {})
 
   const friedmann = friedmannOf(geometry, ring, coupledEquations, couple, check);
   onStep('looking for the scalar-tensor form');
-  const branches = setting.constrained.length > 0 ? constrainedTheory(setting, equations, check) : undefined;
+  const branches = setting.constrained.length > 0 ? constrainedTheory(setting, equations, knowledge, check) : undefined;
   const scalarTensor =
     branches?.scalarTensor ?? scalarTensorOf(geometry, ring, { reduced, equations: gravityEquations }, check);
   const parameters = geometry.parameters.map((p) => p.name);

@@ -39,6 +39,7 @@ const branchObject = (b: ConstrainedBranch, all: readonly string[], formObject: 
   values: texts(b.values),
   roots: Object.fromEntries(b.roots.map((r) => [r.name, infix(r.radicand)])),
   conditions: b.conditions.map(conditionText),
+  ...(b.used.length > 0 ? { assumed: b.used } : {}),
   remaining: b.remaining.map((i) => all[i]!),
   lagrangian: infix(b.lagrangian),
   reduced: infix(b.reduced),
@@ -98,6 +99,7 @@ export function constrainedObject(d: Derivation, formObject: FormObject): Record
           multipliers: constrained.tensors.map(constraintObject),
           branches: constrained.branches.map((b) => branchObject(b, names, formObject)),
           branchesComplete: constrained.complete,
+          ...(constrained.excluded.length > 0 ? { branchesExcluded: constrained.excluded } : {}),
         }
       : {}),
     ...spinObject(d),

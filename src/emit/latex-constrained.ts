@@ -83,6 +83,7 @@ function branchPassages({ derivation, passage, latex }: Writer, branch: Constrai
   const when = where.length > 0 ? [prose`This needs ${enumerated(where)}.`] : [];
   const signs = branch.roots.length > 0 ? [prose`Either sign of a root will do.`] : [];
   const left = branch.remaining.length;
+  const used = branch.used.length > 0 ? [prose`Assumed was ${enumerated(branch.used)}.`] : [];
   const open =
     left > 0
       ? [prose`The number of constraints that are not solved here is ${String(left)}; their multipliers stay.`]
@@ -115,7 +116,7 @@ function branchPassages({ derivation, passage, latex }: Writer, branch: Constrai
     passage(
       id,
       `Branch ${index + 1}`,
-      { text: [prose`The constraints are solved by`], remarks: [...when, ...signs, ...open] },
+      { text: [prose`The constraints are solved by`], remarks: [...when, ...used, ...signs, ...open] },
       rowDisplays(solved.length > 0 ? solved : [{ left: '0', terms: [] }]),
     ),
     lagrangian,

@@ -24,8 +24,9 @@ export function branchLines(d: Derivation, wrap: Wrap): string[] {
   const { constrained } = d;
   if (!constrained) return [];
   const blocks = constrained.branches.flatMap((b) => oneBranch(d, b, wrap));
-  if (constrained.branches.length === 0) return ['the constraints have no solution'];
-  return constrained.complete ? blocks : [...blocks, 'there are more branches than were followed'];
+  const excluded = constrained.excluded.map(({ name, used }) => `ruled out by ${used.join(', ')}: ${name}`);
+  if (constrained.branches.length === 0 && excluded.length === 0) return ['the constraints have no solution'];
+  return [...blocks, ...excluded, ...(constrained.complete ? [] : ['there are more branches than were followed'])];
 }
 
 function oneBranch(d: Derivation, b: ConstrainedBranch, wrap: Wrap): string[] {
@@ -39,8 +40,9 @@ function oneBranch(d: Derivation, b: ConstrainedBranch, wrap: Wrap): string[] {
   const roots = b.roots.length > 0 ? '; either sign of a root' : '';
   const free =
     b.undetermined.length > 0 ? [`  not fixed by the equations: ${b.undetermined.map(unicodeName).join(', ')}`] : [];
+  const used = b.used.length > 0 ? `; by ${b.used.join(', ')}` : '';
   return [
-    `${b.name}${roots}`,
+    `${b.name}${roots}${used}`,
     ...kept,
     ...wrap('  L = ', termsOf(viewer, b.reduced)),
     ...equations,
