@@ -22,6 +22,9 @@ export interface Wanted {
   readonly geometry?: GeometryName;
   readonly impose?: readonly string[];
   readonly matter?: readonly string[];
+  readonly constrain?: readonly string[];
+  /** Lines `name: { … }`. */
+  readonly tensors?: readonly string[];
 }
 
 export interface DerivedJson {
@@ -34,6 +37,41 @@ export interface DerivedJson {
     | ({ readonly form: 'bi-scalar'; readonly validFor: 'every k' | 'k = 0' } & BiScalarTexts)
     | { readonly form: 'none'; readonly reason: string };
   readonly checks: readonly { readonly name: string; readonly holds: boolean }[];
+  /** With constraints. */
+  readonly multipliers?: readonly MultiplierJson[];
+  readonly branches?: readonly BranchJson[];
+  /** With spin. */
+  readonly spin?: SpinJson;
+}
+
+export interface MultiplierJson {
+  readonly constraint: string;
+  readonly independent: number;
+  readonly invariant: number;
+  readonly fields: readonly { readonly name: string; readonly vanishes: string }[];
+}
+
+export interface BranchJson {
+  readonly name: string;
+  readonly solution: Readonly<Record<string, string>>;
+  readonly conditions: readonly string[];
+  readonly remaining: readonly string[];
+  readonly undetermined: readonly string[];
+  readonly equations: Readonly<Record<string, string>>;
+  readonly friedmann: { readonly rho_T: string; readonly p_T: string };
+  readonly scalarTensor: DerivedJson['scalarTensor'];
+}
+
+export interface SpinJson {
+  readonly interaction: string;
+  readonly averages: Readonly<Record<string, { readonly rho: string; readonly p: string }>>;
+  readonly elimination?: {
+    readonly found: boolean;
+    readonly reason?: string;
+    readonly solution?: Readonly<Record<string, string>>;
+    readonly rho?: string;
+    readonly p?: string;
+  };
 }
 
 /** Text of the theory file. */
@@ -45,6 +83,8 @@ export function theoryText(wanted: Wanted): string {
   if (scales.length > 0) lines.push(`scales: { ${scales.join(', ')} }`);
   lines.push('lagrangian: |', ...wanted.lagrangian.split('\n').map((line) => `  ${line.trim()}`));
   if (wanted.impose !== undefined) lines.push(`impose: [${wanted.impose.map((r) => `"${r}"`).join(', ')}]`);
+  if (wanted.tensors !== undefined) lines.push('tensors:', ...wanted.tensors.map((line) => `  ${line}`));
+  if (wanted.constrain !== undefined) lines.push(`constrain: [${wanted.constrain.map((c) => `"${c}"`).join(', ')}]`);
   if (wanted.matter !== undefined) lines.push(`matter: [${wanted.matter.join(', ')}]`);
   if (wanted.geometry !== undefined) lines.push(`geometry: ${wanted.geometry}`);
   return `${lines.join('\n')}\n`;
