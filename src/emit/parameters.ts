@@ -6,6 +6,7 @@ import { symbolsOf } from '../algebra/collect.js';
 import { type Poly, termsOf } from '../algebra/poly.js';
 import type { Ring } from '../algebra/ring.js';
 import type { Derivation } from '../derivation.js';
+import { frameExpressions } from './code-frames.js';
 
 export interface Parameter {
   readonly name: string;
@@ -25,7 +26,8 @@ export function expressionsOf(d: Derivation): Poly[] {
   const spin = d.spin && typeof d.spin.elimination === 'object' ? d.spin.elimination : undefined;
   const fractions = spin ? [...spin.solution.values(), spin.rho, ...(spin.p ? [spin.p] : [])] : [];
   const ofSpin = fractions.flatMap((x) => [x.numerator, ...x.denominator.map((y) => y.base)]);
-  return [d.lagrangian, ...d.equations.values(), ...(f ? [f.rhoT, f.pT] : []), ...covariant, ...ofSpin];
+  const own = [d.lagrangian, ...d.equations.values(), ...(f ? [f.rhoT, f.pT] : [])];
+  return [...own, ...covariant, ...ofSpin, ...frameExpressions(d)];
 }
 
 const PLANCK_MASS = 'reduced Planck mass';

@@ -103,6 +103,33 @@ export function reasonsOf(sectionId: string, d: Derivation): Reasons {
           prose`A unit timelike vector ${math('n^{\\mu}')} in ${math('n^{\\mu} J_{\\mu} + \\lambda (n^{2} + 1)')} can be integrated out and leaves ${math('\\pm\\sqrt{-J^{2}}')}, a quadratic cuscuton in the simplest case, Phys. Rev. D 75 (2007) 083513.`,
         ],
       };
+    case 'scalars':
+      return {
+        allowed: [
+          prose`Assumptions are never used for rewriting, only to decide signs. A sign counts as decided when it is proved by the signs of the terms or by a combination of the assumptions with non-negative weights; otherwise the cases are stated.`,
+        ],
+        rule: [
+          prose`The transposition theorem for linear inequalities, monomials taken as unknowns. Curvature times a function of a scalar gives that scalar a kinetic term, so kinetic terms are judged in the Einstein frame.`,
+        ],
+      };
+    case 'frames':
+      return {
+        allowed: [
+          prose`A change of the metric by a positive function of the scalars is a change of variables. The new form was reduced with ${math('\\tilde{a} = \\Omega a')} and ${math('\\tilde{N} = \\Omega N')}; both reduced Lagrangians differ by a total derivative, at every spatial curvature.`,
+        ],
+        rule: [
+          prose`${math('R = \\Omega^{2} [ \\tilde{R} + 6 \\tilde{\\Box} \\ln\\Omega - 6 (\\tilde{\\partial} \\ln\\Omega)^{2} ]')} in four dimensions, Phys. Rev. D 81 (2010) 084044.`,
+        ],
+      };
+    case 'canonical':
+      return {
+        allowed: [
+          prose`An antiderivative is believed after it has been differentiated and the squares compared exactly. Functions in the new fields were expressed in the old ones again and agree.`,
+        ],
+        rule: [
+          prose`For a conformally coupled scalar the fields are those of Ann. Phys. 82 (1974) 535: a hyperbolic tangent on one side, a cotangent on the other.`,
+        ],
+      };
     case 'couplings':
       return {
         allowed: [

@@ -3,6 +3,7 @@ import type { Factor } from '../algebra/fraction.js';
 import type { Poly } from '../algebra/poly.js';
 import type { Ring } from '../algebra/ring.js';
 import type { Derivation } from '../derivation.js';
+import { FRAME_NAMES } from './code-frames.js';
 import { doubleLiteral } from './double-literal.js';
 import { makeNameTable, type NameTable, propertyKey } from './identifiers.js';
 import { generatorsOf, type Operand, type Plan, type Product, planShared, type Step } from './shared-subexpressions.js';
@@ -26,7 +27,9 @@ export interface Body {
 const OWN = (
   'couplings jets theory geometry variables parameters sources lagrangian equations rhoT pT wT g4 kinetic current ' +
   'potential curvatureObstruction rhoSpin pSpin connection Connection Couplings Jets Equations Kinetic Current'
-).split(' ');
+)
+  .split(' ')
+  .concat(FRAME_NAMES);
 const WIDTH = 110;
 
 /** Which generators are couplings: the constants of the theory. Scales, curvature and densities stand with the fields. */

@@ -6,6 +6,7 @@ import { select } from '../algebra/collect.js';
 import type { Fraction } from '../algebra/fraction.js';
 import type { Poly } from '../algebra/poly.js';
 import type { BiScalarForm, Derivation, FriedmannForm, SpinElimination } from '../derivation.js';
+import { frameFunctions } from './code-frames.js';
 import { commentText, propertyKey, stringLiteral } from './identifiers.js';
 import { dimensionsIn, dimensionsOf, modelParameters, type Parameter } from './parameters.js';
 import { planSize } from './shared-subexpressions.js';
@@ -45,6 +46,7 @@ export function typescriptModule(d: Derivation): string {
     ...(d.friedmann ? friedmann(writer, d.friedmann) : []),
     ...(typeof d.spin?.elimination === 'object' ? spin(writer, d.spin.elimination) : []),
     ...(d.scalarTensor.form === 'bi-scalar' ? scalarTensor(writer, d.scalarTensor) : []),
+    ...frames(writer),
   ];
   return `${blocks.join('\n\n')}\n`;
 }
@@ -265,6 +267,21 @@ function spin(w: Writer, { solution, rho, p }: SpinElimination): string[] {
     ...(p ? [one('pSpin', 'What spin adds to the pressure; mass dimension 4', p)] : []),
   ];
 }
+
+/** The conformal frames that were asked for. */
+const frames = (w: Writer): string[] =>
+  frameFunctions(w.derivation).map(({ name, doc: lines, result, outputs }) => {
+    if (result.kind === 'number')
+      return writeFunction(w.derivation, {
+        name,
+        type: 'number',
+        doc: lines,
+        outputs: outputs.map(({ numerator, denominator }) => ({ numerator, denominator })),
+      });
+    const members = outputs.flatMap((o) => [doc([o.meaning], '  '), `  readonly ${propertyKey(o.key)}: number;`]);
+    const type = `${doc([result.about])}\nexport interface ${result.type} {\n${members.join('\n')}\n}`;
+    return `${type}\n\n${writeFunction(w.derivation, { name, type: result.type, doc: lines, outputs })}`;
+  });
 
 const BACKGROUND = 'Equivalent to the torsion theory on the homogeneous, isotropic background';
 
