@@ -8,9 +8,14 @@ import type { Ring } from './algebra/ring.js';
 import type { Knowledge } from './algebra/signs.js';
 import type { Geometry, GeometrySymbol } from './geometry/geometry.js';
 import type { Branch } from './mechanics/branches.js';
+import type { SolvedConditions } from './mechanics/linear-conditions.js';
 import type { ConstrainedTensor } from './multipliers.js';
 import type { LagrangianTerm, TensorFactor, Theory, TheorySymbol } from './notation/theory.js';
 import type { ScalarFields } from './scalar-fields.js';
+import type { EliminationBranch } from './scalartensor/auxiliary.js';
+import type { ConstraintVectorForm } from './scalartensor/constraint-vector.js';
+import type { CurrentResult } from './scalartensor/current-zeros.js';
+import type { MetricForm } from './scalartensor/metric-form.js';
 import type { SpinTensor } from './spin.js';
 import type { TensorSum } from './tensor/expression.js';
 import type { CovariantEquations, Momenta } from './tensor/variation.js';
@@ -154,6 +159,25 @@ export interface SpinResult {
   readonly interaction: Poly;
   /** Undefined when there is nothing to eliminate; a text says why it cannot be done. */
   readonly elimination: SpinElimination | string | undefined;
+}
+
+/** A form without the fields of the connection, which holds for every k. */
+export interface IntegratedForm {
+  readonly branch: EliminationBranch;
+  readonly metric: MetricForm;
+}
+
+/** What holds for every spatial curvature, and where the metric analogue stops to. */
+export interface EveryK {
+  readonly vector: ConstraintVectorForm;
+  /** How the rules lead from there to the metric analogue, or where they stop; absent for a theory with constraints. */
+  readonly metric: MetricForm | undefined;
+  /** The current whose root the analogue contains, when it has one. */
+  readonly current: CurrentResult | undefined;
+  /** Conditions on the couplings for the analogue to hold for every k; absent when there is no analogue. */
+  readonly conditions: SolvedConditions | undefined;
+  /** Where the analogue does not hold for every k: the fields of the connection integrated out, when that can be done directly. */
+  readonly integrated: IntegratedForm | undefined;
 }
 
 export interface Derivation {

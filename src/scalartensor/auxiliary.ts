@@ -68,7 +68,7 @@ export interface Refusal {
 }
 
 /** One way through the rules. */
-export interface Branch {
+export interface EliminationBranch {
   readonly form: VectorForm;
   readonly steps: readonly EliminationStep[];
   /** Fields that were to be integrated out and stay. */
@@ -306,11 +306,11 @@ function liftedTo(f: Fraction, ring: Ring): Fraction {
 
 /** Rules applied to one field until it is gone or none applies. */
 async function eliminateField(
-  start: Branch,
+  start: EliminationBranch,
   field: string,
   rules: readonly AuxiliaryRule[],
   split: Splitter | undefined,
-): Promise<Branch[]> {
+): Promise<EliminationBranch[]> {
   const reasons: { rule: string; reason: string }[] = [];
   for (const rule of rules) {
     const outcome = await applyRule(rule, start.form, field, split);
@@ -319,7 +319,7 @@ async function eliminateField(
       continue;
     }
     const next = outcome.map((s) => ({ ...start, form: s.after, steps: [...start.steps, s] }));
-    const done: Branch[] = [];
+    const done: EliminationBranch[] = [];
     for (const branch of next)
       done.push(
         ...(branch.form.scalars.includes(field) ? await eliminateField(branch, field, rules, split) : [branch]),
@@ -342,10 +342,10 @@ export async function integrateOut(
   fields: readonly string[],
   rules: readonly AuxiliaryRule[],
   split?: Splitter,
-): Promise<Branch[]> {
-  let branches: Branch[] = [{ form, steps: [], refused: [] }];
+): Promise<EliminationBranch[]> {
+  let branches: EliminationBranch[] = [{ form, steps: [], refused: [] }];
   for (const field of fields) {
-    const next: Branch[] = [];
+    const next: EliminationBranch[] = [];
     for (const branch of branches) {
       if (!branch.form.scalars.includes(field)) next.push(branch);
       else if (!isThere(branch.form, field))
@@ -362,8 +362,8 @@ export function integrateDirectly(
   form: VectorForm,
   fields: readonly string[],
   rules: readonly AuxiliaryRule[],
-): Branch | undefined {
-  let branch: Branch = { form, steps: [], refused: [] };
+): EliminationBranch | undefined {
+  let branch: EliminationBranch = { form, steps: [], refused: [] };
   const direct = rules.filter((r) => r.does !== 'branches');
   for (const field of fields)
     while (branch.form.scalars.includes(field)) {
