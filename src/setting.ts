@@ -78,7 +78,7 @@ export interface Setting {
  * @throws InputError when the theory is at fault (unknown geometry, contradictory relations, a limit exceeded).
  */
 export function settingOf(given: Theory, onStep: (what: string) => void): Setting {
-  const geometry = loadGeometry(given.geometry, given.signature);
+  const geometry = loadGeometry(given.geometry, given.signature, given.geometryOrigin);
   const spins = spinTensors(given, geometry);
   // Components of spin tensors are symbols of the theory from here on.
   const theory: Theory =

@@ -161,7 +161,7 @@ function orderOf(text: string | undefined): number {
 async function reduced(theory: Theory, options: DeriveOptions, onStep?: (what: string) => void): Promise<Derivation> {
   if (!options.covariant && !options.momenta) return derive(theory, onStep);
   const keepMomenta = options.momenta ?? false;
-  if (!loadGeometry(theory.geometry, theory.signature).traceless)
+  if (!loadGeometry(theory.geometry, theory.signature, theory.geometryOrigin).traceless)
     return (await import('../class-b.js')).deriveClassB(theory, keepMomenta, onStep);
   const { withCovariant } = await import('../covariant.js');
   return withCovariant(derive(theory, onStep), keepMomenta, onStep);

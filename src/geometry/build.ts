@@ -9,9 +9,9 @@ import { remember } from '../algebra/memo.js';
 import { equals, generator, isZero, negate, type Poly, product, scale, sum } from '../algebra/poly.js';
 import { divideRational, type Rational, rational } from '../algebra/rational.js';
 import { constantsOf, makeRing, type Ring } from '../algebra/ring.js';
-import { type Diagnostic, InputError } from '../notation/diagnostics.js';
+import { type Diagnostic, errorAt, InputError } from '../notation/diagnostics.js';
 import { nearest } from '../notation/suggest.js';
-import type { Theory } from '../notation/theory.js';
+import type { Origin, Theory } from '../notation/theory.js';
 import { type SparseTensor, unpackIndices } from '../tensor/components.js';
 import type { FrameMetric } from '../tensor/contraction.js';
 import { makeEvaluator } from '../tensor/invariants.js';
@@ -39,7 +39,7 @@ const built = new Map<string, Geometry>();
  * The bundled geometry of that name, for a signature of the frame metric. Built once per process.
  * @throws InputError when there is no such file or its data are refused.
  */
-export function loadGeometry(id: string, signature: Theory['signature']): Geometry {
+export function loadGeometry(id: string, signature: Theory['signature'], origin?: Origin): Geometry {
   return remember(built, `${id} ${signature}`, () => {
     const file = readGeometryFile(id);
     if (!file) {
@@ -47,7 +47,11 @@ export function loadGeometry(id: string, signature: Theory['signature']): Geomet
       const near = nearest(id, names);
       const hint = near === undefined ? `there are ${names.join(', ')}` : `did you mean ${near}?`;
       const message = `there is no geometry ${id}`;
-      throw new InputError([{ code: 'unknown-geometry', severity: 'error', message, hint }]);
+      throw new InputError([
+        origin
+          ? errorAt(origin, 'unknown-geometry', message, hint)
+          : { code: 'unknown-geometry', severity: 'error', message, hint },
+      ]);
     }
     return buildGeometry(id, file, METRICS[signature]);
   });

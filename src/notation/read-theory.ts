@@ -81,6 +81,7 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
   const spinItems = declareSpins(values.get('matter'), declarations, problems);
   const tensors = read('tensors', (node) => readTensors(node, declarations, problems), []);
   refuseUnitDensities(values.get('matter'), components, units, problems);
+  const geometryNode = values.get('geometry');
   const geometry = read('geometry', (node) => readGeometryName(node, problems), DEFAULT_GEOMETRY);
 
   // An unknown name may only follow from a fault among the declarations, or from a misspelt key.
@@ -131,6 +132,7 @@ export function readTheory(text: string, file: string, options: TheoryOptions = 
     ...(constraints.length > 0 ? { constraints } : {}),
     ...(spins.length > 0 ? { spins } : {}),
     geometry,
+    ...(geometryNode ? { geometryOrigin: geometryNode.origin } : {}),
     warnings: inOrder(warnings),
   };
 }

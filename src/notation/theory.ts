@@ -168,5 +168,7 @@ export interface Theory {
   readonly spins?: readonly SpinSource[];
   /** Name of a file in rules/geometry, without its ending. */
   readonly geometry: string;
+  /** Where the geometry is named; undefined when the theory file leaves it to the default. */
+  readonly geometryOrigin?: Origin;
   readonly warnings: readonly Diagnostic[];
 }
