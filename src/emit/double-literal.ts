@@ -35,15 +35,23 @@ function scaleByPowerOfTwo(n: bigint, e: number): number {
 }
 
 /**
- * A positive rational as a literal: an integer, a quotient in brackets that the division rounds once, or, where numerator
- * or denominator exceed the exact doubles, the nearest double in the shortest decimals that give it back.
+ * A rational that is not negative, as one literal, or as two integers whose quotient a language rounds once. Where
+ * numerator or denominator exceed the exact doubles it is the nearest double in the shortest decimals that give it back,
+ * with a point or an exponent so that no language takes it for an integer.
  */
-export function doubleLiteral(value: Rational): string {
+export function doubleParts(value: Rational): readonly [string] | readonly [string, string] {
   const { num, den } = value;
   if (num > SAFE || den > SAFE) {
     const nearest = nearestDouble(value);
     // Beyond the doubles the literal itself overflows, as the number would.
-    return Number.isFinite(nearest) ? `${nearest}` : '1e999';
+    const text = Number.isFinite(nearest) ? `${nearest}` : '1e999';
+    return [/[.e]/.test(text) ? text : `${text}.0`];
   }
-  return den === 1n ? `${num}` : `(${num} / ${den})`;
+  return den === 1n ? [`${num}`] : [`${num}`, `${den}`];
+}
+
+/** The same as text of a language that divides integers as doubles; a quotient stands in brackets. */
+export function doubleLiteral(value: Rational): string {
+  const [top, bottom] = doubleParts(value);
+  return bottom === undefined ? top : `(${top} / ${bottom})`;
 }

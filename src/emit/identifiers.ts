@@ -1,9 +1,37 @@
 /**
- * Names of local variables and keys in emitted TypeScript. A theory may call a constant by any word of the language or
- * of its libraries; such a name stays as it is where it is a key and gets a suffix where it would be a variable.
+ * Names and texts of a user in emitted code. A theory may call a constant by any word of a language or of its libraries;
+ * such a name stays as it is where it is a quoted key and gets a suffix where it would be an identifier. Imports nothing.
  */
 
-/** Words that cannot, or in strict code should not, name a local variable. */
+/** How a language forms identifiers. */
+export interface Naming {
+  /** Whether words are joined as aDot or as a_dot. */
+  readonly style: 'camel' | 'snake';
+  /** Identifiers that a name must not be. */
+  readonly words: ReadonlySet<string>;
+  /** Whether b1 and B1 are one name; the words are then in small letters. */
+  readonly ignoreCase: boolean;
+  /** Most characters of an identifier. */
+  readonly longest: number;
+}
+
+/** A name made of several. */
+export const joined = ({ style }: Naming, parts: readonly string[]): string =>
+  style === 'snake'
+    ? parts.join('_')
+    : parts.map((p, i) => (i === 0 ? p : `${p.slice(0, 1).toUpperCase()}${p.slice(1)}`)).join('');
+
+/** A name of our own, given in camel case: curvatureObstruction is curvature_obstruction in languages that write so. */
+export const functionName = (camel: string, { style }: Naming): string =>
+  style === 'camel' ? camel : camel.replace(/[A-Z]/g, (c) => `_${c.toLowerCase()}`);
+
+/** Letters, digits and underscores, not beginning with a digit or underscore, out of any text: `phi,psi` is phi_psi. */
+export function identifierText(text: string): string {
+  const plain = text.replace(/[^A-Za-z0-9]+/g, '_').replace(/^_+|_+$/g, '');
+  return /^[A-Za-z]/.test(plain) ? plain : `x${plain}`;
+}
+
+/** Words that cannot, or in strict code should not, name a local variable of TypeScript or JavaScript. */
 const WORDS = new Set(
   (
     'break case catch class const continue debugger default delete do else enum export extends false finally for ' +
@@ -18,20 +46,31 @@ const WORDS = new Set(
 export const propertyKey = (name: string): string =>
   /^[A-Za-z_][A-Za-z0-9_]*$/.test(name) && !WORDS.has(name) ? name : JSON.stringify(name);
 
-/** Gives out names for local variables, each once. */
+export const ECMASCRIPT: Naming = {
+  style: 'camel',
+  words: WORDS,
+  ignoreCase: false,
+  longest: Number.POSITIVE_INFINITY,
+};
+
+/** Gives out identifiers, each once. */
 export interface NameTable {
-  /** The name itself when it is free and no word of the language, otherwise with underscores at its end. */
+  /** The name itself when it is free and no word of the language, otherwise with an underscore and a number at its end. */
   claim(name: string): string;
 }
 
 /** A table in which the given names are taken. */
-export function makeNameTable(taken: Iterable<string>): NameTable {
-  const used = new Set(taken);
+export function makeNameTable(taken: Iterable<string>, naming: Naming = ECMASCRIPT): NameTable {
+  const form = (name: string): string => (naming.ignoreCase ? name.toLowerCase() : name);
+  const used = new Set([...taken].map(form));
   return {
     claim(name) {
-      let candidate = name;
-      while (used.has(candidate) || WORDS.has(candidate)) candidate += '_';
-      used.add(candidate);
+      let candidate = name.slice(0, naming.longest);
+      for (let n = 1; used.has(form(candidate)) || naming.words.has(form(candidate)); n++) {
+        const suffix = n === 1 ? '_' : `_${n}`;
+        candidate = `${name.slice(0, naming.longest - suffix.length)}${suffix}`;
+      }
+      used.add(form(candidate));
       return candidate;
     },
   };

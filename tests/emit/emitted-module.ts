@@ -10,7 +10,7 @@ import { type Poly, termsOf } from '../../src/algebra/poly.js';
 import { type Rational, rational, toNumber } from '../../src/algebra/rational.js';
 import type { Derivation } from '../../src/derivation.js';
 import { derive } from '../../src/derive.js';
-import { typescriptModule } from '../../src/emit/typescript.js';
+import { typescriptModule } from '../../src/emit/code.js';
 import { readTheory } from '../../src/notation/read-theory.js';
 
 export const deriveText = (text: string): Derivation => derive(readTheory(text, 'theory.yaml'));
