@@ -1,6 +1,6 @@
 /**
  * Products that multiply to a given value, found by trying divisors that are at hand: no search, so a factor that is left
- * whole may still split. Invariant: number · Π base^power is the value, bases primitive, and single symbols come first.
+ * whole may still split. Invariant: number · Π base^power is the value, bases primitive, single symbols before sums.
  */
 import { divideExactly, splitUnit } from './division.js';
 import type { Factor, Fraction } from './fraction.js';
@@ -52,6 +52,14 @@ export function inFactors(p: Poly, candidates: readonly Poly[]): ProductForm {
   return { number: multiplyRational(term!.coefficient, leadingCoefficient(left.unit)), factors: joined(factors) };
 }
 
+/** Constants in the order of the ring, then functions of time, then sums. */
+function rank(base: Poly): number {
+  const { generators } = base.ring;
+  if (base.size > 1) return 2 * generators.length;
+  const [[place] = [0]] = termsOf(base)[0]!.exponents;
+  return generators[place]!.kind === 'jet' ? generators.length + place : place;
+}
+
 /** Equal bases once; powers that cancel go. */
 function joined(factors: readonly Factor[]): Factor[] {
   const out: { base: Poly; power: number }[] = [];
@@ -60,7 +68,9 @@ function joined(factors: readonly Factor[]): Factor[] {
     if (twin) twin.power += power;
     else out.push({ base, power });
   }
-  return out.filter((f) => f.power !== 0).sort((a, b) => compareSimplicity(a.base, b.base));
+  return out
+    .filter((f) => f.power !== 0)
+    .sort((a, b) => rank(a.base) - rank(b.base) || compareSimplicity(a.base, b.base));
 }
 
 /** A fraction as a product; its denominator is one already. */

@@ -86,6 +86,9 @@ class Texts {
 }
 
 const pairName = (key: string): string => key.split(',').map(unicodeName).join('');
+/** A product without its overall sign. */
+const size = (text: string): string => text.replace(/^−/, '');
+const absolute = (text: string): string => (/^−?[\d/]+$/.test(text) ? size(text) : `|${size(text)}|`);
 const usedText = (used: readonly string[]): string => (used.length === 0 ? '' : `, by ${used.join(', ')}`);
 
 /** All sections that a derivation has. */
@@ -111,7 +114,7 @@ export function scalarFieldSections(d: Derivation): SummarySection[] {
       [...of].map(([q, n]) => `${unicodeName(q)}${n === 1 ? '' : superscript(n)}`).join(' ') || '1';
     const terms = classes.potential.map((t) => `${t.name} ${powers(t.powers)}`);
     const { bound } = classes;
-    const open = bound.open.filter((p) => !isZero(p)).map((p) => texts.poly(p));
+    const open = [...new Set(bound.open.filter((p) => !isZero(p)).map((p) => texts.poly(p)))];
     out.push({
       title: 'The scalars',
       lines: [
@@ -230,7 +233,7 @@ function canonicalLines(texts: Texts, r: CanonicalResult): (readonly [string, re
   const field = unicodeName(r.scalar);
   const z = 'z';
   const frame = { einstein: 'Einstein frame', chosen: 'chosen frame', jordan: 'frame of the form' }[r.frame];
-  const out = [line(`${frame}: (dz/d${field})² = |${texts.fraction(r.slopeSquared)}|`)];
+  const out = [line(`${frame}: (dz/d${field})² = |${size(texts.fraction(r.slopeSquared))}|`)];
   for (const c of r.cases) out.push(...caseLines(texts, r, c, field, z));
   if (!r.isClosed) {
     const terms = r.series.slope.flatMap((coefficient, n) => {
@@ -240,7 +243,7 @@ function canonicalLines(texts: Texts, r: CanonicalResult): (readonly [string, re
     });
     const front = r.series.halves === 0 ? '' : ` ${field}^(${r.series.halves}/2)`;
     out.push([
-      `  no closed form; dz/d${field} = √|${texts.fraction(r.shape.constant)}|${front} times `,
+      `  no closed form; dz/d${field} = √|${size(texts.fraction(r.shape.constant))}|${front} times `,
       [...terms, '+ …'],
     ]);
   }
@@ -254,7 +257,7 @@ function canonicalLines(texts: Texts, r: CanonicalResult): (readonly [string, re
         `  ${unicodeName(r.weight.field)} = ζ${raised(field, r.weight.ofField)}${raised('g', r.weight.ofBracket)} with g = ${texts.poly(r.weight.g)}${eta}`,
       ),
       line(
-        `  √|J²| = |${texts.poly(powers.factor)}|${raised(field, powers.ofField)}${raised('g', powers.ofBracket)} √|(∂ζ)²|`,
+        `  √|J²| = ${absolute(texts.poly(powers.factor))}${raised(field, powers.ofField)}${raised('g', powers.ofBracket)} √|(∂ζ)²|`,
       ),
     );
   }
@@ -275,7 +278,7 @@ function caseLines(
     ? `λ${c.unit.degree === 1 ? '' : superscript(c.unit.degree)} = ${texts.fraction(c.unit.value)}, `
     : '';
   const scale = texts.fraction(c.scale.value);
-  const positive = c.kineticSign === -1 ? scale.replace(/^−/, '') : c.kineticSign === 1 ? scale : `|${scale}|`;
+  const positive = c.kineticSign === -1 ? size(scale) : c.kineticSign === 1 ? scale : `|${size(scale)}|`;
   const sign =
     c.kineticSign === 1
       ? 'usual sign'

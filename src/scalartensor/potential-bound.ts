@@ -3,7 +3,7 @@
  * Sound: `undecided` is the answer when a sign is missing, with the polynomials whose signs would decide.
  */
 import { collect, involves } from '../algebra/collect.js';
-import { isZero, multiply, type Poly, scale, subtract, zero } from '../algebra/poly.js';
+import { equals, isZero, multiply, type Poly, scale, subtract, zero } from '../algebra/poly.js';
 import { type Knowledge, NEGATIVE, POSITIVE, signOf, VANISHING, type Verdict } from '../algebra/signs.js';
 
 export type BoundVerdict =
@@ -64,7 +64,14 @@ export function boundOf(potential: Poly, scalars: readonly string[], knowledge: 
   const degreeOf = (powers: readonly number[]): number => powers.reduce((n, e) => n + e, 0);
   const degree = Math.max(...terms.map((t) => degreeOf(t.powers)));
   const top = terms.filter((t) => degreeOf(t.powers) === degree);
-  const unknown = (...open: readonly Poly[]): PotentialBound => ({ verdict: 'undecided', used: [], open });
+  const unknown = (...open: readonly Poly[]): PotentialBound => {
+    const missing = open.filter((p, i) => {
+      const { signs } = signOf(p, knowledge);
+      const isKnown = signs === POSITIVE || signs === NEGATIVE || signs === VANISHING;
+      return !isKnown && !open.slice(0, i).some((q) => equals(p, q));
+    });
+    return { verdict: 'undecided', used: [], open: missing };
+  };
   if (present.length === 1 || degree === 0) return inOneField(top[0]!.value, degree, knowledge, unknown);
   if (present.length !== 2) return unknown();
   const at = (i: number, j: number): Poly =>
@@ -94,19 +101,24 @@ function inForm(
 ): PotentialBound {
   const [ofA, ofB, ofC] = [a, b, c].map((p) => signOf(p, knowledge)) as [Verdict, Verdict, Verdict];
   const discriminant = subtract(scale(multiply(a, c), 4), multiply(b, b));
+  const rest = signOf(discriminant, knowledge);
   for (const [sign, verdict] of [
     [POSITIVE, 'bounded below'],
     [NEGATIVE, 'bounded above'],
   ] as const) {
     if (ofA.signs !== sign || ofC.signs !== sign) continue;
-    if (isCone && (ofB.signs & ~(sign | VANISHING)) === 0) return decided(verdict, ofA, ofB, ofC);
-    const rest = signOf(discriminant, knowledge);
+    const isSame = (ofB.signs & ~(sign | VANISHING)) === 0;
+    const isOpposite = (ofB.signs & (sign | VANISHING)) === 0;
+    if (isCone && isSame) return decided(verdict, ofA, ofB, ofC);
     if (rest.signs === POSITIVE) return decided(verdict, ofA, ofC, rest);
-    return unknown(...(isCone ? [scale(b, sign === POSITIVE ? 1 : -1), discriminant] : [discriminant]));
+    // Between the axes the mixed term wins.
+    if (rest.signs === NEGATIVE && (isOpposite || !isCone)) return decided('unbounded', ofA, ofB, ofC, rest);
+    return unknown(b, discriminant);
   }
-  if (isZero(a) && isZero(c)) return unknown(b);
-  const opposite =
+  const isOpposite =
     (ofA.signs === POSITIVE && ofC.signs === NEGATIVE) || (ofA.signs === NEGATIVE && ofC.signs === POSITIVE);
-  if (opposite) return decided('unbounded', ofA, ofC);
-  return unknown(...[a, c, ...(isCone ? [b] : []), discriminant].filter((p) => !isZero(p)));
+  if (isOpposite) return decided('unbounded', ofA, ofC);
+  if (!isCone && rest.signs === NEGATIVE) return decided('unbounded', rest);
+  if (isZero(a) && isZero(c)) return unknown(b);
+  return unknown(a, c, b, discriminant);
 }
