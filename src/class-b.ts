@@ -51,6 +51,7 @@ export function deriveClassB(
     ring,
     relations,
     terms,
+    ...(setting.rewriting.length > 0 ? { rewriting: setting.rewriting } : {}),
     invariants: terms
       .filter((t) => t.factors.length > 0)
       .map(({ factors }) => ({ factors, value: symbolicValue(geometry, factors) })),

@@ -18,6 +18,7 @@ import type { CurrentResult } from './scalartensor/current-zeros.js';
 import type { MetricForm } from './scalartensor/metric-form.js';
 import type { SpinTensor } from './spin.js';
 import type { TensorSum } from './tensor/expression.js';
+import type { Step } from './tensor/rewrite.js';
 import type { CovariantEquations, Momenta } from './tensor/variation.js';
 
 /** A statement that was tested exactly during the derivation. A check that fails stops the derivation with an error. */
@@ -190,6 +191,8 @@ export interface Derivation {
   readonly relations: ImposedRelations;
   /** The Lagrangian after the relations were applied; like terms collected. */
   readonly terms: readonly { readonly coefficient: Poly; readonly factors: LagrangianTerm['factors'] }[];
+  /** Rules that rewrote the Lagrangian before it was contracted, in the order in which they fired. */
+  readonly rewriting?: readonly Step[];
   readonly invariants: readonly InvariantValue[];
   /** Exact a³N·L of the torsion theory with its multipliers, without matter. */
   readonly gravity: Poly;

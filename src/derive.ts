@@ -88,6 +88,7 @@ export function derive(given: Theory, onStep: (what: string) => void = () => {})
     ring,
     relations,
     terms,
+    ...(setting.rewriting.length > 0 ? { rewriting: setting.rewriting } : {}),
     invariants: terms
       .filter((t) => t.factors.length > 0)
       .map(({ factors }) => ({ factors, value: symbolicValue(geometry, factors) })),

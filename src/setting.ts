@@ -42,6 +42,7 @@ import { spinAverage } from './spin-average.js';
 import { ContractionLimitError } from './tensor/contraction.js';
 import { dummyFreeKey, NoComponentsError } from './tensor/invariants.js';
 import { expandParts } from './tensor/parts.js';
+import type { Step } from './tensor/rewrite.js';
 
 /** Symbol of the reduced Planck mass in the Friedmann form. */
 export const PLANCK_MASS = 'M';
@@ -54,6 +55,8 @@ export interface Setting {
   readonly ring: Ring;
   readonly relations: Imposed;
   readonly terms: Derivation['terms'];
+  /** How irreducible parts were written out. */
+  readonly rewriting: readonly Step[];
   readonly fluids: readonly FluidValue[];
   readonly constrained: readonly ConstrainedTensor[];
   readonly spins: readonly SpinTensor[];
@@ -93,7 +96,8 @@ export function settingOf(given: Theory, onStep: (what: string) => void): Settin
   const ring = multipliers.length === 0 ? narrow : ringOf(theory, geometry, fluidsWanted, multipliers);
   const { relations, couple, fix } = relationsIn(ring, theory, geometry);
 
-  const terms = collectTerms(ring, expandParts(theory.lagrangian).terms, couple);
+  const expanded = expandParts(theory.lagrangian);
+  const terms = collectTerms(ring, expanded.terms, couple);
   let size = 0;
   const free = sum(
     ring,
@@ -128,6 +132,7 @@ export function settingOf(given: Theory, onStep: (what: string) => void): Settin
     ring,
     relations,
     terms,
+    rewriting: expanded.steps,
     fluids,
     constrained,
     spins,

@@ -29,6 +29,7 @@ export interface DeriveOptions {
   readonly covariant?: boolean;
   readonly momenta?: boolean;
   readonly conventions?: string;
+  readonly explain?: boolean;
   readonly json?: boolean;
   readonly force?: boolean;
 }
@@ -104,6 +105,10 @@ async function writeResults(theory: Theory, options: DeriveOptions, io: Io): Pro
     writeFolder(folder, results);
     progress.done();
     io.stdout(text);
+    if (options.explain) {
+      const { explanation } = await import('../emit/explanation.js');
+      io.stdout(explanation(derivation, { variables, color: io.color }));
+    }
     io.stdout(closing(resolve(folder), files));
   } finally {
     progress.done();

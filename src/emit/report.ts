@@ -4,6 +4,7 @@
  * script, the styles and the embedded fonts, so that no text of a user can run or load anything.
  */
 import type { Derivation } from '../derivation.js';
+import { rewritingText } from './explanation.js';
 import { latexSections } from './latex.js';
 import { type LatexDisplay, type LatexOptions, type Passage, type Section, writerOf } from './latex-display.js';
 import { math, type Prose, prose } from './latex-text.js';
@@ -96,7 +97,7 @@ function step(
       id === 'invariants'
         ? `${blocks.invariants(derivation)}${blocks.sourceOf(displays)}`
         : displays.map((d) => blocks.display(d)).join('\n');
-    const symbols = id === 'lagrangian' ? blocks.symbols(derivation, latex) : '';
+    const symbols = id === 'lagrangian' ? `${blocks.symbols(derivation, latex)}${rewritingHtml(derivation)}` : '';
     return [heading, paragraphs(text), shown, paragraphs(remarks), symbols].filter((s) => s !== '').join('\n');
   };
   const { allowed, rule } = reasonsOf(section.id, derivation);
@@ -114,6 +115,13 @@ ${reasons.join('\n')}
 ${passages.map(passage).join('\n')}
 </div>
 </section>`;
+}
+
+/** The rules that rewrote the Lagrangian, folded. */
+function rewritingHtml(derivation: Derivation): string {
+  const steps = rewritingText(derivation).map((text) => `<pre>${escapeHtml(text)}</pre>`);
+  if (steps.length === 0) return '';
+  return `<details class="rewriting"><summary>Rewriting in ${steps.length} steps</summary>${steps.join('\n')}</details>`;
 }
 
 /** The identity of time reparametrisation, which was checked for these very equations. */
