@@ -47,6 +47,8 @@ export async function main(args: readonly string[], world: Io): Promise<number> 
     .option('--order <n>', 'order in the field of series where a canonical field has no closed form (default: 6)')
     .option('--covariant', 'also derive the field equations in index notation')
     .option('--momenta', 'the same with the field momenta kept as symbols')
+    .option('--explain', 'also print which rules were applied and why each step is allowed')
+    .option('--conventions <name>', 'also write the Lagrangian in these conventions: a preset or a file')
     .option('--json', 'print the JSON alone and write no file')
     .option('--force', 'replace files that exist')
     .addOption(new Option('--no-color', 'no terminal colours'))
