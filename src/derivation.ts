@@ -16,6 +16,7 @@ import type { EliminationBranch } from './scalartensor/auxiliary.js';
 import type { ConstraintVectorForm } from './scalartensor/constraint-vector.js';
 import type { CurrentResult } from './scalartensor/current-zeros.js';
 import type { MetricForm } from './scalartensor/metric-form.js';
+import type { VectorForm } from './scalartensor/vector-form.js';
 import type { SpinTensor } from './spin.js';
 import type { TensorSum } from './tensor/expression.js';
 import type { Step } from './tensor/rewrite.js';
@@ -181,6 +182,36 @@ export interface EveryK {
   readonly integrated: IntegratedForm | undefined;
 }
 
+/** A field χ that makes powers of a scalar X linear. */
+export interface LinearisedField {
+  readonly name: string;
+  readonly latex: string;
+  /** X as typed, or the name of a component. */
+  readonly scalar: string;
+  /** X, in the ring of the route's start. */
+  readonly value: Poly;
+}
+
+export interface RouteBranch {
+  readonly branch: EliminationBranch;
+  /** Absent when a root of an equation is left. */
+  readonly metric: MetricForm | undefined;
+  /** Whether its equations were compared with those of the theory; substitution was verified in any case. */
+  readonly isCompared: boolean;
+  readonly current: CurrentResult | undefined;
+}
+
+/** Powers made linear by auxiliary fields, and fields integrated out. */
+export interface AuxiliaryRoute {
+  readonly fields: readonly LinearisedField[];
+  /** Where this vanishes the fields are not determined by their equations; undefined without fields. */
+  readonly hessian: Poly | undefined;
+  readonly start: VectorForm;
+  /** The fields that were to be integrated out, in order. */
+  readonly integrated: readonly string[];
+  readonly branches: readonly RouteBranch[];
+}
+
 export interface Derivation {
   readonly theory: Theory;
   readonly geometry: Geometry;
@@ -212,6 +243,10 @@ export interface Derivation {
   readonly screening: readonly Poly[] | undefined;
   readonly friedmann: FriedmannForm | undefined;
   readonly scalarTensor: ScalarTensorForm;
+  /** On isotropic geometries. */
+  readonly everyK?: EveryK;
+  /** Present when it was asked for. */
+  readonly auxiliary?: AuxiliaryRoute;
   /** Assumptions as knowledge about signs; present when the theory has any. */
   readonly knowledge?: Knowledge;
   /** Conformal frames, classes of the scalars, canonical fields: present when asked for. */
