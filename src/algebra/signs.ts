@@ -24,7 +24,7 @@ import {
   termsOf,
 } from './poly.js';
 import { ONE, type Rational, signOfRational, ZERO } from './rational.js';
-import type { Ring } from './ring.js';
+import { exponentRange, type Ring } from './ring.js';
 
 /** A set of signs. */
 export type Signs = number;
@@ -199,6 +199,7 @@ function hypothesesFor(p: Poly, { ring, assumptions, symbols }: Knowledge): Hypo
     for (const term of monomialsIn([h.value]))
       for (const target of targets) {
         const factor = multiply(target, power(term, -1));
+        if (!mayMultiply(factor, p, symbols)) continue;
         for (const sign of known(factor, verdictOf(factor))) {
           if (multiples.size >= MAX_PRODUCTS || sign.value.keys.every((w) => w === 0)) continue;
           const product = productOf(h, sign);
@@ -212,6 +213,14 @@ function hypothesesFor(p: Poly, { ring, assumptions, symbols }: Knowledge): Hypo
     });
   out.push(...squares(targets));
   return out.slice(0, MAX_HYPOTHESES);
+}
+
+/** Whether a monomial divides only by what is not zero: by assumption, or because p divides by it. */
+function mayMultiply(factor: Poly, p: Poly, symbols: Knowledge['symbols']): boolean {
+  const { low } = exponentRange(p.ring, p.keys);
+  return termsOf(factor)[0]!.exponents.every(
+    ([g, e]) => e > 0 || low[g]! < 0 || ((symbols.get(g)?.signs ?? ANY) & VANISHING) === 0,
+  );
 }
 
 function productOf(a: Hypothesis, b: Hypothesis): Hypothesis {
