@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { evaluate } from '../../src/algebra/collect.js';
+import type { Fraction } from '../../src/algebra/fraction.js';
 import { toNumber } from '../../src/algebra/rational.js';
-import type { Derivation } from '../../src/derivation.js';
+import type { Derivation, SpinElimination } from '../../src/derivation.js';
 import { typescriptModule } from '../../src/emit/code.js';
 import {
   complaints,
@@ -49,6 +50,18 @@ geometry: bianchi-i
 scales: { M: mass }
 lagrangian: "a1 R^2 + a2 R_{ab} R^{ab} + b1 M^2 T_a T^a"
 impose: [ "a1 a2 = 3" ]
+`),
+  'constraints by multipliers': theory(`scales: { M: mass }
+lagrangian: "-1/2 M^2 (1/4 T_{abc} T^{abc} + 1/2 T_{abc} T^{bac} - T_a T^a)"
+constrain: [ "R^a_{bcd}" ]
+matter: [ dust ]
+`),
+  'matter with spin': theory(`constants: [q, gamma]
+scales: { M: mass }
+lagrangian: |
+  1/2 M^2 R + M^2/4/gamma \\epsilon^{abcd} R_{abcd}
+tensors: { S: { indices: 1, dimension: mass^3 } }
+matter: [ dust, { spin: sigma, axial: q }, { spin: S, coupling: "S_a T^a" } ]
 `),
   nothing: theory(`constants: [g]
 lagrangian: "g R_{ab} T^{abc} A_c - g R_{ab} T^{abc} A_c + g ( R^2 - 4 R_{ab} R^{ba} + R_{abcd} R^{cdab} )"
@@ -195,5 +208,29 @@ export const short: Jets = { N: [1, 0], a: [1, 2], phi: [1, 2, 3], psi: [1, 2, 3
     const { couplings, jets } = samplePoint(d, integers(1));
     expect(module.lagrangian(couplings, jets)).not.toBe(0);
     expect(module.equations(couplings, jets)).toEqual({ N: 0, a: 0, phi: 0, psi: 0 });
+  });
+});
+
+describe('what spin adds', () => {
+  it('is the value of the exact fractions', async () => {
+    const d = deriveText(THEORIES['matter with spin']!);
+    const module = await load(typescriptModule(d));
+    const elimination = d.spin!.elimination as SpinElimination;
+    const random = integers(11);
+    for (let run = 0; run < 5; run++) {
+      const sample = samplePoint(d, random);
+      const value = ({ numerator, denominator }: Fraction): number =>
+        denominator.reduce(
+          (x, f) => x / toNumber(evaluate(f.base, sample.exact)) ** f.power,
+          toNumber(evaluate(numerator, sample.exact)),
+        );
+      const close = (computed: number, f: Fraction): void => {
+        expect(Math.abs(computed - value(f))).toBeLessThan(1e-9 * (1 + Math.abs(value(f))));
+      };
+      close(module.rhoSpin(sample.couplings, sample.jets), elimination.rho);
+      close(module.pSpin(sample.couplings, sample.jets), elimination.p!);
+      const connection = module.connection(sample.couplings, sample.jets);
+      for (const [q, f] of elimination.solution) close(connection[q], f);
+    }
   });
 });
