@@ -105,9 +105,10 @@ function classOf(
   if (row.some(([key]) => key !== `${q},${q}`)) return made('mixed', own && statementOf(own, form, frame, knowledge));
   if (own) {
     const sign = statementOf(own, form, frame, knowledge);
-    const overall = frame?.side ?? 1;
-    if (sign.sign.signs === (overall === 1 ? POSITIVE : NEGATIVE)) return made('canonical', sign, sign.sign.used);
-    if (sign.sign.signs === (overall === 1 ? NEGATIVE : POSITIVE)) return made('wrong-sign', sign, sign.sign.used);
+    // A sign that only single values of the fields spoil counts as known.
+    const side = frame?.side ?? 1;
+    if ((sign.sign.signs & (side === 1 ? NEGATIVE : POSITIVE)) === 0) return made('canonical', sign, sign.sign.used);
+    if ((sign.sign.signs & (side === 1 ? POSITIVE : NEGATIVE)) === 0) return made('wrong-sign', sign, sign.sign.used);
     return made('kinetic', sign);
   }
   if (!isZero(form.current.get(q)!)) {
