@@ -2,9 +2,9 @@
  * What every target language provides, and the texts and numbers that all of them share: header, documentation of
  * functions, the sample point of the example programs.
  */
-import type { CodeFunction, CodeModule } from './code-description.js';
+import type { CodeFunction, CodeInput, CodeModule } from './code-description.js';
 import { filled } from './code-expression.js';
-import { commentText } from './identifiers.js';
+import { commentText, identifierText, makeNameTable, type Naming } from './identifiers.js';
 
 export interface Language {
   /** As the command line names it. */
@@ -23,17 +23,22 @@ export interface Language {
 /** Columns of a comment. */
 const COMMENT_WIDTH = 110;
 
-/** What the module is, for its first comment. Not yet cleaned for any language. */
+const ABOUT =
+  'Written by untwist from the Lagrangian; do not edit. Units c = ħ = 1, so every dimension is a power of mass and a time ' +
+  'derivative adds one. Times are cosmic time t with lapse N: ds² = −N² dt² + … . Numbers are doubles.';
+
+/** What the module is, for its first comment; one line for each paragraph, not yet cleaned for any language. */
 export const headerLines = (m: CodeModule): string[] => [
   `${m.theory}: reduced equations of a gravity theory with torsion; geometry: ${m.geometry.title}.`,
   '',
-  'Written by untwist from the Lagrangian; do not edit. Units c = ħ = 1, so every dimension is a power of mass and a',
-  'time derivative adds one. Times are cosmic time t with lapse N: ds² = −N² dt² + … . Numbers are doubles.',
+  ABOUT,
   ...(m.conditions.length > 0
     ? ['', 'Conditions that the couplings must meet and that were not used for rewriting:']
     : []),
   ...m.conditions.map((c) => `    ${c}`),
 ];
+
+export const COUPLINGS = 'Everything that is constant in time, and densities: what the theory leaves to be chosen.';
 
 /** Documentation of a function with that of its outputs, for languages in which these have no place of their own. */
 export const functionLines = (f: CodeFunction): string[] => [
@@ -67,3 +72,31 @@ export const commaLines = (items: readonly string[], width = COMMENT_WIDTH): str
 /** Values of the sample point: small quarters, exact in any notation and never zero. */
 export const sampleCoupling = (index: number): string => (((index % 7) + 2) / 4).toFixed(2);
 export const sampleJet = (field: number, order: number): string => (((field + 2 * order) % 5) / 4 + 0.25).toFixed(2);
+
+/** An identifier for each name, in order; the same names give the same identifiers. */
+export function identifiersFor(
+  names: readonly string[],
+  naming: Naming,
+  taken: Iterable<string> = [],
+): Map<string, string> {
+  const table = makeNameTable(taken, naming);
+  return new Map(names.map((name) => [name, table.claim(identifierText(name))]));
+}
+
+/** Members of the record of couplings, by parameter. */
+export const couplingMembers = (m: CodeModule, naming: Naming): Map<string, string> =>
+  identifiersFor(
+    m.parameters.map((p) => p.name),
+    naming,
+  );
+
+/** Members of a record of jets, by field; places of a list, by symbol. */
+export const inputMembers = (input: CodeInput, naming: Naming): Map<string, string> =>
+  identifiersFor(input.kind === 'jets' ? input.fields.map((f) => f.name) : input.entries.map((e) => e.symbol), naming);
+
+/** The module's name as an identifier in small letters, short enough to be put in front of others. */
+export const moduleName = (m: CodeModule): string => identifierText(m.slug).slice(0, 30).replace(/_$/, '');
+
+/** `stands for B1` where an identifier is not the name itself. */
+export const standsFor = (identifier: string, name: string): string =>
+  identifier === name ? '' : `; stands for ${name}`;

@@ -5,9 +5,17 @@
 import { type Body, type BodyOptions, functionCode, type Part, type Read } from './code-body.js';
 import { type CodeFunction, type CodeInput, type CodeModule, inputsOf } from './code-description.js';
 import { type Expression, layout, type Notation } from './code-expression.js';
-import { commaLines, headerLines, type Language, sampleCoupling, sampleJet } from './code-language.js';
+import {
+  COUPLINGS,
+  commaLines,
+  commentLines,
+  headerLines,
+  type Language,
+  sampleCoupling,
+  sampleJet,
+} from './code-language.js';
 import { powerText } from './code-model.js';
-import { commentText, ECMASCRIPT, propertyKey, stringLiteral } from './identifiers.js';
+import { ECMASCRIPT, propertyKey, stringLiteral } from './identifiers.js';
 
 const WIDTH = 90;
 /** Names that the module gives to its own things besides functions and inputs. */
@@ -52,9 +60,9 @@ function moduleText(m: CodeModule, dialect: Dialect): string {
   return `${blocks.join('\n\n')}\n`;
 }
 
-/** A doc comment at an indentation; each line is cleaned and kept on its own. */
+/** A doc comment at an indentation. */
 function doc(lines: readonly string[], indent = ''): string {
-  const clean = lines.map((l) => `${/^ */.exec(l)![0]}${commentText(l)}`);
+  const clean = commentLines(lines);
   if (clean.length === 1) return `${indent}/** ${clean[0]} */`;
   return [`${indent}/**`, ...clean.map((l) => `${indent} * ${l}`.trimEnd()), `${indent} */`].join('\n');
 }
@@ -101,8 +109,6 @@ function constants(m: CodeModule, dialect: Dialect): string {
     }),
   ].join('\n');
 }
-
-const COUPLINGS = 'Everything that is constant in time, and densities: what the theory leaves to be chosen.';
 
 function couplingsType({ parameters }: CodeModule): string {
   const members = parameters.flatMap((p) => [

@@ -7,9 +7,9 @@
 export interface Naming {
   /** Whether words are joined as aDot or as a_dot. */
   readonly style: 'camel' | 'snake';
-  /** Identifiers that a name must not be. */
-  readonly words: ReadonlySet<string>;
-  /** Whether b1 and B1 are one name; the words are then in small letters. */
+  /** Whether a name has a meaning of its own, so that it must not be an identifier. */
+  readonly isWord: (name: string) => boolean;
+  /** Whether b1 and B1 are one name; words are then asked about in small letters. */
   readonly ignoreCase: boolean;
   /** Most characters of an identifier. */
   readonly longest: number;
@@ -48,7 +48,7 @@ export const propertyKey = (name: string): string =>
 
 export const ECMASCRIPT: Naming = {
   style: 'camel',
-  words: WORDS,
+  isWord: (name) => WORDS.has(name),
   ignoreCase: false,
   longest: Number.POSITIVE_INFINITY,
 };
@@ -66,7 +66,7 @@ export function makeNameTable(taken: Iterable<string>, naming: Naming = ECMASCRI
   return {
     claim(name) {
       let candidate = name.slice(0, naming.longest);
-      for (let n = 1; used.has(form(candidate)) || naming.words.has(form(candidate)); n++) {
+      for (let n = 1; used.has(form(candidate)) || naming.isWord(form(candidate)); n++) {
         const suffix = n === 1 ? '_' : `_${n}`;
         candidate = `${name.slice(0, naming.longest - suffix.length)}${suffix}`;
       }
@@ -96,3 +96,12 @@ export const stringLiteral = (text: string): string =>
   JSON.stringify(text).replace(/[\p{Cf}\p{Zl}\p{Zp}\p{Cc}]/gu, (c) =>
     [...Array(c.length).keys()].map((i) => `\\u${c.charCodeAt(i).toString(16).padStart(4, '0')}`).join(''),
   );
+
+/** The same with the escapes of Python and Julia, which count characters and not UTF-16 units. */
+export const codePointLiteral = (text: string): string =>
+  `"${[...text].map((c) => (/[\p{Cf}\p{Zl}\p{Zp}\p{Cc}\p{Cs}]/u.test(c) ? codePoint(c) : /["\\$]/.test(c) ? `\\${c}` : c)).join('')}"`;
+
+const codePoint = (c: string): string => {
+  const number = c.codePointAt(0)!;
+  return number < 0x10000 ? `\\u${number.toString(16).padStart(4, '0')}` : `\\U${number.toString(16).padStart(8, '0')}`;
+};
