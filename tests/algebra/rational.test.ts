@@ -14,6 +14,7 @@ import {
   type Rational,
   rational,
   signOfRational,
+  squareRootOf,
   subtractRational,
   toNumber,
   ZERO,
@@ -167,5 +168,25 @@ describe('toNumber', () => {
     expect(toNumber(rational(3n, 2n ** 1075n))).toBe(2 * Number.MIN_VALUE);
     expect(toNumber(rational(2n ** 1024n - 2n ** 970n))).toBe(Number.POSITIVE_INFINITY);
     expect(toNumber(rational(2n ** 1024n - 2n ** 970n - 1n))).toBe(Number.MAX_VALUE);
+  });
+});
+
+describe('rational roots', () => {
+  it('are found exactly when there are some', () => {
+    fc.assert(
+      fc.property(quotients, (q) => {
+        const x = toRational(q);
+        const root = squareRootOf(multiplyRational(x, x))!;
+        expect(root.num >= 0n).toBe(true);
+        expect(multiplyRational(root, root)).toEqual(multiplyRational(x, x));
+      }),
+    );
+    for (const [num, den] of [
+      [2n, 1n],
+      [1n, 3n],
+      [-4n, 1n],
+      [10n ** 40n + 1n, 1n],
+    ] as const)
+      expect(squareRootOf(rational(num, den))).toBeUndefined();
   });
 });
