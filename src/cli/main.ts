@@ -3,6 +3,7 @@
  */
 import { Command, CommanderError, Option } from 'commander';
 import { InputError, renderDiagnostic } from '../notation/diagnostics.js';
+import { addCodeCommands } from './code-commands.js';
 import { EXIT, type Io } from './io.js';
 import { addLagrangianCommands } from './lagrangian-commands.js';
 
@@ -56,9 +57,11 @@ export async function main(args: readonly string[], world: Io): Promise<number> 
       const { deriveCommand } = await import('./derive-command.js');
       code = await deriveCommand(theory, options, io);
     });
-  addLagrangianCommands(program, io, (exit) => {
+  const finished = (exit: number): void => {
     code = exit;
-  });
+  };
+  addLagrangianCommands(program, io, finished);
+  addCodeCommands(program, io, finished);
   try {
     await program.parseAsync([...args], { from: 'user' });
     return code;
