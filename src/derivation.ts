@@ -178,6 +178,8 @@ export interface EveryK {
   readonly current: CurrentResult | undefined;
   /** Conditions on the couplings for the analogue to hold for every k; absent when there is no analogue. */
   readonly conditions: SolvedConditions | undefined;
+  /** Conditions on the couplings for k to drop out of the equations, solved as far as they are linear. */
+  readonly screening: SolvedConditions | undefined;
   /** Where the analogue does not hold for every k: the fields of the connection integrated out, when that can be done directly. */
   readonly integrated: IntegratedForm | undefined;
 }

@@ -77,7 +77,7 @@ export function derive(given: Theory, onStep: (what: string) => void = () => {})
   const branches = setting.constrained.length > 0 ? constrainedTheory(setting, equations, knowledge, check) : undefined;
   const scalarTensor =
     branches?.scalarTensor ?? scalarTensorOf(geometry, ring, { reduced, equations: gravityEquations }, check);
-  const everyK = everyKOf(setting, scalarTensor, check);
+  const everyK = everyKOf(setting, scalarTensor, reduced, check);
   const parameters = geometry.parameters.map((p) => p.name);
   const scales = theory.symbols.filter((s) => s.role === 'scale').map((s) => s.name);
   const curvature = geometry.isotropic?.curvature;

@@ -12,7 +12,7 @@ import type { EveryK, IntegratedForm, ScalarTensorForm } from './derivation.js';
 import { comovingOf } from './geometry/comoving.js';
 import type { Geometry } from './geometry/geometry.js';
 import { symbolicValue } from './geometry/reduction.js';
-import { couplingCombinations } from './mechanics/couplings.js';
+import { couplingCombinations, screeningConditions } from './mechanics/couplings.js';
 import { type SolvedConditions, solveConditions } from './mechanics/linear-conditions.js';
 import { type EliminationBranch, integrateDirectly } from './scalartensor/auxiliary.js';
 import { fieldRules } from './scalartensor/auxiliary-file.js';
@@ -54,9 +54,15 @@ export function comparedBackground(roles: VectorRoles, ring: Ring, scalars: read
 
 /**
  * The results of this module; undefined on a geometry that is not isotropic.
+ * @param reducedGravity the gravitational Lagrangian without total derivatives.
  * @param form the metric analogue as it was found by comparing coefficients: the rules must lead to the same.
  */
-export function everyKOf(setting: Setting, form: ScalarTensorForm, check: Checker): EveryK | undefined {
+export function everyKOf(
+  setting: Setting,
+  form: ScalarTensorForm,
+  reducedGravity: Poly,
+  check: Checker,
+): EveryK | undefined {
   const { geometry, ring, terms, gravity, constrained, fields } = setting;
   const roles = vectorRoles(geometry);
   if (!roles) return undefined;
@@ -74,7 +80,14 @@ export function everyKOf(setting: Setting, form: ScalarTensorForm, check: Checke
     'evaluated on the metric geometry it is the reduced Lagrangian term by term, so all equations agree for every k',
     true,
   );
-  const none = { vector, metric: undefined, current: undefined, conditions: undefined, integrated: undefined };
+  const none = {
+    vector,
+    metric: undefined,
+    current: undefined,
+    conditions: undefined,
+    screening: undefined,
+    integrated: undefined,
+  };
   // Multipliers are no scalars of a metric analogue; with constraints it belongs to their branches.
   if (!isPlain) return none;
   const metric = metricForm(vector.form);
@@ -90,6 +103,7 @@ export function everyKOf(setting: Setting, form: ScalarTensorForm, check: Checke
     metric,
     current: metric.reached && currentResult(metric.reached.functions.current),
     conditions: metric.reached && conditionsFor(metric.reached.remainder, setting, scalars),
+    screening: screeningOf(setting, reducedGravity, roles.curvature),
     integrated: metric.stop === undefined ? undefined : integratedForm(vector.form, scalars, roles, ring, check),
   };
 }
@@ -139,6 +153,12 @@ function compareRoutes(
 function conditionsFor(remainder: Fraction, setting: Setting, scalars: readonly string[]): SolvedConditions {
   const moving = [...movingNames(scalars), ...scalars];
   return solvedFor(setting, couplingCombinations(remainder.numerator, moving, scalesOf(setting)));
+}
+
+/** When the spatial curvature drops out of the equations. */
+function screeningOf(setting: Setting, reducedGravity: Poly, curvature: string): SolvedConditions {
+  const parameters = setting.geometry.parameters.map((p) => p.name);
+  return solvedFor(setting, screeningConditions(reducedGravity, curvature, parameters, scalesOf(setting)));
 }
 
 const scalesOf = ({ theory }: Setting): string[] => theory.symbols.filter((s) => s.role === 'scale').map((s) => s.name);

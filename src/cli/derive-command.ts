@@ -26,6 +26,10 @@ export interface DeriveOptions {
   readonly canonical?: boolean;
   /** A number, as typed. */
   readonly order?: string;
+  /** Scalars whose powers are made linear, as typed. */
+  readonly linearise?: readonly string[];
+  /** Fields to integrate out, separated by commas. */
+  readonly integrate?: string;
   readonly covariant?: boolean;
   readonly momenta?: boolean;
   readonly conventions?: string;
@@ -122,7 +126,8 @@ async function derived(
   onStep?: (what: string) => void,
 ): Promise<Derivation> {
   const elsewhere = await writtenElsewhere(theory, options.conventions, io);
-  const derivation = await withFields(await reduced(theory, options, onStep), options, onStep);
+  const plain = await withFields(await reduced(theory, options, onStep), options, onStep);
+  const derivation = await withRoute(plain, options, onStep);
   return elsewhere.length > 0 ? { ...derivation, elsewhere } : derivation;
 }
 
@@ -135,6 +140,18 @@ async function writtenElsewhere(theory: Theory, asked: string | undefined, io: I
   if (asked === undefined) return out;
   const { conventionsOption } = await import('./conventions-option.js');
   return [...out, { name: asked, ...lagrangianIn(theory, await conventionsOption(asked, io)) }];
+}
+
+/** Auxiliary fields in and others out, when that was asked for. */
+async function withRoute(
+  derivation: Derivation,
+  { linearise = [], integrate }: DeriveOptions,
+  onStep?: (what: string) => void,
+): Promise<Derivation> {
+  if (linearise.length === 0 && integrate === undefined) return derivation;
+  const { withAuxiliaryRoute } = await import('../auxiliary-route.js');
+  const fields = integrate?.split(',').map((name) => name.trim());
+  return withAuxiliaryRoute(derivation, { linearise, integrate: fields }, onStep);
 }
 
 /** Frames, classes and canonical fields, when they were asked for or there are assumptions that they may use. */

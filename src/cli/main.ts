@@ -46,6 +46,13 @@ export async function main(args: readonly string[], world: Io): Promise<number> 
     .option('--omega <Omega^2>', 'the same with a conformal factor of your own, for instance "1 + phi^2/M^2"')
     .option('--canonical', 'also look for canonical fields, where a kinetic term decouples')
     .option('--order <n>', 'order in the field of series where a canonical field has no closed form (default: 6)')
+    .option(
+      '--linearise <scalar>',
+      'make powers of a scalar linear by an auxiliary field and integrate the connection out: R, or curvature for every component',
+      collect,
+      [],
+    )
+    .option('--integrate <fields>', 'fields to integrate out, in order, for instance psi,phi (default: the connection)')
     .option('--covariant', 'also derive the field equations in index notation')
     .option('--momenta', 'the same with the field momenta kept as symbols')
     .option('--explain', 'also print which rules were applied and why each step is allowed')

@@ -9,6 +9,7 @@ import { rational } from '../algebra/rational.js';
 import { jetName } from '../algebra/ring.js';
 import type { BiScalarForm, Derivation, FluidValue, FriedmannForm, SpinElimination } from '../derivation.js';
 import type { CodeFunction, CodeModule, CodeOutput, CodeResult, JetsInput } from './code-description.js';
+import { currentFunctions } from './code-current.js';
 import { frameFunctions } from './code-frames.js';
 import { dimensionsIn, dimensionsOf, modelParameters } from './parameters.js';
 
@@ -33,6 +34,7 @@ export function codeModel(d: Derivation, { jacobian }: ModelOptions): CodeModule
     ...(d.friedmann ? friedmann(d.friedmann, dimension) : []),
     ...(typeof d.spin?.elimination === 'object' ? spin(d.spin.elimination) : []),
     ...(d.scalarTensor.form === 'bi-scalar' ? scalarTensor(d.scalarTensor, dimension) : []),
+    ...currentFunctions(d),
     ...frameFunctions(d),
   ];
   const drafts = jacobian ? [...base.slice(0, 2), jacobianOf(d), ...base.slice(2)] : base;

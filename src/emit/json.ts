@@ -10,6 +10,7 @@ import type { CovariantTheory, Derivation, ScalarTensorForm } from '../derivatio
 import { printLagrangian } from '../notation/print.js';
 import type { TensorSum } from '../tensor/expression.js';
 import { constrainedObject, constrainedSymbols } from './constrained-json.js';
+import { vectorObjects, vectorSymbols } from './every-k-json.js';
 import { factorsTex } from './latex-tensors.js';
 import { scalarFieldSymbols, scalarFieldsObject } from './scalar-fields-json.js';
 
@@ -75,7 +76,12 @@ function expressions(d: Derivation): Poly[] {
 
 /** Names of all symbols of any printed expression that are not fields, in the order of the ring. */
 export function parametersOf(d: Derivation): string[] {
-  const used = new Set([...expressions(d).flatMap(symbolsOf), ...constrainedSymbols(d), ...scalarFieldSymbols(d)]);
+  const used = new Set([
+    ...expressions(d).flatMap(symbolsOf),
+    ...constrainedSymbols(d),
+    ...scalarFieldSymbols(d),
+    ...vectorSymbols(d),
+  ]);
   return d.ring.generators.filter((g) => g.kind !== 'jet' && used.has(g.name)).map((g) => g.name);
 }
 
@@ -108,6 +114,7 @@ export function derivationObject(d: Derivation): Record<string, unknown> {
     ...(d.screening ? { screening: d.screening.map(infix) } : {}),
     ...(d.friedmann ? { friedmann: { rho_T: infix(d.friedmann.rhoT), p_T: infix(d.friedmann.pT) } } : {}),
     scalarTensor: scalarTensorObject(d.scalarTensor),
+    ...vectorObjects(d),
     ...scalarFieldsObject(d),
     ...constrainedObject(d, scalarTensorObject),
     ...(d.covariant ? { covariant: covariantObject(d.covariant) } : {}),

@@ -5,10 +5,12 @@
 import { remember } from '../algebra/memo.js';
 import type { Derivation } from '../derivation.js';
 import { analogueSection, checksSection, couplingsSection } from './latex-analogue.js';
+import { auxiliarySection } from './latex-auxiliary.js';
 import { canonicalSection } from './latex-canonical.js';
 import { constraintsSection, spinSection } from './latex-constrained.js';
 import { covariantSection } from './latex-covariant.js';
 import { type LatexOptions, type Passage, type Section, writerOf } from './latex-display.js';
+import { everyKSection } from './latex-every-k.js';
 import { framesSection, scalarsSection } from './latex-frames.js';
 import { equationsSection, friedmannSection, reductionSection } from './latex-results.js';
 import { commentText, escapeText, proseTex } from './latex-text.js';
@@ -43,6 +45,8 @@ function writeSections(derivation: Derivation, options: LatexOptions): readonly 
     constraintsSection(writer),
     spinSection(writer),
     analogueSection(writer),
+    everyKSection(writer),
+    auxiliarySection(writer),
     scalarsSection(writer),
     framesSection(writer),
     canonicalSection(writer),
@@ -61,6 +65,8 @@ const FOR_MANUSCRIPTS: ReadonlySet<string> = new Set([
   'constraints',
   'spin',
   'scalar-tensor',
+  'every-k',
+  'auxiliary',
   'frames',
   'canonical',
   'covariant',

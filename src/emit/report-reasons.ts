@@ -130,6 +130,23 @@ export function reasonsOf(sectionId: string, d: Derivation): Reasons {
           prose`For a conformally coupled scalar the fields are those of Ann. Phys. 82 (1974) 535: a hyperbolic tangent on one side, a cotangent on the other.`,
         ],
       };
+    case 'every-k':
+      return {
+        allowed: [
+          prose`A scalar of the background knows the metric only through the rate at which volumes grow and the curvature of space, and both are scalars of the vector normal to space. Each step back to the metric replaces terms by others with the same equations.`,
+        ],
+        rule: [
+          prose`Gauss' equation and integration by parts, as stated in rules/auxiliary.`,
+          prose`The root of the current is a cuscuton in the simplest case, Phys. Rev. D 75 (2007) 083513 and 123509.`,
+        ],
+      };
+    case 'auxiliary':
+      return {
+        allowed: [
+          prose`A field that enters without derivatives may be replaced by the solution of its own equation: the remaining equations do not change. Every solution was substituted into its equation, and every branch is kept.`,
+        ],
+        rule: [prose`The rules of rules/auxiliary, by the names given in the text.`],
+      };
     case 'couplings':
       return {
         allowed: [

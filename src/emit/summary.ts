@@ -11,6 +11,7 @@ import { sumOf, type Viewer, viewerOf } from './display.js';
 import { componentTable } from './display-symbols.js';
 import { scalarFieldSections } from './scalar-fields-summary.js';
 import { branchLines, constraintTensorLines, spinLines } from './summary-constrained.js';
+import { auxiliaryLines, everyKLines } from './summary-every-k.js';
 import { dividedText, unicodeTensorTerms, unicodeTerms } from './unicode.js';
 
 export interface SummaryOptions {
@@ -86,6 +87,8 @@ export function summary(d: Derivation, options: SummaryOptions): string {
   section('Branches of the constraints', branchLines(d, wrapped));
   section('Matter with spin', spinLines(d, viewer, wrapped));
   section('Metric analogue', analogueLines(d, viewer));
+  section('Every spatial curvature', everyKLines(d, wrapped));
+  section('Auxiliary fields', auxiliaryLines(d, wrapped));
   for (const { title, lines } of scalarFieldSections(d))
     section(
       title,

@@ -6,6 +6,7 @@ import { select } from '../algebra/collect.js';
 import type { Fraction } from '../algebra/fraction.js';
 import type { Poly } from '../algebra/poly.js';
 import type { BiScalarForm, Derivation, FriedmannForm, SpinElimination } from '../derivation.js';
+import { currentFunctions } from './code-current.js';
 import { frameFunctions } from './code-frames.js';
 import { commentText, propertyKey, stringLiteral } from './identifiers.js';
 import { dimensionsIn, dimensionsOf, modelParameters, type Parameter } from './parameters.js';
@@ -268,9 +269,9 @@ function spin(w: Writer, { solution, rho, p }: SpinElimination): string[] {
   ];
 }
 
-/** The conformal frames that were asked for. */
+/** The current and its singular surfaces, and the conformal frames that were asked for. */
 const frames = (w: Writer): string[] =>
-  frameFunctions(w.derivation).map(({ name, doc: lines, result, outputs }) => {
+  [...currentFunctions(w.derivation), ...frameFunctions(w.derivation)].map(({ name, doc: lines, result, outputs }) => {
     if (result.kind === 'number')
       return writeFunction(w.derivation, {
         name,

@@ -59,7 +59,7 @@ export interface AuxiliaryRule {
   readonly does: Executor;
   /** The pattern, for rules about one field. */
   readonly enters: Poly | undefined;
-  /** What the rule says, as a formula for readers, for rules about a whole form. */
+  /** What the rule says, as a formula in TeX, for rules about a whole form; divergences are dropped where it says ≃. */
   readonly statement: string;
   /** Results in letters, by key: `field`, `becomes`, `constraint`, `charge`, `stationary`. */
   readonly results: ReadonlyMap<string, Poly>;

@@ -64,6 +64,7 @@ describe('derivation.json', () => {
       'screening',
       'friedmann',
       'scalarTensor',
+      'everyK',
       'checks',
       'warnings',
     ]);
