@@ -132,7 +132,9 @@ export function scalarFieldSections(d: Derivation): SummarySection[] {
       lines:
         fields.canonical.length === 0
           ? [line('no kinetic term decouples')]
-          : fields.canonical.flatMap((r) => canonicalLines(texts, r)),
+          : fields.canonical.flatMap((r) =>
+              canonicalLines(texts, r, fields.canonical.find((c) => c.scalar === r.scalar) === r),
+            ),
     });
   return out;
 }
@@ -229,7 +231,8 @@ function fieldTerms(texts: Texts, terms: readonly FieldTerm[], pair: readonly [s
   });
 }
 
-function canonicalLines(texts: Texts, r: CanonicalResult): (readonly [string, readonly string[]])[] {
+/** The rescaled current is the same in every frame, and is printed with the first. */
+function canonicalLines(texts: Texts, r: CanonicalResult, isFirst: boolean): (readonly [string, readonly string[]])[] {
   const field = unicodeName(r.scalar);
   const z = 'z';
   const frame = { einstein: 'Einstein frame', chosen: 'chosen frame', jordan: 'frame of the form' }[r.frame];
@@ -247,7 +250,7 @@ function canonicalLines(texts: Texts, r: CanonicalResult): (readonly [string, re
       [...terms, '+ …'],
     ]);
   }
-  if (r.weight) {
+  if (r.weight && isFirst) {
     const powers = weightPowers(r.weight);
     const raised = (base: string, n: Rational): string =>
       n.num === 0n ? '' : n.num === n.den ? ` |${base}|` : ` |${base}|^(${n.num}${n.den === 1n ? '' : `/${n.den}`})`;
