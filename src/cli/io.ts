@@ -9,5 +9,5 @@ export interface Io {
   readonly interactive: boolean;
 }
 
-/** Exit codes: 0 done, 1 the input is at fault, 2 this program is. */
-export const EXIT = { done: 0, input: 1, fault: 2 } as const;
+/** Exit codes: 0 done, 1 the input is at fault, 2 this program is, 3 a question was left undecided within the bound. */
+export const EXIT = { done: 0, input: 1, fault: 2, undecided: 3 } as const;

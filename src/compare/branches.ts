@@ -40,11 +40,18 @@ export interface DeadEnd {
   readonly nonzero: readonly Poly[];
   /** Polynomial in the couplings that would have to vanish. */
   readonly needs: Poly;
+  /** Whether nothing but chosen factors was divided by on the way; otherwise a pivot may vanish on the branch. */
+  readonly proved: boolean;
 }
 
 export interface Solutions {
   readonly branches: readonly Branch[];
   readonly deadEnds: readonly DeadEnd[];
+}
+
+/** The choices that single out a branch, as relations. */
+export function relationsOf({ zero, nonzero }: Pick<Branch, 'zero' | 'nonzero'>): string[] {
+  return [...zero.map((p) => `${infix(p)} = 0`), ...nonzero.map((p) => `${infix(p)} != 0`)];
 }
 
 interface State {
@@ -53,6 +60,8 @@ interface State {
   readonly zero: readonly Poly[];
   readonly nonzero: readonly Poly[];
   readonly pivots: readonly Poly[];
+  /** Whether no pivot with a variable was divided by. */
+  readonly proved: boolean;
 }
 
 /**
@@ -69,7 +78,7 @@ export function solutionsOf(
 ): Solutions {
   const branches: Branch[] = [];
   const deadEnds: DeadEnd[] = [];
-  const open: State[] = [{ links: [], queue: given, zero: [], nonzero, pivots: [] }];
+  const open: State[] = [{ links: [], queue: given, zero: [], nonzero, pivots: [], proved: true }];
   for (let rounds = 0; open.length > 0; rounds++) {
     if (rounds > MAX_ROUNDS) throw new BoundError(`more than ${MAX_ROUNDS} steps of elimination`);
     if (open.length + branches.length > MAX_BRANCHES) throw new BoundError(`more than ${MAX_BRANCHES} branches`);
@@ -80,25 +89,30 @@ export function solutionsOf(
       continue;
     }
     const next = advance({ ...arena, pivots: [...state.pivots] }, state, trial);
-    if ('needs' in next) deadEnds.push(next);
-    else open.push(...next);
+    open.push(...next.states);
+    if (next.deadEnd) deadEnds.push(next.deadEnd);
   }
   return { branches, deadEnds };
 }
 
+interface Advance {
+  readonly states: readonly State[];
+  readonly deadEnd?: DeadEnd;
+}
+
 /** Takes the simplest polynomial of the queue into the chain. Where it splits, the generic branch comes last. */
-function advance(arena: Arena, state: State, trial: readonly Poly[]): State[] | DeadEnd {
+function advance(arena: Arena, before: State, trial: readonly Poly[]): Advance {
   const { space } = arena;
-  const chosen = simplest(arena, state.queue);
-  const queue = state.queue.filter((known) => known !== chosen);
-  const { rest, steps } = reduce(arena, chosen.poly, state.links);
+  const chosen = simplest(arena, before.queue);
+  const queue = before.queue.filter((known) => known !== chosen);
+  const { rest, steps } = reduce(arena, chosen.poly, before.links);
   const { pivots } = arena;
-  if (isZero(rest)) return [{ ...state, queue, pivots }];
+  if (isZero(rest)) return { states: [{ ...before, queue, pivots }] };
 
   const { unit, variables, rest: reduced } = splitFactors(space, rest);
   let left = reduced;
   let divided: Factors = variables.map(([g, n]) => ({ base: variable(arena, g), power: n }));
-  for (const base of [...state.nonzero, ...arena.pivots]) {
+  for (const base of [...before.nonzero, ...arena.pivots]) {
     if (left.size === 1) break;
     const out = divideOut(space, arena.budget, left, base);
     left = out.rest;
@@ -111,54 +125,44 @@ function advance(arena: Arena, state: State, trial: readonly Poly[]): State[] | 
     if (out.power > 0) divided = mergeFactors(divided, [{ base, power: out.power }]);
   }
   const tail = splitFactors(space, left);
-  const choices = divided.map((f) => f.base).filter((base) => mayVanish(arena, state, base));
+  const choices = divided.map((f) => f.base).filter((base) => mayVanish(arena, before, base));
+  const risky = [...divided, ...steps.flatMap((step) => step.d)].some(
+    ({ base }) => involvesVariable(arena, base) && ![...before.nonzero, ...choices].some((p) => equals(p, base)),
+  );
+  const state = { ...before, queue, pivots, proved: before.proved && !risky };
   const alone = tail.rest.size === 1;
-  if (alone && choices.length === 0) return { zero: state.zero, nonzero: state.nonzero, needs: tail.rest };
-  const deadEnd = !alone && leaderOf(arena, tail.rest) === undefined;
-  if (deadEnd && choices.length === 0) return { zero: state.zero, nonzero: state.nonzero, needs: tail.rest };
-
   const link = (poly: Poly, among: Factors, nonzero: readonly Poly[]): State => {
     const all = multiply(unit, tail.unit);
     const known: Known = { kind: 'combined', poly, base: chosen, steps, unit: all, divided: among };
-    return withLink(arena, { ...state, queue, nonzero }, known, leaderOf(arena, poly)!);
+    return withLink(arena, { ...state, nonzero }, known, leaderOf(arena, poly)!);
   };
   // A single factor is no choice: it vanishes.
   const [only] = choices;
-  if (alone && choices.length === 1 && divided.find((f) => equals(f.base, only!))!.power === 1)
-    return [
-      link(
-        only!,
-        divided.filter((f) => !equals(f.base, only!)),
-        state.nonzero,
-      ),
-    ];
+  if (alone && choices.length === 1 && divided.find((f) => equals(f.base, only!))!.power === 1) {
+    const others = divided.filter((f) => !equals(f.base, only!));
+    return { states: [link(only!, others, state.nonzero)] };
+  }
 
   // One branch for each factor that may vanish, those before it taken not to; the last one has none of them.
-  const out: State[] = [];
-  choices.forEach((base, i) => {
-    const split: Known = {
-      kind: 'given',
-      poly: base,
-      name: `${infix(base)} = 0`,
-    };
-    const zero = [...state.zero, base];
-    out.push({
-      links: state.links,
-      queue: [...queue, split],
-      zero,
-      nonzero: [...state.nonzero, ...choices.slice(0, i)],
-      pivots,
-    });
+  const states = choices.map((base, i): State => {
+    const split: Known = { kind: 'given', poly: base, name: `${infix(base)} = 0` };
+    const nonzero = [...state.nonzero, ...choices.slice(0, i)];
+    return { ...state, queue: [...queue, split], zero: [...state.zero, base], nonzero };
   });
-  if (!alone && !deadEnd) out.push(link(tail.rest, divided, [...state.nonzero, ...choices]));
-  return out;
+  const nonzero = [...state.nonzero, ...choices];
+  if (!alone && leaderOf(arena, tail.rest) !== undefined)
+    return { states: [...states, link(tail.rest, divided, nonzero)] };
+  return { states, deadEnd: { zero: state.zero, nonzero, needs: tail.rest, proved: state.proved } };
 }
 
 const variable = ({ space }: Arena, g: number): Poly => generator(space.ring, space.ring.generators[g]!.name);
 
+const involvesVariable = ({ space }: Arena, p: Poly): boolean =>
+  space.places.some((_, g) => isVariable(space, g) && degreeIn(p, g) > 0);
+
 /** Whether a factor is no known non-zero quantity: it involves a variable and has not been chosen before. */
 function mayVanish(arena: Arena, { nonzero }: State, base: Poly): boolean {
-  if (!arena.space.places.some((_, g) => isVariable(arena.space, g) && degreeIn(base, g) > 0)) return false;
+  if (!involvesVariable(arena, base)) return false;
   return ![...nonzero, ...arena.pivots].some((p) => equals(p, base));
 }
 

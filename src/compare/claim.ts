@@ -8,7 +8,7 @@ import { errorAt, InputError } from '../notation/diagnostics.js';
 import { plainPassage } from '../notation/passage.js';
 import type { Expression } from '../notation/syntax.js';
 import { withoutDots } from './dots.js';
-import { divideIn, isVariable, splitFactors } from './factors.js';
+import { basesOf, divideIn, isVariable } from './factors.js';
 import type { JetSpace } from './jet-space.js';
 import { negateQuotient, type Quotient } from './quotient.js';
 import { evaluate, parseSides, type Vocabulary } from './vocabulary.js';
@@ -132,10 +132,7 @@ function cleared(
     });
   let shift: Poly = constant(ring, 1);
   for (const [g, n] of lowest) shift = multiply(shift, power(generator(ring, ring.generators[g]!.name), -n));
-  const { variables, rest } = splitFactors(space, multiply(common, shift));
-  const divisors = variables.map(([g]) => generator(ring, ring.generators[g]!.name));
-  if (rest.size > 1) divisors.push(rest);
-  return { polys: polys.map((p) => multiply(p, shift)), divisors };
+  return { polys: polys.map((p) => multiply(p, shift)), divisors: basesOf(space, multiply(common, shift)) };
 }
 
 /** A factor that makes `have` a multiple of `want`: want itself, less what they obviously share. */

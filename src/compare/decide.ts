@@ -4,17 +4,17 @@
  */
 
 import { symbolsOf } from '../algebra/collect.js';
-import { splitUnit } from '../algebra/division.js';
 import { infix } from '../algebra/infix.js';
 import { remember } from '../algebra/memo.js';
 import { equals, generator, isZero, type Poly } from '../algebra/poly.js';
 import type { Derivation } from '../derivation.js';
 import { errorAt, InputError } from '../notation/diagnostics.js';
 import { plainPassage } from '../notation/passage.js';
-import type { Branch } from './branches.js';
+import { type Branch, relationsOf } from './branches.js';
 import { BoundError } from './budget.js';
 import { type Claim, readClaim } from './claim.js';
 import { consequence, type Residual, type Verdict } from './consequence.js';
+import { basesOf } from './factors.js';
 import type { JetSpace } from './jet-space.js';
 import { RANKINGS, type RankingName } from './ranking.js';
 import { type Repair, repairsOf } from './repair.js';
@@ -29,6 +29,8 @@ export interface ClaimOptions {
   readonly branch?: readonly string[];
   /** Whether the matter may have any equation of state. */
   readonly anyMatter?: boolean;
+  /** How far eliminations may go, a short try first; `BOUNDS` when absent. */
+  readonly bounds?: readonly Bound[];
 }
 
 /** The verdict on one branch of the equations. */
@@ -87,9 +89,11 @@ interface Question {
   readonly branch: readonly string[];
   readonly zero: readonly { readonly name: string; readonly poly: Poly }[];
   readonly nonzero: readonly Poly[];
+  readonly bounds: readonly Bound[];
 }
 
-function questionOf(d: Derivation, { claims, where = [], branch = [] }: ClaimOptions): Question {
+function questionOf(d: Derivation, options: ClaimOptions): Question {
+  const { claims, where = [], branch = [], bounds = BOUNDS } = options;
   const vocabulary = vocabularyOf(d, where);
   const chosen = branch.map((text) => readBranch(vocabulary, text));
   const equal = chosen.filter((c) => c.equal);
@@ -97,8 +101,9 @@ function questionOf(d: Derivation, { claims, where = [], branch = [] }: ClaimOpt
     vocabulary,
     claims: claims.map((text) => readClaim(vocabulary, text)),
     branch,
+    bounds,
     zero: [...vocabulary.defining, ...equal].map(({ text, poly }) => ({ name: text, poly })),
-    nonzero: chosen.filter((c) => !c.equal).map((c) => splitUnit(c.poly).reduced),
+    nonzero: chosen.filter((c) => !c.equal).flatMap((c) => basesOf(vocabulary.space, c.poly)),
   };
 }
 
@@ -120,7 +125,7 @@ class Settlement {
   report(claim: Claim): ClaimReport {
     this.used = true;
     let best: ClaimReport | undefined;
-    for (const bound of BOUNDS)
+    for (const bound of this.question.bounds)
       for (const ranking of RANKINGS) {
         const report = this.under(ranking, bound, claim);
         if (report.verdict !== 'undecided') return report;
@@ -145,12 +150,17 @@ class Settlement {
     if (solved instanceof BoundError)
       return { ...base, verdict: 'undecided', reason: `solving the equations needs ${solved.message}`, branches: [] };
     const { branches } = solved.solutions;
-    const results = branches.map(
-      (b): BranchVerdict => ({
-        branch: this.relations(b),
-        result: consequence(solved, b, claim.poly),
-      }),
-    );
+    for (const divisor of claim.divisors)
+      if (branches.every((b) => consequence(solved, b, divisor).verdict === 'follows'))
+        throw dividesByZero(claim, divisor);
+    const results = branches.map((b): BranchVerdict => {
+      const branch = this.relations(b);
+      const result = consequence(solved, b, claim.poly);
+      if (result.verdict !== 'follows') return { branch, result };
+      // What singles the branch out is no further condition.
+      const conditions = result.conditions.filter((c) => !branch.includes(c));
+      return { branch, result: { ...result, conditions } };
+    });
     const fails = branches.filter((_, i) => results[i]!.result.verdict === 'fails');
     const open = results.map((r) => r.result).find((r) => r.verdict === 'undecided');
     const verdict = fails.length > 0 ? 'fails' : open ? 'undecided' : 'holds';
@@ -194,6 +204,12 @@ class Settlement {
 const ratesOf = ({ rates, ring }: JetSpace): Poly[] =>
   [...new Set(rates.values())].filter((name) => ring.position.has(name)).map((name) => generator(ring, name));
 
+function dividesByZero({ text }: Claim, divisor: Poly): InputError {
+  const place = plainPassage(text, '--claim').locate(0, text.length);
+  const message = `the claim divides by ${infix(divisor)}, which vanishes on the equations`;
+  return new InputError([errorAt(place, 'division-by-zero', message, 'multiply the claim out')]);
+}
+
 function noSolution(branch: readonly string[], { solutions }: Solved): InputError {
   const where = branch.length === 0 ? '' : ` with ${branch.join(', ')}`;
   const wanted = solutions.deadEnds.map((e) => e.needs).filter((p) => symbolsOf(p).length > 0);
@@ -218,11 +234,6 @@ function combined(own: ClaimReport, general: ClaimReport | undefined): ClaimRepo
     residual: lone ? simplest(residuals) : own.residual,
     repairs: general.repairs.length > 0 ? general.repairs : own.repairs,
   };
-}
-
-/** The choices that single out a branch, as relations. */
-export function relationsOf({ zero, nonzero }: Pick<Branch, 'zero' | 'nonzero'>): string[] {
-  return [...zero.map((p) => `${infix(p)} = 0`), ...nonzero.map((p) => `${infix(p)} != 0`)];
 }
 
 interface ChosenBranch {

@@ -36,6 +36,13 @@ export function splitFactors(
   return { unit: outside, variables, rest: reduced };
 }
 
+/** What must not vanish for p not to vanish, besides couplings and scale factors: its variables, and the rest of it. */
+export function basesOf(space: JetSpace, p: Poly): Poly[] {
+  const { variables, rest } = splitFactors(space, p);
+  const bases = variables.map(([g]) => generator(space.ring, space.ring.generators[g]!.name));
+  return rest.size > 1 ? [...bases, rest] : bases;
+}
+
 /** Whether every variable occurs to powers ≥ 0. */
 export function isPolynomial(space: JetSpace, p: Poly): boolean {
   const { low } = exponentRange(p.ring, p.keys);
@@ -70,6 +77,7 @@ export function divideOut(
 ): { readonly rest: Poly; readonly power: number } {
   let rest = p;
   let n = 0;
+  if (isUnit(space, base)) throw new Error('a unit divides for ever');
   while (n < most && rest.size > 0) {
     budget.spend(rest.size);
     const quotient = divideIn(space, rest, base);

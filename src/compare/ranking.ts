@@ -7,7 +7,9 @@ import type { JetSpace, Place } from './jet-space.js';
 
 /** Which functions are solved for first. They are tried in this order until one stays within the bound. */
 export const RANKINGS = ['connection', 'expansion', 'matter', 'metric'] as const;
-export type RankingName = (typeof RANKINGS)[number];
+/** These put given fields above everything else, and solve the rest for matter or for the metric. */
+export const ELIMINATIONS = ['elimination', 'driven elimination'] as const;
+export type RankingName = (typeof RANKINGS)[number] | (typeof ELIMINATIONS)[number];
 
 /** Rank by generator; -1 for couplings. */
 export type Ranking = readonly number[];
@@ -20,16 +22,23 @@ const BLOCKS: Readonly<Record<RankingName, Readonly<Record<Place['role'], number
   matter: { unknown: 6, multiplier: 4, connection: 2, rate: 2, matter: 1, none: 0 },
   // Everything but the metric and its matter goes first.
   metric: { unknown: 6, multiplier: 5, connection: 4, matter: 3, rate: 2, none: 0 },
+  elimination: { unknown: 6, multiplier: 4, connection: 2, matter: 3, rate: 2, none: 0 },
+  'driven elimination': { unknown: 6, multiplier: 4, connection: 2, rate: 2, matter: 1, none: 0 },
 };
+/** Rankings in which the densities are known functions of the scale factor. */
+const DRIVEN: ReadonlySet<RankingName> = new Set(['matter', 'driven elimination']);
 
-/** Comparison keys: block, order of the derivative. A density that the constraint is solved for is always the highest. */
-function keyOf(name: RankingName, { kind, role, order }: Place): readonly [number, number] {
-  if (kind === 'density') return [7, 0];
+/** Comparison keys: block, order of the derivative. */
+function keyOf(name: RankingName, place: Place, gone: ReadonlySet<string>): readonly [number, number] {
+  const { kind, role, order } = place;
+  if (kind === 'density') return DRIVEN.has(name) ? [0, 1] : [8, 0];
+  if (gone.has(place.field)) return [7, order];
   return [BLOCKS[name][role], name === 'expansion' && role === 'rate' ? order + 1 : order];
 }
 
-export function rankingOf(space: JetSpace, name: RankingName): Ranking {
-  const keys = space.places.map((place) => keyOf(name, place));
+/** @param gone fields that are to be eliminated. */
+export function rankingOf(space: JetSpace, name: RankingName, gone: ReadonlySet<string> = new Set()): Ranking {
+  const keys = space.places.map((place) => keyOf(name, place, gone));
   const order = space.places.map((_, g) => g).filter((g) => space.places[g]!.kind !== 'coupling');
   // The ring lists matter and connection before rates, each with its highest jet first.
   const within = (g: number): number => {

@@ -5,7 +5,7 @@ import { splitUnit } from '../algebra/division.js';
 import { isZero, type Poly } from '../algebra/poly.js';
 import type { Derivation } from '../derivation.js';
 import { type Branch, type Solutions, solutionsOf } from './branches.js';
-import { Budget } from './budget.js';
+import { BoundError, Budget } from './budget.js';
 import type { Arena } from './elimination.js';
 import { equationsIn, type JetSpace } from './jet-space.js';
 import type { Known } from './known.js';
@@ -14,7 +14,7 @@ import { type RankingName, rankingOf } from './ranking.js';
 /** How far an elimination may go: products of terms, and terms of one polynomial. A short try under each ranking comes first. */
 export const BOUNDS = [
   { products: 1_500_000, terms: 1_500 },
-  { products: 40_000_000, terms: 8_000 },
+  { products: 15_000_000, terms: 4_000 },
 ] as const;
 export type Bound = (typeof BOUNDS)[number];
 
@@ -61,9 +61,17 @@ export function equationsOf(
   return { space, given, nonzero: extra.nonzero ?? [], trial: components.filter((p) => p.size > 1) };
 }
 
-/** @throws BoundError when the bound is exceeded. */
-export function solve(equations: Equations, ranking: RankingName, bound: Bound): Solved {
+/** @throws BoundError when the bound is exceeded, or when no solution is found although there may be some. */
+export function solve(
+  equations: Equations,
+  ranking: RankingName,
+  bound: Bound,
+  gone: ReadonlySet<string> = new Set(),
+): Solved {
   const { space, given, nonzero, trial } = equations;
-  const arena: Arena = { space, ranking: rankingOf(space, ranking), budget: budgetOf(bound), pivots: [] };
-  return { ...equations, ranking, bound, arena, solutions: solutionsOf(arena, given, nonzero, trial) };
+  const arena: Arena = { space, ranking: rankingOf(space, ranking, gone), budget: budgetOf(bound), pivots: [] };
+  const solutions = solutionsOf(arena, given, nonzero, trial);
+  if (solutions.branches.length === 0 && solutions.deadEnds.some((e) => !e.proved))
+    throw new BoundError('another order of elimination: a pivot may vanish on every solution');
+  return { ...equations, ranking, bound, arena, solutions };
 }

@@ -15,8 +15,9 @@ import { type Passage, plainPassage } from '../notation/passage.js';
 import { polyOfScalar } from '../notation/scalar-poly.js';
 import type { Expression } from '../notation/syntax.js';
 import { UNIT_SYMBOLS } from '../notation/units.js';
+import { BoundError } from './budget.js';
 import { withoutDots } from './dots.js';
-import { type JetSpace, jetSpace } from './jet-space.js';
+import { type JetSpace, jetSpace, MAX_ORDER } from './jet-space.js';
 import {
   addQuotients,
   divideQuotients,
@@ -124,8 +125,11 @@ export function parseSides(
 ): { readonly left: Expression; readonly right: Expression } {
   const problems: ConstructorParameters<typeof InputError>[0][number][] = [];
   const sides = parseEquation(passage, { tensors: false, jets: true, isSymbol, names }, problems);
-  if (!sides) throw new InputError(problems);
-  return sides;
+  if (sides) return sides;
+  const hint = 'define it with --where, or mend the name';
+  throw new InputError(
+    problems.map((d) => (d.code === 'unknown-symbol' && d.hint?.startsWith('declare it') ? { ...d, hint } : d)),
+  );
 }
 
 function parseDefinition(text: string, known: ReadonlySet<string>): ParsedDefinition {
@@ -181,6 +185,9 @@ function functionOf(name: string): { readonly name: string; readonly order: numb
   return jet ? { name: jet[1]!, order: Number(jet[2]) } : { name, order: 0 };
 }
 
+const tooHigh = (place: Place): InputError =>
+  refuse(place, 'exponent-limit', `a time derivative beyond the order ${MAX_ORDER}`, 'smaller orders only');
+
 /** Terms that a typed expression may come to when it is multiplied out. */
 const MAX_TYPED_TERMS = 20_000;
 
@@ -202,7 +209,13 @@ export function evaluate(vocabulary: Vocabulary, node: Expression, passage: Pass
         return quotientOf(generator(ring, jetName(name, order)));
       let value = meanings.get(name);
       if (!value) throw refuse(place(), 'unknown-symbol', `unknown symbol ${name}`, 'define it with --where');
-      for (let n = 0; n < order; n++) value = checked(rateOfQuotient(space, value));
+      if (order > MAX_ORDER) throw tooHigh(place());
+      try {
+        for (let n = 0; n < order; n++) value = checked(rateOfQuotient(space, value));
+      } catch (error) {
+        if (error instanceof BoundError) throw tooHigh(place());
+        throw error;
+      }
       return value;
     }
     case 'sum':
