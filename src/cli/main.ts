@@ -4,6 +4,7 @@
 import { Command, CommanderError, Option } from 'commander';
 import { InputError, renderDiagnostic } from '../notation/diagnostics.js';
 import { addCodeCommands } from './code-commands.js';
+import { addCompareCommand } from './compare-options.js';
 import { EXIT, type Io } from './io.js';
 import { addLagrangianCommands } from './lagrangian-commands.js';
 
@@ -69,6 +70,7 @@ export async function main(args: readonly string[], world: Io): Promise<number> 
   };
   addLagrangianCommands(program, io, finished);
   addCodeCommands(program, io, finished);
+  addCompareCommand(program, io, finished);
   try {
     await program.parseAsync([...args], { from: 'user' });
     return code;
