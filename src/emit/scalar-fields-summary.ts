@@ -142,10 +142,11 @@ export function scalarFieldSections(d: Derivation): SummarySection[] {
 function frameSection(d: Derivation, texts: Texts, frame: ConformalFrame): SummarySection {
   const isEinstein = frame.kind === 'einstein';
   const kinetic = [...frame.functions.kinetic].filter(([, f]) => !isZero(f.numerator));
+  const has = (values: Iterable<Fraction>): boolean => [...values].some((f) => !isZero(f.numerator));
   const action = [
     isEinstein ? `${frame.side === 1 ? '' : '−'}½ M² R̃` : 'G4/Ω² R̃',
     ...(kinetic.length > 0 ? ['Σ K̃_AB X̃^AB'] : []),
-    '√|J²|/Ω³',
+    ...(has(frame.functions.current.values()) ? ['√|J²|/Ω³'] : []),
   ].join(' + ');
   const omega2 = isEinstein ? `${frame.side === 1 ? '' : '−'}2 G4/M²` : texts.poly(frame.omega2.numerator);
   const matter = d.fluids.length > 0 ? '; matter couples to Ω⁻² g̃' : '';
@@ -158,7 +159,9 @@ function frameSection(d: Derivation, texts: Texts, frame: ConformalFrame): Summa
   return {
     title: isEinstein ? 'Einstein frame' : 'Chosen conformal frame',
     lines: [
-      line(`√−g̃ [ ${action} − V/Ω⁴ ] with g̃ = Ω² g, Ω² = ${omega2}, ${where}${matter}`),
+      line(
+        `√−g̃ [ ${action}${has([frame.functions.potential]) ? ' − V/Ω⁴' : ''} ] with g̃ = Ω² g, Ω² = ${omega2}, ${where}${matter}`,
+      ),
       ...kinetic.map(([key, f]) => line(`K̃_${pairName(key)} = ${texts.fraction(f)}`)),
       ...signatureLines(texts, frame),
     ],
