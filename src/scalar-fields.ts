@@ -6,7 +6,7 @@ import { moveTo, substitute } from './algebra/collect.js';
 import type { Fraction } from './algebra/fraction.js';
 import { generator, isZero, type Poly } from './algebra/poly.js';
 import { type Knowledge, knowledgeOf, NEGATIVE, POSITIVE, signOf } from './algebra/signs.js';
-import { type Antiderivative, antiderivativeOf, integralCalls } from './cas/antiderivative.js';
+import { type Antiderivative, antiderivativesOf, integralCalls } from './cas/antiderivative.js';
 import type { BiScalarForm, Check, Derivation } from './derivation.js';
 import { InputError } from './notation/diagnostics.js';
 import { plainPassage } from './notation/passage.js';
@@ -161,8 +161,8 @@ export async function withScalarFields(
       holds: true,
     });
   const used = [
-    ...frames.flatMap((f) => (f.found ? [...f.frame.signature.used, ...f.frame.domain.used] : [])),
-    ...classification.scalars.flatMap((c) => c.used),
+    ...frames.flatMap((f) => (f.found ? usedIn(f.frame) : [])),
+    ...classification.scalars.flatMap((c) => [...c.used, ...(c.sign?.sign.used ?? [])]),
     ...classification.bound.used,
     ...canonical.flatMap((c) => [
       ...c.eta.used,
@@ -183,6 +183,13 @@ export async function withScalarFields(
   });
 }
 
+/** Assumptions that decided a sign of a frame, or a factor of one. */
+const usedIn = ({ signature, domain }: ConformalFrame): readonly string[] => [
+  ...signature.determinant.sign.used,
+  ...[...signature.diagonal.values()].flatMap((s) => s.sign.used),
+  ...domain.used,
+];
+
 /** Without assumptions only the scales are known to be positive. */
 function scalesPositive({ ring, theory, relations }: Derivation): Knowledge {
   const scales = theory.symbols.filter((s) => s.role === 'scale' && !relations.eliminated.has(s.name));
@@ -199,23 +206,24 @@ async function canonicalFields(
 ): Promise<CanonicalResult[]> {
   const found = [...new Set(outcomes)].flatMap((o) => (o.found ? [o.frame] : []));
   const jordan = { kind: 'jordan' as const, functions: jordanFrame(form), knowledge, omega2: undefined };
-  const out: CanonicalResult[] = [];
-  let room = MAX_CALLS;
-  for (const frame of [...found, jordan])
-    for (const scalar of roles.scalars) {
-      const candidates = candidatesOf(form);
+  const candidates = candidatesOf(form);
+  const fields = [...found, jordan].flatMap((frame) =>
+    roles.scalars.flatMap((scalar) => {
       const field = canonicalField(scalar, frame.functions.kinetic, candidates, frame.knowledge, order);
-      if (!field) continue;
-      const wanted = field.cases.filter((c) => c.unit !== undefined).slice(0, room);
-      room -= wanted.length;
-      const answers = await Promise.all(
-        field.cases.map((c) =>
-          wanted.includes(c) ? antiderivativeOf(c.square, { timeLimitMs: TIME_LIMIT_MS }) : Promise.resolve(undefined),
-        ),
-      );
-      out.push(solved(form, roles, frame, field, answers, frame.knowledge, order, candidates));
-    }
-  return out;
+      return field ? [{ frame, field }] : [];
+    }),
+  );
+  // A power needs no package. The others are asked for together, and meanwhile the functions are rewritten.
+  const wanted = fields.flatMap(({ field }) => field.cases.filter((c) => c.unit !== undefined)).slice(0, MAX_CALLS);
+  const asked = antiderivativesOf(
+    wanted.map((c) => c.square),
+    { timeLimitMs: TIME_LIMIT_MS },
+  );
+  const results = fields.map(({ frame, field }) =>
+    solved(form, roles, frame, field, order, candidates, frame.knowledge),
+  );
+  const answers = await asked;
+  return results.map((make) => make((c) => answers[wanted.indexOf(c)]));
 }
 
 type AnyFrame = Pick<ConformalFrame, 'functions'> & {
@@ -228,35 +236,35 @@ function solved(
   roles: BiScalarRoles,
   frame: AnyFrame,
   field: CanonicalField,
-  answers: readonly (Antiderivative | undefined)[],
-  knowledge: Knowledge,
   order: number,
   candidates: readonly Poly[],
-): CanonicalResult {
+  knowledge: Knowledge,
+): (answer: (c: CanonicalCase) => Antiderivative | undefined) => CanonicalResult {
   const other = roles.scalars.find((q) => q !== field.scalar) ?? field.scalar;
   const weight = other === field.scalar ? undefined : currentWeight(form.current, other, field.scalar);
   const verdict = weight ? signOf(weight.g, knowledge) : { signs: POSITIVE, used: [] };
   const sign = verdict.signs === POSITIVE ? 1 : verdict.signs === NEGATIVE ? -1 : undefined;
   const rewritten = (f: Fraction, c: CanonicalCase, b: Branch) =>
     inNewFields(f, field.scalar, other, c, b, weight, sign, candidates);
-  const cases = field.cases.map(
-    (c, i): SolvedCase => ({
-      ...c,
-      antiderivative: answers[i],
-      functions: c.branches.map((b) => ({
-        branch: b,
-        omega2: frame.omega2 && rewritten(frame.omega2, c, b),
-        potential: rewritten(frame.functions.potential, c, b),
-      })),
-    }),
+  const functions = field.cases.map((c) =>
+    c.branches.map((b) => ({
+      branch: b,
+      omega2: frame.omega2 && rewritten(frame.omega2, c, b),
+      potential: rewritten(frame.functions.potential, c, b),
+    })),
   );
-  return {
-    ...field,
-    frame: frame.kind,
-    cases,
-    isClosed: cases.length > 0 && cases.every((c) => c.branches.length > 0 || c.antiderivative !== undefined),
-    weight,
-    eta: { sign, used: sign === undefined ? [] : verdict.used },
-    order,
+  return (answer) => {
+    const cases = field.cases.map(
+      (c, i): SolvedCase => ({ ...c, antiderivative: answer(c), functions: functions[i]! }),
+    );
+    return {
+      ...field,
+      frame: frame.kind,
+      cases,
+      isClosed: cases.length > 0 && cases.every((c) => c.branches.length > 0 || c.antiderivative !== undefined),
+      weight,
+      eta: { sign, used: sign === undefined ? [] : verdict.used },
+      order,
+    };
   };
 }

@@ -11,7 +11,7 @@ import {
   type SquaredIntegrand,
   squareAsFraction,
 } from '../algebra/squared-integrand.js';
-import { ask } from './ask.js';
+import { askIntegrals } from './ask.js';
 import { derivativeIn, FIELD_RING, FUNCTIONS, squaresTo, VARIABLE } from './elementary.js';
 import { type Expression, ReplyError, readReply } from './reply.js';
 
@@ -20,17 +20,20 @@ export interface Antiderivative {
   readonly tree: Expression;
 }
 
-/** Someone who may know an antiderivative in v1. */
-export type IntegralProposer = (integrand: string, timeLimitMs: number) => Promise<string | undefined>;
+/** Someone who may know antiderivatives in v1: one answer or none for each integrand. */
+export type IntegralProposer = (
+  integrands: readonly string[],
+  timeLimitMs: number,
+) => Promise<readonly (string | undefined)[]>;
 
 let calls = 0;
-/** How often algebrite has been asked in this process. */
+/** How many integrands algebrite has been asked for in this process. */
 export const integralCalls = (): number => calls;
 
-const algebrite: IntegralProposer = async (integrand, timeLimitMs) => {
-  calls++;
-  const answer = await ask({ library: 'algebrite', integrand }, timeLimitMs);
-  return 'reply' in answer ? answer.reply : undefined;
+const algebrite: IntegralProposer = async (integrands, timeLimitMs) => {
+  calls += integrands.length;
+  const answers = await askIntegrals(integrands, timeLimitMs);
+  return answers.map((answer) => ('reply' in answer ? answer.reply : undefined));
 };
 
 /** The positive root as text: rational powers with denominator 2 only where the exponent is odd. */
@@ -46,26 +49,38 @@ export function integrandText({ power, factors }: SquaredIntegrand): string {
 const remembered = new Map<string, Promise<Antiderivative | undefined>>();
 
 /**
- * An antiderivative of the root of the square; undefined when none was proposed within the time limit, or none that is one.
- * @param propose for tests; algebrite in a thread of its own when left out, and then the result is remembered.
+ * Antiderivatives of the roots of some squares, one for each; undefined where none was proposed within the time limit, or
+ * none that is one.
+ * @param propose for tests; algebrite in a thread of its own when left out, and then the results are remembered.
  */
-export function antiderivativeOf(
-  square: SquaredIntegrand,
+export function antiderivativesOf(
+  squares: readonly SquaredIntegrand[],
   { timeLimitMs, propose }: { readonly timeLimitMs: number; readonly propose?: IntegralProposer },
-): Promise<Antiderivative | undefined> {
-  if (propose) return proposed(square, timeLimitMs, propose);
-  const key = integrandKey(square);
-  const known = remembered.get(key) ?? proposed(square, timeLimitMs, algebrite);
-  remembered.set(key, known);
-  return known;
+): Promise<readonly (Antiderivative | undefined)[]> {
+  if (propose) return proposed(squares, timeLimitMs, propose);
+  const fresh = new Map(squares.map((s) => [integrandKey(s), s] as const).filter(([key]) => !remembered.has(key)));
+  if (fresh.size > 0) {
+    const all = proposed([...fresh.values()], timeLimitMs, algebrite);
+    [...fresh.keys()].forEach((key, i) => {
+      remembered.set(
+        key,
+        all.then((found) => found[i]),
+      );
+    });
+  }
+  return Promise.all(squares.map((s) => remembered.get(integrandKey(s))));
 }
 
 async function proposed(
-  square: SquaredIntegrand,
+  squares: readonly SquaredIntegrand[],
   timeLimitMs: number,
   propose: IntegralProposer,
-): Promise<Antiderivative | undefined> {
-  const reply = await propose(integrandText(square), timeLimitMs);
+): Promise<readonly (Antiderivative | undefined)[]> {
+  const replies = await propose(squares.map(integrandText), timeLimitMs);
+  return squares.map((square, i) => verified(square, replies[i]));
+}
+
+function verified(square: SquaredIntegrand, reply: string | undefined): Antiderivative | undefined {
   if (reply === undefined) return undefined;
   try {
     const tree = readReply(reply, FUNCTIONS);

@@ -12,36 +12,38 @@ export interface FactorQuestion {
   readonly symbols: readonly string[];
 }
 
-/** What is asked: an antiderivative of an expression in v1, written with integers and + - * / ^. */
+/** What is asked: antiderivatives of expressions in v1, written with integers and + - * / ^. Answered one by one. */
 export interface IntegralQuestion {
   readonly library: 'algebrite';
-  readonly integrand: string;
+  readonly integrands: readonly string[];
 }
 
 export type Question = FactorQuestion | IntegralQuestion;
 
+/** The answer to one of several integrands. */
+export interface IntegralAnswer {
+  readonly index: number;
+  readonly answer: Answer;
+}
+
 /** What comes back: the text of the library, or why there is none. */
 export type Answer = { readonly reply: string } | { readonly fault: string };
 
-const LIBRARIES: Readonly<Record<Question['library'], (question: Question) => Promise<string>>> = {
-  async nerdamer(question) {
-    if ('integrand' in question) throw new Error('nerdamer is not asked for antiderivatives');
-    const { polynomial } = question;
+const LIBRARIES: Readonly<Record<FactorQuestion['library'], (question: FactorQuestion) => Promise<string>>> = {
+  async nerdamer({ polynomial }) {
     const { default: nerdamer } = await import('nerdamer/nerdamer.core.js');
     await import('nerdamer/Algebra.js');
     return nerdamer(`factor(${polynomial})`).toString();
   },
-  async algebrite(question) {
+  async algebrite({ polynomial, symbols }) {
     const { default: algebrite } = await import('algebrite');
-    if ('integrand' in question) return algebrite.run(`integral(${question.integrand},v1)`);
-    const { polynomial, symbols } = question;
     return algebrite.run(`factor(${[polynomial, ...symbols].join(',')})`);
   },
 };
 
-async function answer(question: Question): Promise<Answer> {
+async function answer(work: () => Promise<string>): Promise<Answer> {
   try {
-    const text = (await LIBRARIES[question.library](question)).trim();
+    const text = (await work()).trim();
     // Algebrite reports errors as text.
     return text.startsWith('Stop:') ? { fault: text } : { reply: text };
   } catch (error) {
@@ -49,4 +51,10 @@ async function answer(question: Question): Promise<Answer> {
   }
 }
 
-parentPort?.postMessage(await answer(workerData as Question));
+const question = workerData as Question;
+if ('integrands' in question) {
+  for (const [index, integrand] of question.integrands.entries()) {
+    const found = await answer(async () => (await import('algebrite')).default.run(`integral(${integrand},v1)`));
+    parentPort?.postMessage({ index, answer: found } satisfies IntegralAnswer);
+  }
+} else parentPort?.postMessage(await answer(() => LIBRARIES[question.library](question)));

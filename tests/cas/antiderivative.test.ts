@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { rational } from '../../src/algebra/rational.js';
 import type { SquaredIntegrand } from '../../src/algebra/squared-integrand.js';
-import { antiderivativeOf, integralCalls, integrandText, isAntiderivative } from '../../src/cas/antiderivative.js';
+import { antiderivativesOf, integralCalls, integrandText, isAntiderivative } from '../../src/cas/antiderivative.js';
 import { FUNCTIONS } from '../../src/cas/elementary.js';
 import { readReply } from '../../src/cas/reply.js';
 
@@ -10,7 +10,9 @@ const square = (power: number, ...factors: readonly (readonly [readonly number[]
   factors: factors.map(([c, exponent]) => ({ coefficients: c.map((n) => rational(n)), exponent })),
 });
 const ATANH = square(0, [[0, -1], -2]);
-const saying = (reply: string | undefined) => ({ timeLimitMs: 1, propose: async () => reply });
+const saying = (reply: string | undefined) => ({ timeLimitMs: 1, propose: async () => [reply] });
+const antiderivativeOf = async (of: SquaredIntegrand, options: Parameters<typeof antiderivativesOf>[1]) =>
+  (await antiderivativesOf([of], options))[0];
 
 describe('an antiderivative', () => {
   it('is believed only when its derivative squares to the integrand', async () => {
