@@ -27,29 +27,32 @@ export interface CurrentResult {
   readonly potential: Fraction | undefined;
 }
 
+/** A surface, with the scalars that must not vanish on it because something is divided by them. */
+interface Way extends SingularSurface {
+  readonly divisors: readonly string[];
+}
+
 /** The ways in which a product of powers of scalars and one sum can vanish. */
-function waysToVanish(p: Poly, scalars: readonly string[]): SingularSurface[] {
+function waysToVanish(p: Poly, scalars: readonly string[]): Way[] {
   const { reduced, unit } = splitUnit(p);
-  const powers = exponentRange(p.ring, unit.keys);
-  const alone = scalars
-    .filter((q) => (powers.low[p.ring.position.get(q)!] ?? 0) > 0)
-    .map((q): SingularSurface => ({ vanishing: [q], conditions: [] }));
-  return reduced.size > 1 ? [...alone, { vanishing: [], conditions: [reduced] }] : alone;
+  const powerOf = (q: string): number => exponentRange(p.ring, unit.keys).low[p.ring.position.get(q)!]!;
+  const divisors = scalars.filter((q) => powerOf(q) < 0);
+  const alone = scalars.filter((q) => powerOf(q) > 0).map((q): Way => ({ vanishing: [q], conditions: [], divisors }));
+  return reduced.size > 1 ? [...alone, { vanishing: [], conditions: [reduced], divisors }] : alone;
 }
 
 /** Two surfaces at once, conditions simplified by the scalars that vanish; undefined when that is never. */
-function together(a: SingularSurface, b: SingularSurface): SingularSurface | undefined {
+function together(a: Way, b: Way): Way | undefined {
   const vanishing = [...new Set([...a.vanishing, ...b.vanishing])];
+  const divisors = [...new Set([...a.divisors, ...b.divisors])];
+  if (vanishing.some((q) => divisors.includes(q))) return undefined;
   const conditions: Poly[] = [];
   for (const condition of [...a.conditions, ...b.conditions]) {
-    // Zeros of a denominator are no zeros.
-    if (vanishing.some((q) => exponentRange(condition.ring, condition.keys).low[condition.ring.position.get(q)!]! < 0))
-      return undefined;
     const rest = primitive(vanishing.reduce((p, q) => coefficientOf(p, q, 0), condition));
     if (isZero(rest) || conditions.some((c) => equals(c, rest))) continue;
     conditions.push(splitUnit(rest).reduced);
   }
-  return { vanishing, conditions };
+  return { vanishing, conditions, divisors };
 }
 
 /** Whether a surface exists for couplings in general: each condition has a scalar in it. */
@@ -62,13 +65,13 @@ const contains = (a: SingularSurface, b: SingularSurface): boolean =>
   a.conditions.every((c) => b.conditions.some((d) => equals(c, d)));
 
 function commonZeros(components: readonly Poly[], scalars: readonly string[]): SingularSurface[] {
-  let surfaces: SingularSurface[] = [{ vanishing: [], conditions: [] }];
+  let surfaces: Way[] = [{ vanishing: [], conditions: [], divisors: [] }];
   for (const p of components)
     surfaces = surfaces.flatMap((s) => waysToVanish(p, scalars).flatMap((way) => together(s, way) ?? []));
   const general = surfaces.filter((s) => isGeneral(s, scalars));
-  return general.filter(
-    (s, i) => !general.some((other, j) => j !== i && contains(other, s) && !(contains(s, other) && j > i)),
-  );
+  return general
+    .filter((s, i) => !general.some((other, j) => j !== i && contains(other, s) && !(contains(s, other) && j > i)))
+    .map(({ vanishing, conditions }) => ({ vanishing, conditions }));
 }
 
 /** F with F_A = J_A for every scalar, made by integrating one scalar after the other. */
