@@ -37,7 +37,7 @@ const form = formOf({
   potential: 'c phi^4 + e M^2 psi^2',
 });
 
-const valueOf = (f: Fraction, at: ReadonlyMap<string, Rational>): Rational =>
+const numberAt = (f: Fraction, at: ReadonlyMap<string, Rational>): Rational =>
   f.denominator.reduce(
     (x, { base, power }) => divideRational(x, powerRational(evaluate(base, at), power)),
     evaluate(f.numerator, at),
@@ -71,10 +71,10 @@ describe('a conformal map', () => {
         const [a, b] = key.split(',') as ['phi' | 'psi', 'phi' | 'psi'];
         const square = multiplyRational(rational(3 * factor), divideRational(multiplyRational(slope[a], slope[b]), f));
         const wanted = divideRational(addRational(k(key), square), multiplyRational(rational(2), f));
-        expect(valueOf(einstein.kinetic.get(key)!, at)).toEqual(wanted);
+        expect(numberAt(einstein.kinetic.get(key)!, at)).toEqual(wanted);
       }
       const four = multiplyRational(rational(4), multiplyRational(f, f));
-      expect(valueOf(einstein.potential, at)).toEqual(divideRational(evaluate(form.potential, at), four));
+      expect(numberAt(einstein.potential, at)).toEqual(divideRational(evaluate(form.potential, at), four));
     }
   });
 
