@@ -11,7 +11,6 @@ import type { Ring } from './algebra/ring.js';
 import { knowledgeFor } from './assumptions.js';
 import { constrainedTheory } from './constrained.js';
 import type { Check, Derivation, FluidValue, FriedmannForm, ScalarTensorForm } from './derivation.js';
-import { everyKOf } from './every-k.js';
 import type { Geometry } from './geometry/geometry.js';
 import { symbolicValue } from './geometry/reduction.js';
 import { couplingCombinations, screeningConditions } from './mechanics/couplings.js';
@@ -77,7 +76,6 @@ export function derive(given: Theory, onStep: (what: string) => void = () => {})
   const branches = setting.constrained.length > 0 ? constrainedTheory(setting, equations, knowledge, check) : undefined;
   const scalarTensor =
     branches?.scalarTensor ?? scalarTensorOf(geometry, ring, { reduced, equations: gravityEquations }, check);
-  const everyK = everyKOf(setting, scalarTensor, reduced, check);
   const parameters = geometry.parameters.map((p) => p.name);
   const scales = theory.symbols.filter((s) => s.role === 'scale').map((s) => s.name);
   const curvature = geometry.isotropic?.curvature;
@@ -105,7 +103,6 @@ export function derive(given: Theory, onStep: (what: string) => void = () => {})
     friedmann: friedmann && fixFriedmann(friedmann, fix),
     // The form speaks about other values of k too, so a value imposed on k is not put into its obstruction.
     scalarTensor,
-    ...(everyK ? { everyK } : {}),
     ...(branches ? { constrained: branches.constrained } : {}),
     ...(theory.spins ? { spin: spinResult(setting, friedmann, check) } : {}),
     ...(knowledge ? { knowledge } : {}),

@@ -1,19 +1,20 @@
 /**
  * What holds for every spatial curvature: the constraint-vector form, how far the rules lead from it to the metric analogue and
  * where they stop, under which conditions on the couplings they do not, and the form without torsion where the fields of the
- * connection can be integrated out directly. Part of the pipeline.
+ * connection can be integrated out directly. Added to a derivation when it is asked for.
  */
 import { eulerLagrange } from './algebra/calculus.js';
 import { moveTo } from './algebra/collect.js';
 import { addFraction, equalFraction, type Fraction, fraction } from './algebra/fraction.js';
 import { isZero, type Poly, subtract } from './algebra/poly.js';
 import { jetsOf, makeRing, type Ring } from './algebra/ring.js';
-import type { EveryK, IntegratedForm, ScalarTensorForm } from './derivation.js';
+import type { Check, Derivation, EveryK, IntegratedForm, ScalarTensorForm } from './derivation.js';
 import { comovingOf } from './geometry/comoving.js';
 import type { Geometry } from './geometry/geometry.js';
 import { symbolicValue } from './geometry/reduction.js';
 import { couplingCombinations, screeningConditions } from './mechanics/couplings.js';
 import { type SolvedConditions, solveConditions } from './mechanics/linear-conditions.js';
+import { dropTotalDerivatives } from './mechanics/total-derivatives.js';
 import { type EliminationBranch, integrateDirectly } from './scalartensor/auxiliary.js';
 import { fieldRules } from './scalartensor/auxiliary-file.js';
 import { backgroundOf, constraintVector, type VectorRoles } from './scalartensor/constraint-vector.js';
@@ -30,7 +31,7 @@ import {
   termsIn,
   type VectorForm,
 } from './scalartensor/vector-form.js';
-import type { Setting } from './setting.js';
+import { type Setting, settingOf } from './setting.js';
 
 type Checker = (name: string, detail: string, holds: boolean) => void;
 
@@ -53,16 +54,31 @@ export function comparedBackground(roles: VectorRoles, ring: Ring, scalars: read
 }
 
 /**
+ * The derivation with what holds for every spatial curvature; the same derivation on a geometry that is not isotropic.
+ * @throws Error when a check fails, which means that this program is wrong.
+ */
+export function withEveryK(d: Derivation, onStep: (what: string) => void = () => {}): Derivation {
+  if (!d.geometry.isotropic) return d;
+  const checks: Check[] = [];
+  const check: Checker = (name, detail, holds) => {
+    if (!holds) throw new Error(`check failed: ${name} (${detail})`);
+    checks.push({ name, holds, detail });
+  };
+  // The setting keeps the parameters of the geometry as symbols, also when the theory imposes values on them.
+  const setting = settingOf(d.theory, onStep);
+  onStep('looking for the form at every spatial curvature');
+  const movable = setting.fields.map((f) => f.name).filter((q) => q !== d.geometry.lapse);
+  const { reduced } = dropTotalDerivatives(setting.gravity, movable, d.geometry.lapse);
+  const everyK = everyKOf(setting, d.scalarTensor, reduced, check);
+  return everyK ? { ...d, everyK, checks: [...d.checks, ...checks] } : d;
+}
+
+/**
  * The results of this module; undefined on a geometry that is not isotropic.
  * @param reducedGravity the gravitational Lagrangian without total derivatives.
  * @param form the metric analogue as it was found by comparing coefficients: the rules must lead to the same.
  */
-export function everyKOf(
-  setting: Setting,
-  form: ScalarTensorForm,
-  reducedGravity: Poly,
-  check: Checker,
-): EveryK | undefined {
+function everyKOf(setting: Setting, form: ScalarTensorForm, reducedGravity: Poly, check: Checker): EveryK | undefined {
   const { geometry, ring, terms, gravity, constrained, fields } = setting;
   const roles = vectorRoles(geometry);
   if (!roles) return undefined;

@@ -20,6 +20,7 @@ export { derivationJson, derivationObject } from './emit/json.js';
 export { derivationTex, equationsTex } from './emit/latex.js';
 export { reportHtml } from './emit/report.js';
 export { typescriptModule } from './emit/typescript.js';
+export { withEveryK } from './every-k.js';
 export type { Geometry } from './geometry/geometry.js';
 export { type Diagnostic, InputError, renderDiagnostic } from './notation/diagnostics.js';
 export { readTheory } from './notation/read-theory.js';

@@ -343,9 +343,6 @@ describe('a derivation', () => {
       'equations without total derivatives',
       'conservation of the effective fluid',
       'scalar-tensor form',
-      'constraint-vector form',
-      'two routes to the scalar-tensor form',
-      'scalar-tensor form with its obstruction',
     ]);
     expect(general().checks.every((c) => c.holds && c.detail !== '')).toBe(true);
   });

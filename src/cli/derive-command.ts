@@ -34,6 +34,7 @@ export interface DeriveOptions {
   readonly momenta?: boolean;
   readonly conventions?: string;
   readonly explain?: boolean;
+  readonly everyK?: boolean;
   readonly json?: boolean;
   readonly force?: boolean;
 }
@@ -53,8 +54,10 @@ export async function deriveCommand(path: string, options: DeriveOptions, io: Io
   const theory = readTheory(text, file, { set: options.set, assume: options.assume ?? [] });
   for (const warning of theory.warnings) io.stderr(`${renderDiagnostic(warning, { color: io.color })}\n`);
   try {
-    if (options.json) io.stdout(derivationJson(await derived(theory, options, io)));
-    else await writeResults(theory, options, io);
+    if (options.json) {
+      const derivation = await derived(theory, options, io);
+      io.stdout(derivationJson(options.everyK ? await atEveryK(derivation) : derivation));
+    } else await writeResults(theory, options, io);
     return EXIT.done;
   } catch (error) {
     if (!(error instanceof InputError)) throw error;
@@ -87,7 +90,8 @@ async function writeResults(theory: Theory, options: DeriveOptions, io: Io): Pro
   refuseExisting(folder, Object.values(files), options.force ?? false);
   const progress = progressLine(io);
   try {
-    const derivation = await derived(theory, options, io, progress.step);
+    const plain = await derived(theory, options, io, progress.step);
+    const derivation = await atEveryK(plain, progress.step);
     const variables = chosenVariables(derivation, options.variables);
     refuseEndless(derivation);
     progress.step('typesetting');
@@ -102,7 +106,8 @@ async function writeResults(theory: Theory, options: DeriveOptions, io: Io): Pro
       [files.equations, equationsTex(derivation, { variables })],
       [files.document, derivationTex(derivation, { variables })],
       [files.code, typescriptModule(derivation)],
-      [files.data, derivationJson(derivation)],
+      // The same text as --json prints with the same options.
+      [files.data, derivationJson(options.everyK ? derivation : plain)],
       [files.report, reportHtml(derivation, { variables })],
     ]);
     const text = summary(derivation, { variables, color: io.color, factored });
@@ -117,6 +122,10 @@ async function writeResults(theory: Theory, options: DeriveOptions, io: Io): Pro
   } finally {
     progress.done();
   }
+}
+
+async function atEveryK(derivation: Derivation, onStep?: (what: string) => void): Promise<Derivation> {
+  return (await import('../every-k.js')).withEveryK(derivation, onStep);
 }
 
 async function derived(

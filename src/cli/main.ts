@@ -56,6 +56,7 @@ export async function main(args: readonly string[], world: Io): Promise<number> 
     .option('--integrate <fields>', 'fields to integrate out, in order, for instance psi,phi (default: the connection)')
     .option('--covariant', 'also derive the field equations in index notation')
     .option('--momenta', 'the same with the field momenta kept as symbols')
+    .option('--every-k', 'the form for every spatial curvature in the JSON too')
     .option('--explain', 'also print which rules were applied and why each step is allowed')
     .option('--conventions <name>', 'also write the Lagrangian in these conventions: a preset or a file')
     .option('--json', 'print the JSON alone and write no file')

@@ -64,7 +64,6 @@ describe('derivation.json', () => {
       'screening',
       'friedmann',
       'scalarTensor',
-      'everyK',
       'checks',
       'warnings',
     ]);

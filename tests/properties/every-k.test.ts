@@ -2,8 +2,10 @@
  * The constraint-vector form of random theories of any degree, with n free: its equations, the multiplier eliminated by the
  * equation of n, are those of the torsion theory at every k. And all routes to a scalar-tensor form agree.
  */
+
 import { describe, expect, it } from 'vitest';
 import { withAuxiliaryRoute } from '../../src/auxiliary-route.js';
+import { withEveryK } from '../../src/every-k.js';
 import { derivationObject, derive, readTheory } from '../../src/index.js';
 import * as E from '../oracle/exact.js';
 import type { Point } from '../oracle/geometry.js';
@@ -28,7 +30,8 @@ interface VectorJson {
 }
 
 const SCALARS = ['phi', 'psi'];
-const derivationOf = (wanted: RandomTheory['wanted']) => derive(readTheory(theoryText(wanted), 'outer-mole.yaml'));
+const derivationOf = (wanted: RandomTheory['wanted']) =>
+  withEveryK(derive(readTheory(theoryText(wanted), 'outer-mole.yaml')));
 
 /** The point with ν = 1/N: Σ C(m,j) N^(j) ν^(m−j) = 0 gives one derivative after the other. */
 function withVector(point: Point): Point {
