@@ -8,7 +8,7 @@ import { generator, isZero, multiply, type Poly, power, sum, zero } from './alge
 import type { Ring } from './algebra/ring.js';
 import { factor } from './cas/factor.js';
 import type { AuxiliaryRoute, Check, Derivation, EveryK, LinearisedField, RouteBranch } from './derivation.js';
-import { agrees, comparedBackground, vectorRoles } from './every-k.js';
+import { agrees, comparedBackground, vectorRoles, withEveryK } from './every-k.js';
 import { symbolicValue } from './geometry/reduction.js';
 import { internalWith, translate } from './notation/conventions.js';
 import { type Diagnostic, InputError } from './notation/diagnostics.js';
@@ -53,14 +53,15 @@ const fault = (code: string, message: string, hint: string, file = FILE): InputE
 };
 
 /**
- * A derivation with this route added.
+ * A derivation with this route added, and with what holds for every curvature, from which it starts.
  * @throws InputError when there is nothing to linearise, a field is unknown, or the geometry is not isotropic.
  */
 export async function withAuxiliaryRoute(
-  d: Derivation,
+  given: Derivation,
   options: RouteOptions,
   onStep: (what: string) => void = () => {},
 ): Promise<Derivation> {
+  const d = withEveryK(given, onStep);
   const roles = vectorRoles(d.geometry);
   const { everyK } = d;
   if (!roles || !everyK?.vector.inComponents)

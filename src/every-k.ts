@@ -54,11 +54,11 @@ export function comparedBackground(roles: VectorRoles, ring: Ring, scalars: read
 }
 
 /**
- * The derivation with what holds for every spatial curvature; the same derivation on a geometry that is not isotropic.
+ * The derivation with what holds for every spatial curvature; the same one where that is there, or on a geometry that is not isotropic.
  * @throws Error when a check fails, which means that this program is wrong.
  */
 export function withEveryK(d: Derivation, onStep: (what: string) => void = () => {}): Derivation {
-  if (!d.geometry.isotropic) return d;
+  if (!d.geometry.isotropic || d.everyK) return d;
   const checks: Check[] = [];
   const check: Checker = (name, detail, holds) => {
     if (!holds) throw new Error(`check failed: ${name} (${detail})`);
