@@ -15,6 +15,7 @@ import { symbolicValue } from './geometry/reduction.js';
 import { couplingCombinations, screeningConditions } from './mechanics/couplings.js';
 import { type SolvedConditions, solveConditions } from './mechanics/linear-conditions.js';
 import { dropTotalDerivatives } from './mechanics/total-derivatives.js';
+import type { Theory } from './notation/theory.js';
 import { type EliminationBranch, integrateDirectly } from './scalartensor/auxiliary.js';
 import { fieldRules } from './scalartensor/auxiliary-file.js';
 import { backgroundOf, constraintVector, type VectorRoles } from './scalartensor/constraint-vector.js';
@@ -65,12 +66,18 @@ export function withEveryK(d: Derivation, onStep: (what: string) => void = () =>
     checks.push({ name, holds, detail });
   };
   // The setting keeps the parameters of the geometry as symbols, also when the theory imposes values on them.
-  const setting = settingOf(d.theory, onStep);
+  const setting = settingOf(asRead(d), onStep);
   onStep('looking for the form at every spatial curvature');
   const movable = setting.fields.map((f) => f.name).filter((q) => q !== d.geometry.lapse);
   const { reduced } = dropTotalDerivatives(setting.gravity, movable, d.geometry.lapse);
   const everyK = everyKOf(setting, d.scalarTensor, reduced, check);
   return everyK ? { ...d, everyK, checks: [...d.checks, ...checks] } : d;
+}
+
+/** The theory as it was read: a derivation counts the components of spin tensors among its symbols. */
+function asRead({ theory, spin }: Derivation): Theory {
+  const components = spin?.tensors.flatMap((t) => t.components) ?? [];
+  return { ...theory, symbols: theory.symbols.filter((s) => !components.some((c) => c.name === s.name)) };
 }
 
 /**
