@@ -1,16 +1,13 @@
 /**
  * A printed equation as a polynomial that ought to vanish, with the terms in which it was typed, so that a misprint can be
- * named. Imports the vocabulary of claims, factors.
+ * named. Imports the vocabulary of claims, quotients.
  */
-import { add, constant, generator, multiply, type Poly, power, zero } from '../algebra/poly.js';
-import { exponentRange } from '../algebra/ring.js';
+import { add, multiply, type Poly, zero } from '../algebra/poly.js';
 import { errorAt, InputError } from '../notation/diagnostics.js';
 import { plainPassage } from '../notation/passage.js';
 import type { Expression } from '../notation/syntax.js';
 import { withoutDots } from './dots.js';
-import { basesOf, divideIn, isVariable } from './factors.js';
-import type { JetSpace } from './jet-space.js';
-import { negateQuotient, type Quotient } from './quotient.js';
+import { cleared, negateQuotient, type Quotient } from './quotient.js';
 import { evaluate, parseSides, type Vocabulary } from './vocabulary.js';
 
 /** One typed term: the claim is the sum of their values. */
@@ -86,9 +83,13 @@ function summands(node: Expression, negative: boolean, typed: Typed): Piece[] {
     if (at >= 0) {
       const chosen = node.factors[at]!;
       const others = node.factors.filter((_, i) => i !== at);
-      const text = others.map((f) => `${f.divides ? '/' : ''}${typed(f.value)}`).join(' ');
+      const written = (inner: string): string =>
+        node.factors.reduce((all, f, i) => {
+          const text = i === at ? inner : typed(f.value);
+          return i === 0 ? text : `${all}${f.divides ? '/' : ' '}${text}`;
+        }, '');
       return summands(chosen.value, negative, typed).map((piece) => ({
-        text: `${text.startsWith('/') ? '' : `${text} `}${piece.text}${text.startsWith('/') ? ` ${text}` : ''}`.trim(),
+        text: written(piece.text),
         negative: piece.negative,
         group: typed(node),
         node: (vocabulary, passage) => {
@@ -113,30 +114,4 @@ function summands(node: Expression, negative: boolean, typed: Typed): Piece[] {
     }
   }
   return [{ text: typed(node), negative, node: (vocabulary, passage) => evaluate(vocabulary, node, passage) }];
-}
-
-/** All quotients over one denominator, which is dropped; variables are cleared from denominators too. */
-function cleared(
-  space: JetSpace,
-  values: readonly Quotient[],
-): { readonly polys: readonly Poly[]; readonly divisors: readonly Poly[] } {
-  const { ring } = space;
-  let common: Poly = constant(ring, 1);
-  for (const { bottom } of values)
-    if (!divideIn(space, common, bottom)) common = multiply(common, lacking(space, common, bottom));
-  const polys = values.map(({ top, bottom }) => multiply(top, divideIn(space, common, bottom)!));
-  const lowest = new Map<number, number>();
-  for (const p of polys)
-    exponentRange(ring, p.keys).low.forEach((n, g) => {
-      if (p.size > 0 && n < 0 && isVariable(space, g)) lowest.set(g, Math.min(lowest.get(g) ?? 0, n));
-    });
-  let shift: Poly = constant(ring, 1);
-  for (const [g, n] of lowest) shift = multiply(shift, power(generator(ring, ring.generators[g]!.name), -n));
-  return { polys: polys.map((p) => multiply(p, shift)), divisors: basesOf(space, multiply(common, shift)) };
-}
-
-/** A factor that makes `have` a multiple of `want`: want itself, less what they obviously share. */
-function lacking(space: JetSpace, have: Poly, want: Poly): Poly {
-  const quotient = divideIn(space, want, have);
-  return quotient ?? want;
 }

@@ -15,8 +15,11 @@ import { type RankingName, rankingOf } from './ranking.js';
 export const BOUNDS = [
   { products: 1_500_000, terms: 1_500 },
   { products: 15_000_000, terms: 4_000 },
-] as const;
-export type Bound = (typeof BOUNDS)[number];
+] as const satisfies readonly Bound[];
+export interface Bound {
+  readonly products: number;
+  readonly terms: number;
+}
 
 export const budgetOf = ({ products, terms }: Bound): Budget => new Budget(products, terms);
 

@@ -20,6 +20,7 @@ import { withoutDots } from './dots.js';
 import { type JetSpace, jetSpace, MAX_ORDER } from './jet-space.js';
 import {
   addQuotients,
+  cleared,
   divideQuotients,
   multiplyQuotients,
   negateQuotient,
@@ -82,7 +83,7 @@ export function vocabularyOf(d: Derivation, where: readonly string[]): Vocabular
       continue;
     }
     const difference = addQuotients(evaluate(vocabulary, left, passage), negateQuotient(value));
-    defining.push({ text, poly: difference.top });
+    defining.push({ text, poly: cleared(final, [difference]).polys[0]! });
   }
   return vocabulary;
 }
