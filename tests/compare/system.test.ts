@@ -26,9 +26,7 @@ describe('the equations of a theory, solved', () => {
       'connection',
       BOUNDS[0],
     );
-    expect(solutions.branches.map((b) => b.links.map(leaderName))).toEqual([
-      ['phi', 'psi', 'rho', 'p']),
-    ]);
+    expect(solutions.branches.map((b) => b.links.map(leaderName))).toEqual([['phi', 'psi', 'rho', 'p']]);
   });
 
   it('stay within the bound or say so', () => {
