@@ -3,7 +3,6 @@
  * named. Imports the vocabulary of claims, quotients.
  */
 import { add, multiply, type Poly, zero } from '../algebra/poly.js';
-import { errorAt, InputError } from '../notation/diagnostics.js';
 import { plainPassage } from '../notation/passage.js';
 import type { Expression } from '../notation/syntax.js';
 import { withoutDots } from './dots.js';
@@ -37,7 +36,6 @@ export function readClaim(vocabulary: Vocabulary, text: string, option = '--clai
     const { start, end } = passage.locate(node.start, node.end);
     return text.slice(start, end).trim().replace(/\s+/g, ' ');
   };
-  const whole = passage.locate(0, passage.text.length);
   const pieces = [...summands(left, false, typed), ...summands(right, true, typed)];
   const values = pieces.map(({ node, negative }) => {
     const value = node(vocabulary, passage);
@@ -46,8 +44,6 @@ export function readClaim(vocabulary: Vocabulary, text: string, option = '--clai
   const { polys, divisors } = cleared(vocabulary.space, values);
   const { ring } = vocabulary.space;
   const poly = polys.reduce(add, zero(ring));
-  if (poly.size === 0 && pieces.length === 0)
-    throw new InputError([errorAt(whole, 'empty-claim', 'the claim says nothing', 'write an equation')]);
   return {
     text: text.trim().replace(/\s+/g, ' '),
     poly,

@@ -45,6 +45,8 @@ export interface ClaimReport {
   readonly verdict: 'holds' | 'fails' | 'undecided';
   /** Whether the verdict was reached for matter of any pressure. */
   readonly anyMatter: boolean;
+  /** Whether an expansion rate vanishes on every solution. */
+  readonly staticOnly: boolean;
   /** Why nothing was decided, when no branch was. */
   readonly reason: string | undefined;
   readonly branches: readonly BranchVerdict[];
@@ -107,13 +109,18 @@ function questionOf(d: Derivation, options: ClaimOptions): Question {
   };
 }
 
+interface Attempt {
+  readonly solved: Solved;
+  readonly staticOnly: boolean;
+}
+
 /** The equations for one choice of matter, solved under one ranking after the other as far as claims need it. */
 class Settlement {
   used = false;
   private readonly d: Derivation;
   private readonly question: Question;
   private readonly anyMatter: boolean;
-  private readonly attempts = new Map<string, Solved | BoundError>();
+  private readonly attempts = new Map<string, Attempt | BoundError>();
 
   constructor(d: Derivation, question: Question, anyMatter: boolean) {
     this.d = d;
@@ -135,9 +142,9 @@ class Settlement {
   }
 
   impossible(): Impossible[] {
-    for (const solved of this.attempts.values())
-      if (!(solved instanceof BoundError))
-        return solved.solutions.deadEnds
+    for (const attempt of this.attempts.values())
+      if (!(attempt instanceof BoundError))
+        return attempt.solved.solutions.deadEnds
           .filter((e) => symbolsOf(e.needs).length > 0)
           .map((e) => ({ branch: relationsOf(e), needs: `${infix(e.needs)} = 0` }));
     return [];
@@ -145,10 +152,12 @@ class Settlement {
 
   private under(ranking: RankingName, bound: Bound, claim: Claim): ClaimReport {
     const key = `${ranking} ${bound.products}`;
-    const solved = remember(this.attempts, key, () => this.solve(ranking, bound));
-    const base = { claim, anyMatter: this.anyMatter, residual: undefined, repairs: [] };
-    if (solved instanceof BoundError)
-      return { ...base, verdict: 'undecided', reason: `solving the equations needs ${solved.message}`, branches: [] };
+    const attempt = remember(this.attempts, key, () => this.solve(ranking, bound));
+    const blank = { claim, anyMatter: this.anyMatter, staticOnly: false, residual: undefined, repairs: [] };
+    if (attempt instanceof BoundError)
+      return { ...blank, verdict: 'undecided', reason: `solving the equations needs ${attempt.message}`, branches: [] };
+    const { solved, staticOnly } = attempt;
+    const base = { ...blank, staticOnly };
     const { branches } = solved.solutions;
     for (const divisor of claim.divisors)
       if (branches.every((b) => consequence(solved, b, divisor).verdict === 'follows'))
@@ -182,7 +191,7 @@ class Settlement {
     return relationsOf({ ...branch, nonzero: branch.nonzero.filter((p) => !assumed.some((q) => equals(p, q))) });
   }
 
-  private solve(ranking: RankingName, bound: Bound): Solved | BoundError {
+  private solve(ranking: RankingName, bound: Bound): Attempt | BoundError {
     const { vocabulary, zero, nonzero } = this.question;
     const { space } = vocabulary;
     const equations = (more: readonly Poly[]) =>
@@ -190,10 +199,10 @@ class Settlement {
     try {
       // Static universes are solutions of their own; they are looked at only where nothing else is left.
       const moving = solve(equations(ratesOf(space)), ranking, bound);
-      if (moving.solutions.branches.length > 0) return moving;
+      if (moving.solutions.branches.length > 0) return { solved: moving, staticOnly: false };
       const all = solve(equations([]), ranking, bound);
       if (all.solutions.branches.length === 0) throw noSolution(this.question.branch, all);
-      return all;
+      return { solved: all, staticOnly: true };
     } catch (error) {
       if (error instanceof BoundError) return error;
       throw error;

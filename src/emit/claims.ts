@@ -52,6 +52,7 @@ function claimLines(report: ClaimReport, paint: Paint): string[] {
   const colour = { holds: paint.green, fails: paint.red, undecided: paint.yellow }[verdict];
   const matter = verdict === 'holds' && report.anyMatter ? ', for matter of any pressure' : '';
   const lines = [paint.bold(claim.text), `  ${colour(HEADLINE[verdict])}${matter}`];
+  if (report.staticOnly) lines.push('  all solutions are static: an expansion rate vanishes');
   if (report.reason !== undefined) lines.push(`  no answer within the bound: ${report.reason}`);
   if (claim.divisors.length > 0) lines.push(`  cleared of the divisors ${claim.divisors.map(infix).join(', ')}`);
   for (const b of branches) lines.push(...branchLines(b, branches.length > 1));
@@ -111,6 +112,7 @@ export function claimsObject(d: Derivation, report: ClaimsReport): Record<string
       claim: c.claim.text,
       verdict: c.verdict,
       anyMatter: c.anyMatter,
+      ...(c.staticOnly ? { staticOnly: true } : {}),
       ...(c.reason === undefined ? {} : { reason: c.reason }),
       expression: infix(c.claim.poly),
       divisors: c.claim.divisors.map(infix),

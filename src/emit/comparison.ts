@@ -37,14 +37,13 @@ export function comparisonText(a: Derivation, b: Derivation, c: Comparison, colo
     lines.push(`  the redefinition is invertible where ${c.redefinition.conditions.join(', ')}`);
   if (c.primitive) lines.push(`  L1 − L2 = d/dt of ${shortened(groupedText(c.primitive))}`);
   if (c.scaling) {
-    const { factor, massSquared } = c.scaling;
-    const mass = ratioText(massSquared.top, massSquared.bottom);
-    const overall = ratioText(factor.top, factor.bottom);
-    if (mass !== '1') lines.push(`  theory 2 is theory 1 with (${mass}) M^2 for M^2`);
-    if (overall !== '1')
-      lines.push(
-        `  and all of it times ${overall}`.replace(/^ {2}and/, mass === '1' ? '  theory 2 is theory 1, ' : '  and'),
-      );
+    const mass = ratioText(c.scaling.massSquared.top, c.scaling.massSquared.bottom);
+    const overall = ratioText(c.scaling.factor.top, c.scaling.factor.bottom);
+    const parts = [
+      ...(mass === '1' ? [] : [`with (${mass}) M^2 for M^2`]),
+      ...(overall === '1' ? [] : [`multiplied by ${overall}`]),
+    ];
+    lines.push(`  theory 2 is theory 1 ${parts.join(', ')}`);
   }
   if (c.reason !== undefined) lines.push(`  ${c.reason}`);
   lines.push(...solutionLines(c));

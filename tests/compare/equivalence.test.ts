@@ -2,19 +2,13 @@ import { describe, expect, it } from 'vitest';
 import { infix } from '../../src/algebra/infix.js';
 import { equivalence } from '../../src/compare/equivalence.js';
 import { jetSpace } from '../../src/compare/jet-space.js';
-import { BOUNDS } from '../../src/compare/system.js';
+import { BOUNDS, type Bound } from '../../src/compare/system.js';
 import { derivationOf, EINSTEIN_CARTAN, TORSION_SCALAR, type Wanted } from './derivations.js';
 
 const TELEPARALLEL: Wanted = { lagrangian: `-1/2 M^2 (${TORSION_SCALAR})`, constrain: ['R^a_{bcd}'] };
 const BOTH = new Set(['phi', 'psi']);
 
-function between(
-  a: Wanted,
-  b: Wanted,
-  shared: ReadonlySet<string>,
-  anyMatter = true,
-  bound = BOUNDS[0] as (typeof BOUNDS)[number],
-) {
+function between(a: Wanted, b: Wanted, shared: ReadonlySet<string>, anyMatter = true, bound: Bound = BOUNDS[0]) {
   const [first, second] = [derivationOf(a), derivationOf(b)];
   return equivalence(jetSpace([first, second]), [first, second], shared, anyMatter, bound);
 }
