@@ -4,7 +4,7 @@
  */
 import { describe, expect, it } from 'vitest';
 import { withAuxiliaryRoute } from '../../src/auxiliary-route.js';
-import type { Derivation } from '../../src/derivation.js';
+import type { Derivation, RouteBranch } from '../../src/derivation.js';
 import { fractionText } from '../../src/emit/scalar-fields-json.js';
 import { withEveryK } from '../../src/every-k.js';
 import { derive, readTheory } from '../../src/index.js';
@@ -57,7 +57,7 @@ describe('scalar mode: (a0/2) R + (b/24) R² + 3 a1 (u² − v²) — PRD 78 (20
     const torsion = '-1/2 a1 M^2 (1/4 T_{abc} T^{abc} + 1/2 T_{abc} T^{bac} - T_a T^a)';
     const d = derivation(`1/2 a0 M^2 R + 1/24 b R^2 - ${torsion.slice(1)}`, ['a0', 'a1', 'b']);
     const { auxiliary } = await withAuxiliaryRoute(d, { linearise: ['R'], integrate: undefined });
-    const [{ metric, isCompared }] = auxiliary!.branches as [(typeof auxiliary)['branches'][number]];
+    const [{ metric, isCompared }] = auxiliary!.branches as [RouteBranch];
     const { functions, remainder } = metric!.reached!;
     expect([isCompared, fractionText(remainder)]).toEqual([true, '0']);
     expect(fractionText(functions.g4)).toBe('chi*b/12 + a0*M^2/2');
