@@ -122,7 +122,8 @@ function described(term: ClaimTerm, { top, bottom }: Ratio): { readonly repair: 
   const kept = subtract(bottom, top);
   const quotient = divideExactly(kept, bottom);
   const number = quotient && numberOf(quotient);
-  const text = quotient ? infix(quotient) : `(${infix(kept)})/(${infix(bottom)})`;
+  const above = kept.size === 1 ? infix(kept) : `(${infix(kept)})`;
+  const text = quotient ? infix(quotient) : `${above}/(${infix(bottom)})`;
   const base = { term: term.text, factor: text };
   if (number?.num === 0n) return { repair: { ...base, kind: 'absent', corrected: '0' }, weight: 2 };
   if (number && number.num === -1n && number.den === 1n)

@@ -16,7 +16,7 @@ import { degreeIn, isUnit } from './factors.js';
 import { type JetSpace, jetSpace } from './jet-space.js';
 import { type Redefinition, readRedefinition } from './redefinition.js';
 import { type Scaling, scalingBetween } from './scaling.js';
-import { BOUNDS } from './system.js';
+import { BOUNDS, type Bound } from './system.js';
 
 /**
  * How two theories are related, the closest relation first: equal Lagrangians; equal up to a total derivative; equations equal
@@ -37,6 +37,8 @@ export interface Comparison {
   readonly difference: Difference | undefined;
   /** Fields that only one theory has. */
   readonly unshared: readonly [readonly string[], readonly string[]];
+  /** For `different`: whether the equations of the metric and its matter are known to differ too. */
+  readonly metricDiffers?: boolean;
   /** Why nothing was decided, when no elimination was tried. */
   readonly reason?: string;
 }
@@ -102,24 +104,33 @@ function withLagrangian(d: Derivation, ring: Ring, lagrangian: Poly, { apply }: 
   };
 }
 
-function bySolutions(space: JetSpace, a: Derivation, b: Derivation): Pick<Comparison, 'relation' | 'solutions'> {
+function bySolutions(
+  space: JetSpace,
+  a: Derivation,
+  b: Derivation,
+): Pick<Comparison, 'relation' | 'solutions' | 'metricDiffers'> {
   const common = new Set([...a.equations.keys()].filter((q) => b.equations.has(q)));
-  const all = withMatter(space, a, b, common);
+  const all = withMatter(space, a, b, common, BOUNDS);
   if (all.result === 'same') return { relation: 'equivalent', solutions: all };
-  const metric = withMatter(space, a, b, new Set());
+  // Once the theories are known to differ, a short try tells whether their metrics do.
+  const bounds = all.result === 'different' ? BOUNDS.slice(0, 1) : BOUNDS;
+  const metric = withMatter(space, a, b, new Set(), bounds);
   if (metric.result === 'same') return { relation: 'metric', solutions: metric };
-  const open = metric.result === 'undecided' || all.result === 'undecided';
-  const decided = metric.result === 'different' ? metric : all;
-  // A difference of the metrics is one; a difference of the connections alone is not yet.
-  if (metric.result === 'different') return { relation: 'different', solutions: metric };
-  return { relation: open ? 'undecided' : 'different', solutions: decided };
+  if (metric.result === 'different') return { relation: 'different', solutions: metric, metricDiffers: true };
+  return { relation: all.result, solutions: all };
 }
 
 /**
  * For matter of any pressure where both have the same fluids; for the fluids themselves where that fails or they differ. All
  * of it is tried within a short bound before anything is tried within a long one.
  */
-function withMatter(space: JetSpace, a: Derivation, b: Derivation, shared: ReadonlySet<string>): Equivalence {
+function withMatter(
+  space: JetSpace,
+  a: Derivation,
+  b: Derivation,
+  shared: ReadonlySet<string>,
+  bounds: readonly Bound[],
+): Equivalence {
   const names = (d: Derivation): string =>
     d.fluids
       .map((f) => `${f.name} ${f.density}`)
@@ -127,7 +138,7 @@ function withMatter(space: JetSpace, a: Derivation, b: Derivation, shared: Reado
       .join();
   const sameFluids = names(a) === names(b) && a.fluids.length > 0;
   let own: Equivalence | undefined;
-  for (const bound of BOUNDS) {
+  for (const bound of bounds) {
     const general = sameFluids ? equivalence(space, [a, b], shared, true, bound) : undefined;
     if (general?.result === 'same') return general;
     own = equivalence(space, [a, b], shared, false, bound);

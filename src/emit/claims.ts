@@ -9,7 +9,7 @@ import { groupedText, productText, quotientText } from './grouped.js';
 import { FORMAT_VERSION } from './json.js';
 
 /** Characters of one expression on the terminal; the JSON has them all. */
-const MAX_TEXT = 1200;
+const MAX_TEXT = 600;
 const SHORT = 240;
 
 const shortened = (text: string): string =>

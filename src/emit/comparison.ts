@@ -20,7 +20,7 @@ const HEADLINE: Readonly<Record<Relation, string>> = {
 /** Whether the background equations are the same. */
 export const areSame = ({ relation }: Comparison): boolean => relation !== 'different' && relation !== 'undecided';
 
-const MAX_TEXT = 1200;
+const MAX_TEXT = 400;
 const shortened = (text: string): string =>
   text.length <= MAX_TEXT ? text : `${text.slice(0, MAX_TEXT)} … (${text.length} characters; --json prints all)`;
 
@@ -46,7 +46,6 @@ export function comparisonText(a: Derivation, b: Derivation, c: Comparison, colo
     lines.push(`  theory 2 is theory 1 ${parts.join(', ')}`);
   }
   if (c.reason !== undefined) lines.push(`  ${c.reason}`);
-  lines.push(...solutionLines(c));
   if (c.difference) {
     const { equation, monomial, first, second } = c.difference;
     lines.push(
@@ -55,6 +54,9 @@ export function comparisonText(a: Derivation, b: Derivation, c: Comparison, colo
       `    2: ${shortened(infix(second))}`,
     );
   }
+  lines.push(...solutionLines(c));
+  if (c.relation === 'different' && !c.metricDiffers)
+    lines.push('  whether the metric and its matter alone obey the same equations was not decided');
   return `${lines.join('\n')}\n`;
 }
 
@@ -106,6 +108,7 @@ export function comparisonObject(a: Derivation, b: Derivation, c: Comparison): R
     unshared: c.unshared,
     conditions: [...c.redefinition.conditions, ...(solutions?.result === 'same' ? solutions.conditions : [])],
     ...(solutions?.result === 'same' ? { anyMatter: solutions.anyMatter, eliminated: solutions.eliminated } : {}),
+    ...(c.relation === 'different' ? { metricDiffers: c.metricDiffers ?? 'undecided' } : {}),
     ...(solutions?.result === 'undecided' ? { reason: solutions.reason } : {}),
     ...(solutions?.result === 'different'
       ? {

@@ -102,14 +102,21 @@ describe('teleparallel equivalent, every k — arXiv:1511.07586, Phys. Rev. D 19
   });
 });
 
-describe('k-screening: P = c0 = 0 — computed', () => {
-  it('the Friedmann equation on the attractor of the conformal case has no k', () => {
-    const theory: Wanted = {
-      lagrangian: 'S (R_{abcd} R^{abcd} - R_{abcd} R^{cdab}) + m^2 T_a T^a',
-      constants: ['S'],
-      scales: ['m'],
+describe('axial spin density — Nature Phys. Sci. 242 (1973) 7 for the a^-6 law; gr-qc/0505081 for the Holst factor (memory)', () => {
+  const spin = ['dust', '{ spin: sigma, axial: q }'];
+
+  it('3M²(H² + k/a²) = ρ − q²σ²/(12M²a⁶), and × γ²/(1 + γ²) with a Holst term', () => {
+    const plain: Wanted = { ...EINSTEIN_CARTAN, constants: ['q'], matter: spin };
+    expect(decide(plain, '3 M^2 (H^2 + k/a^2) = rho - q^2 sigma^2/(12 M^2 a^6)').verdict).toBe('holds');
+    expect(decide(plain, '-M^2 (2 \\dot H + 3 H^2 + k/a^2) = p - q^2 sigma^2/(12 M^2 a^6)').verdict).toBe('holds');
+    const holst: Wanted = {
+      lagrangian: '1/2 M^2 R + M^2/4/gamma \\epsilon^{abcd} R_{abcd}',
+      constants: ['q', 'gamma'],
+      matter: spin,
     };
-    const { verdict } = decide(theory, 'D(rho,1) + 3 H (rho + p) = 0');
-    expect(verdict).toBe('holds');
+    expect(decide(holst, '3 M^2 (H^2 + k/a^2) = rho - gamma^2/(1 + gamma^2) q^2 sigma^2/(12 M^2 a^6)').verdict).toBe(
+      'holds',
+    );
+    expect(decide(holst, '3 M^2 (H^2 + k/a^2) = rho - q^2 sigma^2/(12 M^2 a^6)').verdict).toBe('fails');
   });
 });
