@@ -11,14 +11,14 @@ import {
   commaLines,
   commentLines,
   couplingMembers,
+  EXAMPLE_TEXT,
   functionLines,
   headerLines,
   identifiersFor,
   inputMembers,
   type Language,
   moduleName,
-  sampleCoupling,
-  sampleJet,
+  QUARTERS,
   standsFor,
 } from './code-language.js';
 import { powerText } from './code-model.js';
@@ -43,8 +43,9 @@ const WORDS = new Set(
   ).split(' '),
 );
 
-/** Capitals alone are how headers call their macros: NAN, EOF, M_E; one letter among digits is not. */
-const isMacro = (name: string): boolean => /^[A-Z][A-Z0-9_]*$/.test(name) && name.replace(/[^A-Z]/g, '').length > 1;
+/** Capitals alone are how headers call their macros: NAN, EOF, M_E; one letter among digits is none, nor a last underscore. */
+const isMacro = (name: string): boolean =>
+  /^[A-Z][A-Z0-9_]*[A-Z0-9]$/.test(name) && name.replace(/[^A-Z]/g, '').length > 1;
 const isHeaderMacro = (name: string): boolean => /^(?:si|sa|sigev)_|^(?:be|le)(?:16|32|64)toh$|^hto[bl]e/.test(name);
 
 export const C_NAMING: Naming = {
@@ -282,19 +283,19 @@ function stored(f: CodeFunction, { results }: Body): string[] {
   return results.map((e, i) => `  values[${i}] =${spaced(e)};`);
 }
 
-function exampleText(m: CodeModule, file: string): string {
+function exampleText(m: CodeModule, file: string, sample = QUARTERS): string {
   const n = namesOf(m);
   const variable = (i: CodeInput): string => (i.kind === 'jets' ? `&${i.name}` : i.name);
   const inputs = inputsOf(m).map((input) => {
     if (input.kind === 'vector')
-      return `  const double ${input.name}[] = { ${input.entries.map((_, i) => sampleJet(i, 0)).join(', ')} };`;
+      return `  const double ${input.name}[] = { ${input.entries.map((_, i) => sample.jet(i, 0)).join(', ')} };`;
     const members = input.fields.map(({ name, order }, i) => {
-      const jet = Array.from({ length: order + 1 }, (_, k) => sampleJet(i, k)).join(', ');
+      const jet = Array.from({ length: order + 1 }, (_, k) => sample.jet(i, k)).join(', ');
       return `    .${n.inputs.get(input)!.get(name)} = { ${jet} },`;
     });
     return `  const ${n.prefix}_${input.name} ${input.name} = {\n${members.join('\n')}\n  };`;
   });
-  const members = m.parameters.map((p, i) => `    .${n.couplings.get(p.name)} = ${sampleCoupling(i)},`);
+  const members = m.parameters.map((p, i) => `    .${n.couplings.get(p.name)} = ${sample.coupling(i)},`);
   if (members.length === 0) members.push('    .unused = 0.0,');
   const calls = m.functions.map((f) => {
     const name = n.functionOf(f);
@@ -317,7 +318,7 @@ function exampleText(m: CodeModule, file: string): string {
       printf("%s[%s] = %.17g\\n", ${cString(f.name)}, ${name}_keys[i], values[i]);
   }`;
   });
-  return `/* Calls every function of the module at a sample point. The numbers have no meaning: put in your own. */
+  return `/* ${EXAMPLE_TEXT} */
 #include <stdio.h>
 #define ${n.capitals}_DECLARATIONS
 #include ${cInclude(file)}

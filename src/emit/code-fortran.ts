@@ -11,13 +11,13 @@ import {
   commaLines,
   commentLines,
   couplingMembers,
+  EXAMPLE_TEXT,
   functionLines,
   headerLines,
   inputMembers,
   type Language,
   moduleName,
-  sampleCoupling,
-  sampleJet,
+  QUARTERS,
   standsFor,
 } from './code-language.js';
 import { powerText } from './code-model.js';
@@ -315,7 +315,7 @@ function assignment(target: string, lines: readonly string[]): string {
   return `    ${target} = &\n      ${lines.join(' &\n      ')}`;
 }
 
-function exampleText(m: CodeModule, _file: string): string {
+function exampleText(m: CodeModule, _file: string, sample = QUARTERS): string {
   const n = namesOf(m);
   const inputs = inputsOf(m);
   const declarations = inputs.map((i) =>
@@ -323,9 +323,9 @@ function exampleText(m: CodeModule, _file: string): string {
   );
   const settings = inputs.flatMap((input) => {
     if (input.kind === 'vector')
-      return input.entries.map((_, i) => `  ${input.name}(${i + 1}) = ${sampleJet(i, 0)}_dp`);
+      return input.entries.map((_, i) => `  ${input.name}(${i + 1}) = ${sample.jet(i, 0)}_dp`);
     return input.fields.map(({ name, order }, i) => {
-      const jet = Array.from({ length: order + 1 }, (_, k) => `${sampleJet(i, k)}_dp`);
+      const jet = Array.from({ length: order + 1 }, (_, k) => `${sample.jet(i, k)}_dp`);
       return `  ${input.name}%${n.inputs.get(input)!.get(name)}(0:${order}) = &\n    [${filled(
         jet.map((v, k) => (k < order ? `${v},` : v)),
         110,
@@ -354,18 +354,24 @@ function exampleText(m: CodeModule, _file: string): string {
     end do
   end block`;
   });
-  const couplings = m.parameters.map((p, i) => `  couplings%${n.couplings.get(p.name)} = ${sampleCoupling(i)}_dp`);
-  return `! Calls every function of the module at a sample point. The numbers have no meaning: put in your own.
+  const kinds = new Set(m.functions.map((f) => f.result.kind));
+  const format = (name: string, text: string): string =>
+    `  character(len=*), parameter :: ${name} = '(${text}es25.16e3)'`;
+  const formats = [
+    ...(kinds.has('number') ? [format('one', 'a, " = ", ')] : []),
+    ...(kinds.has('record') || kinds.has('vector') ? [format('keyed', 'a, "[", a, "] = ", ')] : []),
+    ...(kinds.has('matrix') ? [format('entry', 'a, "[", i0, "][", i0, "] = ", ')] : []),
+  ];
+  const indices = kinds.has('matrix') ? ['i', 'j'] : kinds.has('record') || kinds.has('vector') ? ['i'] : [];
+  const couplings = m.parameters.map((p, i) => `  couplings%${n.couplings.get(p.name)} = ${sample.coupling(i)}_dp`);
+  return `! ${EXAMPLE_TEXT}
 program example
   use ${n.module}
   implicit none
-  character(len=*), parameter :: one = '(a, " = ", es25.16e3)'
-  character(len=*), parameter :: keyed = '(a, "[", a, "] = ", es25.16e3)'
-  character(len=*), parameter :: entry = '(a, "[", i0, "][", i0, "] = ", es25.16e3)'
+${formats.join('\n')}
   type(couplings_t) :: couplings
 ${declarations.join('\n')}
-  integer :: i${calls.some((c) => c.includes('matrix')) ? ', j' : ''}
-
+${indices.length > 0 ? `  integer :: ${indices.join(', ')}\n` : ''}
 ${[...couplings, ...settings].join('\n')}
 
 ${calls.join('\n')}

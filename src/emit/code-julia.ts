@@ -11,14 +11,14 @@ import {
   commaLines,
   commentLines,
   couplingMembers,
+  EXAMPLE_TEXT,
   functionLines,
   headerLines,
   identifiersFor,
   inputMembers,
   type Language,
   moduleName,
-  sampleCoupling,
-  sampleJet,
+  QUARTERS,
   standsFor,
 } from './code-language.js';
 import { powerText } from './code-model.js';
@@ -219,13 +219,13 @@ function returned({ result, outputs }: CodeFunction): string {
   return `[${rows.join(';\n        ')}]`;
 }
 
-function exampleText(m: CodeModule, file: string): string {
+function exampleText(m: CodeModule, file: string, sample = QUARTERS): string {
   const n = namesOf(m);
-  const couplings = m.parameters.map((p, i) => `    ${n.couplings.get(p.name)} = ${sampleCoupling(i)},`);
+  const couplings = m.parameters.map((p, i) => `    ${n.couplings.get(p.name)} = ${sample.coupling(i)},`);
   const inputs = inputsOf(m).map((input) => {
-    if (input.kind === 'vector') return `${input.name} = [${input.entries.map((_, i) => sampleJet(i, 0)).join(', ')}]`;
+    if (input.kind === 'vector') return `${input.name} = [${input.entries.map((_, i) => sample.jet(i, 0)).join(', ')}]`;
     const fields = input.fields.map(({ name, order }, i) => {
-      const jet = Array.from({ length: order + 1 }, (_, k) => sampleJet(i, k));
+      const jet = Array.from({ length: order + 1 }, (_, k) => sample.jet(i, k));
       return `    ${n.inputs.get(input)!.get(name)} = [${jet.join(', ')}],`;
     });
     return `${input.name} = (\n${fields.join('\n')}\n)`;
@@ -234,7 +234,7 @@ function exampleText(m: CodeModule, file: string): string {
     (f) => `show_value(${codePointLiteral(f.name)}, ${n.module}.${functionOf(f)}(couplings, ${f.input.name}))`,
   );
   const given = couplings.length === 0 ? 'couplings = NamedTuple()' : `couplings = (\n${couplings.join('\n')}\n)`;
-  return `# Calls every function of the module at a sample point. The numbers have no meaning: put in your own.
+  return `# ${EXAMPLE_TEXT}
 include(${codePointLiteral(file)})
 
 ${given}

@@ -14,8 +14,8 @@ export interface Language {
   readonly extension: string;
   /** The module's text, ending in a newline. The same description gives the same text. */
   readonly write: (m: CodeModule) => string;
-  /** A program that calls every function at a sample point and prints the values, for a module in the given file. */
-  readonly example: (m: CodeModule, file: string) => string;
+  /** A program that calls every function at a point and prints the values, for a module in the given file beside it. */
+  readonly example: (m: CodeModule, file: string, sample?: Sample) => string;
   /** Why a module in a file of that name could not be used; undefined when it can. */
   readonly fileFault?: (file: string) => string | undefined;
 }
@@ -69,9 +69,23 @@ export const commaLines = (items: readonly string[], width = COMMENT_WIDTH): str
     width,
   );
 
-/** Values of the sample point: small quarters, exact in any notation and never zero. */
-export const sampleCoupling = (index: number): string => (((index % 7) + 2) / 4).toFixed(2);
-export const sampleJet = (field: number, order: number): string => (((field + 2 * order) % 5) / 4 + 0.25).toFixed(2);
+/**
+ * A point at which functions are called, as decimal numbers with a point or an exponent: by place among the parameters, and
+ * by place among the fields (or the entries of a list) and order of the derivative.
+ */
+export interface Sample {
+  readonly coupling: (index: number) => string;
+  readonly jet: (field: number, order: number) => string;
+}
+
+/** Small quarters, exact in any notation and never zero. */
+export const QUARTERS: Sample = {
+  coupling: (index) => (((index % 7) + 2) / 4).toFixed(2),
+  jet: (field, order) => (((field + 2 * order) % 5) / 4 + 0.25).toFixed(2),
+};
+
+export const EXAMPLE_TEXT =
+  'Calls every function of the module at a sample point. The numbers have no meaning: put in your own.';
 
 /** An identifier for each name, in order; the same names give the same identifiers. */
 export function identifiersFor(

@@ -8,8 +8,8 @@ import { monomial, type Poly } from '../algebra/poly.js';
 import { rational } from '../algebra/rational.js';
 import { jetName } from '../algebra/ring.js';
 import type { BiScalarForm, Derivation, FluidValue, FriedmannForm, SpinElimination } from '../derivation.js';
-import type { CodeFunction, CodeModule, CodeOutput, CodeResult, JetsInput } from './code-description.js';
 import { currentFunctions } from './code-current.js';
+import type { CodeFunction, CodeModule, CodeOutput, CodeResult, JetsInput } from './code-description.js';
 import { frameFunctions } from './code-frames.js';
 import { dimensionsIn, dimensionsOf, modelParameters } from './parameters.js';
 
@@ -37,7 +37,7 @@ export function codeModel(d: Derivation, { jacobian }: ModelOptions): CodeModule
     ...currentFunctions(d),
     ...frameFunctions(d),
   ];
-  const drafts = jacobian ? [...base.slice(0, 2), jacobianOf(d), ...base.slice(2)] : base;
+  const drafts = jacobian ? [...base.slice(0, 2), ...jacobianOf(d), ...base.slice(2)] : base;
   const input = jetsOf(d, drafts);
   return {
     slug: d.theory.slug,
@@ -146,18 +146,19 @@ const constraints = (values: ReadonlyMap<string, Poly>, dimension: DimensionText
     withDimension(dimension, (key) => `component ${key}`),
   );
 
-/** ∂E_q/∂D(f,n): rows in the order of the residuals, columns field by field, each from its value up. */
-function jacobianOf(d: Derivation): Draft {
+/** ∂E_q/∂D(f,n): rows in the order of the residuals, columns field by field, each from its value up; none without columns. */
+function jacobianOf(d: Derivation): Draft[] {
   const equations = [...d.equations];
   const columns = d.fields.flatMap(({ name }) => {
     const order = Math.max(...equations.map(([, e]) => orderIn(e, name)));
     return Array.from({ length: order + 1 }, (_, n) => jetName(name, n));
   });
-  return {
+  if (columns.length === 0) return [];
+  const jacobian: Draft = {
     name: 'jacobian',
     doc: [
-      'Partial derivatives of the residuals with respect to the jets, one at a time; couplings and densities are held fixed,',
-      'also a density that is a function of time.',
+      'Partial derivatives of the residuals with respect to the jets, one at a time; couplings and densities are held ' +
+        'fixed, also a density that is a function of time.',
     ],
     result: {
       kind: 'matrix',
@@ -169,6 +170,7 @@ function jacobianOf(d: Derivation): Draft {
       columns.map((jet) => ({ key: `${q},${jet}`, meaning: `∂E_${q}/∂${jet}`, numerator: partial(e, jet) })),
     ),
   };
+  return [jacobian];
 }
 
 /** H = ȧ/(aN), one for each scale factor. */

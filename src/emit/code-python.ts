@@ -10,11 +10,11 @@ import {
   COUPLINGS,
   commaLines,
   commentLines,
+  EXAMPLE_TEXT,
   functionLines,
   headerLines,
   type Language,
-  sampleCoupling,
-  sampleJet,
+  QUARTERS,
 } from './code-language.js';
 import { powerText } from './code-model.js';
 import { codePointLiteral, functionName, type Naming } from './identifiers.js';
@@ -200,18 +200,18 @@ function returned({ result, outputs }: CodeFunction, { results }: Body): string 
   return `[\n${rows.map((r) => `        ${r},`).join('\n')}\n    ]`;
 }
 
-function exampleText(m: CodeModule, file: string): string {
-  const couplings = m.parameters.map((p, i) => `    ${literal(p.name)}: ${sampleCoupling(i)},`);
+function exampleText(m: CodeModule, file: string, sample = QUARTERS): string {
+  const couplings = m.parameters.map((p, i) => `    ${literal(p.name)}: ${sample.coupling(i)},`);
   const inputs = inputsOf(m).map((input) => {
-    if (input.kind === 'vector') return `${input.name} = [${input.entries.map((_, i) => sampleJet(i, 0)).join(', ')}]`;
+    if (input.kind === 'vector') return `${input.name} = [${input.entries.map((_, i) => sample.jet(i, 0)).join(', ')}]`;
     const fields = input.fields.map(({ name, order }, i) => {
-      const jet = Array.from({ length: order + 1 }, (_, n) => sampleJet(i, n));
+      const jet = Array.from({ length: order + 1 }, (_, n) => sample.jet(i, n));
       return `    ${literal(name)}: [${jet.join(', ')}],`;
     });
     return `${input.name} = {\n${fields.join('\n')}\n}`;
   });
   const calls = m.functions.map((f) => `show(${literal(f.name)}, theory.${functionOf(f)}(couplings, ${f.input.name}))`);
-  return `"""Calls every function of the module at a sample point. The numbers have no meaning: put in your own."""
+  return `"""${EXAMPLE_TEXT}"""
 import ${file.replace(/\.py$/, '')} as theory
 
 couplings = {

@@ -9,10 +9,11 @@ import {
   COUPLINGS,
   commaLines,
   commentLines,
+  EXAMPLE_TEXT,
   headerLines,
   type Language,
-  sampleCoupling,
-  sampleJet,
+  QUARTERS,
+  type Sample,
 } from './code-language.js';
 import { powerText } from './code-model.js';
 import { ECMASCRIPT, propertyKey, stringLiteral } from './identifiers.js';
@@ -39,7 +40,8 @@ export const TYPESCRIPT: Language = {
   title: 'TypeScript',
   extension: '.ts',
   write: (m) => moduleText(m, { typed: true }),
-  example: (m, file) => exampleText(m, file.replace(/\.([mc]?)ts$/, '.$1js'), { typed: true }),
+  example: (m, file, sample = QUARTERS) =>
+    exampleText(m, file.replace(/\.([mc]?)ts$/, '.$1js'), sample, { typed: true }),
 };
 
 export const JAVASCRIPT: Language = {
@@ -47,7 +49,7 @@ export const JAVASCRIPT: Language = {
   title: 'JavaScript (ES module)',
   extension: '.js',
   write: (m) => moduleText(m, { typed: false }),
-  example: (m, file) => exampleText(m, file, { typed: false }),
+  example: (m, file, sample = QUARTERS) => exampleText(m, file, sample, { typed: false }),
 };
 
 function moduleText(m: CodeModule, dialect: Dialect): string {
@@ -273,20 +275,20 @@ function returned({ result, outputs }: CodeFunction, { results }: Body): string 
   return `  return [\n${texts.join('\n')}\n  ];`;
 }
 
-function exampleText(m: CodeModule, file: string, { typed }: Dialect): string {
-  const couplings = m.parameters.map((p, i) => `  ${propertyKey(p.name)}: ${sampleCoupling(i)},`);
+function exampleText(m: CodeModule, file: string, sample: Sample, { typed }: Dialect): string {
+  const couplings = m.parameters.map((p, i) => `  ${propertyKey(p.name)}: ${sample.coupling(i)},`);
   const inputs = inputsOf(m).map((input) => {
     if (input.kind === 'vector')
-      return `const ${input.name} = [${input.entries.map((_, i) => sampleJet(i, 0)).join(', ')}];`;
+      return `const ${input.name} = [${input.entries.map((_, i) => sample.jet(i, 0)).join(', ')}];`;
     const fields = input.fields.map(({ name, order }, i) => {
-      const jet = Array.from({ length: order + 1 }, (_, n) => sampleJet(i, n));
+      const jet = Array.from({ length: order + 1 }, (_, n) => sample.jet(i, n));
       return `  ${propertyKey(name)}: [${jet.join(', ')}],`;
     });
     return `const ${input.name} = {\n${fields.join('\n')}\n};`;
   });
   const calls = m.functions.map((f) => `show(${stringLiteral(f.name)}, theory.${f.name}(couplings, ${f.input.name}));`);
   return `${[
-    '// Calls every function of the module at a sample point. The numbers have no meaning: put in your own.',
+    `// ${EXAMPLE_TEXT}`,
     `import * as theory from ${stringLiteral(`./${file}`)};`,
     '',
     `const couplings = {\n${couplings.join('\n')}\n};`,

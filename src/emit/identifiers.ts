@@ -67,7 +67,7 @@ export function makeNameTable(taken: Iterable<string>, naming: Naming = ECMASCRI
     claim(name) {
       let candidate = name.slice(0, naming.longest);
       for (let n = 1; used.has(form(candidate)) || naming.isWord(form(candidate)); n++) {
-        const suffix = n === 1 ? '_' : `_${n}`;
+        const suffix = n === 1 ? '_' : `_v${n}`;
         candidate = `${name.slice(0, naming.longest - suffix.length)}${suffix}`;
       }
       used.add(form(candidate));
