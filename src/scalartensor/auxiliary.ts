@@ -3,7 +3,7 @@
  * verified by substitution before it counts; branches are followed one by one; what cannot be integrated out stays, with the
  * reason of every rule that looked at it.
  */
-import { moveTo } from '../algebra/collect.js';
+import { coefficientOf, moveTo } from '../algebra/collect.js';
 import {
   divideFraction,
   equalFraction,
@@ -17,7 +17,7 @@ import { generator, type Poly } from '../algebra/poly.js';
 import { rational } from '../algebra/rational.js';
 import type { Ring } from '../algebra/ring.js';
 import { LETTER_PREDICATES } from './auxiliary-conditions.js';
-import { type AuxiliaryRule, FIELD, LETTERS, letterName, RATE } from './auxiliary-rule.js';
+import { type AuxiliaryRule, FIELD, LETTERS, letterName, PATTERN_RING, RATE } from './auxiliary-rule.js';
 import { movingNames } from './form-rules.js';
 import { reduced, rootName, rootsOf, type Splitter, type StationaryRoot } from './stationary-roots.js';
 import {
@@ -159,12 +159,26 @@ export async function applyRule(
   return typeof ready === 'string' ? ready : byRoots(rule, form, field, ready, split);
 }
 
+/** Pairs of terms that inserting a solution may multiply. */
+const MAX_PAIRS = 100_000;
+
+/** How many pairs of terms inserting a solution multiplies, roughly; 0 for rules that insert none. */
+function pairsIn(rule: AuxiliaryRule, form: VectorForm, field: string): number {
+  if (rule.does !== 'replace' && rule.does !== 'branches') return 0;
+  const all = form.value.numerator.size;
+  const own = all - coefficientOf(form.value.numerator, field, 0).size;
+  return own * all;
+}
+
 function prepared(rule: AuxiliaryRule, form: VectorForm, field: string): Binding {
   if (!occurs(form.value, field) && !occurs(form.value, rateAlong(field))) return 'the field does not occur';
   if ((form.roots?.length ?? 0) > 0) return 'a root of another field is left';
   const bound = bind(rule, form, field);
   if (typeof bound === 'string') return bound;
-  return unmet(rule, bound, form, field) ?? bound;
+  const reason = unmet(rule, bound, form, field);
+  if (reason !== undefined) return reason;
+  const pairs = pairsIn(rule, form, field);
+  return pairs <= MAX_PAIRS ? bound : `the result would be too long: ${pairs} pairs of terms to multiply`;
 }
 
 /** As `applyRule` for the rules that have no branches. */
@@ -179,8 +193,9 @@ export function applyDirectly(
   const result = (key: string): Fraction => filled(rule.results.get(key)!, bound, ring);
   switch (rule.does) {
     case 'replace': {
+      verifyTemplate(rule);
+      verifyBinding(rule, form, field, bound);
       const [value, solution] = [result('becomes'), result('field')];
-      verifyStationary(form, field, solution, value);
       const after = { ...form, value, scalars: without(form, field) };
       return [step(rule, field, form, after, bound, { solved: { field, value: solution } })];
     }
@@ -197,13 +212,40 @@ export function applyDirectly(
   }
 }
 
-/** The solution makes the derivative zero and the Lagrangian what the rule says. */
-function verifyStationary(form: VectorForm, field: string, solution: Fraction, value: Fraction): void {
-  const images = new Map([[field, solution]]);
-  if (!isZeroFraction(insert(partialOfFraction(form.value, field), images)))
-    throw new Error(`the solution for ${field} does not solve its equation`);
-  if (!equalFraction(insert(form.value, images), value))
-    throw new Error(`the Lagrangian without ${field} is not the one with its solution`);
+/** Rules whose templates were tested. */
+const sound = new Set<AuxiliaryRule>();
+
+/**
+ * The solution makes the derivative zero and the Lagrangian what the rule says: as an identity in the letters, tested once for a
+ * rule, which holds for everything that is bound to them.
+ */
+function verifyTemplate(rule: AuxiliaryRule): void {
+  if (sound.has(rule)) return;
+  const enters = fraction(rule.enters!);
+  const letters = new Map(LETTERS.map((l) => [letterName(l), fraction(generator(PATTERN_RING, letterName(l)))]));
+  const template = (key: string): Fraction => insertInto(rule.results.get(key)!, letters, PATTERN_RING);
+  const images = new Map([[FIELD, template('field')]]);
+  if (!isZeroFraction(insert(partialOfFraction(enters, FIELD), images)))
+    throw new Error(`the solution of the rule ${rule.id} does not solve the equation of the field`);
+  if (!equalFraction(insert(enters, images), template('becomes')))
+    throw new Error(`the Lagrangian of the rule ${rule.id} is not the one with its solution`);
+  sound.add(rule);
+}
+
+/** What is bound to the letters makes up the Lagrangian. */
+function verifyBinding(
+  rule: AuxiliaryRule,
+  form: VectorForm,
+  field: string,
+  bound: ReadonlyMap<string, Fraction>,
+): void {
+  const ring = ringOf(form.value);
+  const own = new Map([
+    [FIELD, fraction(generator(ring, field))],
+    [RATE, fraction(generator(ring, rateAlong(field)))],
+  ]);
+  if (!equalFraction(filled(rule.enters!, new Map([...own, ...bound]), ring), form.value))
+    throw new Error(`the rule ${rule.id} does not match what it was applied to`);
 }
 
 /** b n·∂q = −θ Φ − Σ Φ_r n·∂r − Φ_³R n·∂³R up to a divergence, with Φ = ∫ b dq. */
