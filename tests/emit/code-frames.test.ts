@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
+import { typescriptModule } from '../../src/emit/code.js';
 import { FRAME_NAMES, frameExpressions, frameFunctions } from '../../src/emit/code-frames.js';
-import { typescriptModule } from '../../src/emit/typescript.js';
 import { BARE, DECOUPLED, withFields } from './scalar-fields-theories.js';
 
 describe('functions of a conformal frame', () => {
