@@ -97,7 +97,7 @@ async function writeResults(theory: Theory, options: DeriveOptions, io: Io): Pro
     progress.step('typesetting');
     const [{ derivationTex, equationsTex }, { typescriptModule }, { reportHtml }, { summary }] = await Promise.all([
       import('../emit/latex.js'),
-      import('../emit/typescript.js'),
+      import('../emit/code.js'),
       import('../emit/report.js'),
       import('../emit/summary.js'),
     ]);

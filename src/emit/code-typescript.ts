@@ -284,14 +284,14 @@ function exampleText(m: CodeModule, file: string, sample: Sample, { typed }: Dia
       const jet = Array.from({ length: order + 1 }, (_, n) => sample.jet(i, n));
       return `  ${propertyKey(name)}: [${jet.join(', ')}],`;
     });
-    return `const ${input.name} = {\n${fields.join('\n')}\n};`;
+    return `const ${input.name}${typed ? `: theory.${typeName(input.name)}` : ''} = {\n${fields.join('\n')}\n};`;
   });
   const calls = m.functions.map((f) => `show(${stringLiteral(f.name)}, theory.${f.name}(couplings, ${f.input.name}));`);
   return `${[
     `// ${EXAMPLE_TEXT}`,
     `import * as theory from ${stringLiteral(`./${file}`)};`,
     '',
-    `const couplings = {\n${couplings.join('\n')}\n};`,
+    `const couplings${typed ? ': theory.Couplings' : ''} = {\n${couplings.join('\n')}\n};`,
     ...inputs,
     '',
     typed ? 'const show = (name: string, value: number | object): void => {' : 'const show = (name, value) => {',

@@ -49,9 +49,3 @@ export function doubleParts(value: Rational): readonly [string] | readonly [stri
   }
   return den === 1n ? [`${num}`] : [`${num}`, `${den}`];
 }
-
-/** The same as text of a language that divides integers as doubles; a quotient stands in brackets. */
-export function doubleLiteral(value: Rational): string {
-  const [top, bottom] = doubleParts(value);
-  return bottom === undefined ? top : `(${top} / ${bottom})`;
-}

@@ -4,6 +4,8 @@ import type { Fraction } from '../../src/algebra/fraction.js';
 import { toNumber } from '../../src/algebra/rational.js';
 import type { Derivation, SpinElimination } from '../../src/derivation.js';
 import { typescriptModule } from '../../src/emit/code.js';
+import { JAVASCRIPT, TYPESCRIPT, tupleType } from '../../src/emit/code-typescript.js';
+import { firstOrderModule, modelOf } from './code-fixtures.js';
 import {
   complaints,
   deriveText,
@@ -232,5 +234,29 @@ describe('what spin adds', () => {
       const connection = module.connection(sample.couplings, sample.jets);
       for (const [q, f] of elimination.solution) close(connection[q], f);
     }
+  });
+
+  it('compiles with its Jacobian and its example under the strictest flags, and with a state', async () => {
+    const files = [modelOf(THEORIES['general quadratic']!), firstOrderModule()].flatMap((m, i) => [
+      [`model${i}.mts`, TYPESCRIPT.write(m)],
+      [`example${i}.mts`, TYPESCRIPT.example(m, `model${i}.mts`)],
+    ]);
+    expect(await complaints(Object.fromEntries(files))).toBe('');
+  });
+
+  it('is the same without types in JavaScript', () => {
+    const m = modelOf(THEORIES['general quadratic']!);
+    const [typed, plain] = [TYPESCRIPT.write(m), JAVASCRIPT.write(m)];
+    const body = (text: string) => /^export function rhoT.*\n([\s\S]*?)^}/m.exec(text)![1];
+    expect(body(plain)).toBe(body(typed));
+    expect(plain).not.toMatch(/: number|as const|interface /);
+    expect(plain).toContain('k: spatial curvature; mass dimension 2');
+  });
+});
+
+describe('tupleType', () => {
+  it('labels the entries and leaves the end open', () => {
+    expect(tupleType(0)).toBe('readonly [value: number, ...higher: number[]]');
+    expect(tupleType(4)).toContain('third: number, order4: number, ...higher');
   });
 });
