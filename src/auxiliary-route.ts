@@ -110,7 +110,7 @@ function routeBranch(
   ring: Ring,
   check: (name: string, detail: string, holds: boolean) => void,
 ): RouteBranch {
-  const isClosed = (branch.form.roots?.length ?? 0) === 0;
+  const isClosed = (branch.form.roots?.length ?? 0) === 0 && branch.steps.every((s) => !s.constraint);
   const metric = isClosed ? metricForm(branch.form) : undefined;
   const isShort = sizeOf(branch.form.value) <= MAX_COMPARED_TERMS;
   const isCompared = isClosed && isShort && isComparable(branch) && branch.steps.length > 0;

@@ -196,7 +196,7 @@ export interface LinearisedField {
 
 export interface RouteBranch {
   readonly branch: EliminationBranch;
-  /** Absent when a root of an equation is left. */
+  /** Absent when a root of an equation or a constraint is left. */
   readonly metric: MetricForm | undefined;
   /** Whether its equations were compared with those of the theory; substitution was verified in any case. */
   readonly isCompared: boolean;

@@ -124,7 +124,9 @@ function resultPassage(
   if (!reached) {
     const why = metric?.stop
       ? prose`The rule ${metric.stop.rule} stops on the way to a metric form: ${withFormulas(metric.stop.reason)}. What is left is`
-      : prose`What is left is`;
+      : branch.steps.some((x) => x.constraint)
+        ? prose`What is left, with the fields bound by the constraint or the conserved charge above, is`
+        : prose`What is left is`;
     return passage(
       `auxiliary-result${tag}`,
       'What is left',

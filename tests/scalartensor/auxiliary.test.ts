@@ -53,6 +53,14 @@ describe('integrateOut', () => {
     expect(branch!.refused[0]!.reasons[0]!.reason).toContain('root');
   });
 
+  it('stops at a constraint or a conserved charge, which the form alone does not know about', async () => {
+    for (const text of ['m r D(q,1) + f r^2', 'q r^3 - f q + m r^2']) {
+      const [branch] = await integrateOut(form(text), ['q', 'r'], fieldRules());
+      expect([branch!.steps.length, branch!.refused.map((r) => r.field)], text).toEqual([1, ['r']]);
+      expect(isComparable(branch!), text).toBe(false);
+    }
+  });
+
   it('states where a coefficient must not vanish', async () => {
     const [branch] = await integrateOut(form('m r q^2 + f q'), ['q'], fieldRules());
     expect(branch!.steps[0]!.loses.map((l) => l.where && shown(l.where))).toEqual(['r*m']);
