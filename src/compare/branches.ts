@@ -2,11 +2,11 @@
  * All solutions of a system of differential equations in one function of time, as branches: each a chain (elimination.ts)
  * together with the factors that were taken to vanish or not to. The classical elimination by characteristic sets for
  * ordinary differential polynomials over generic couplings: a polynomial with a factor splits the branch, a polynomial in
- * couplings alone ends it. Invariant: in a chain every link is reduced by the others, and the derivative of a link whose
- * leader is no jet is reduced to zero. Imports eliminations.
+ * couplings alone ends it. Invariant: in a chain every link is reduced by the others; the equations, and the derivative of a
+ * link whose leader is no jet, are reduced to zero. Imports eliminations.
  */
 import { infix } from '../algebra/infix.js';
-import { equals, generator, isZero, multiply, type Poly } from '../algebra/poly.js';
+import { constant, equals, generator, isZero, multiply, type Poly } from '../algebra/poly.js';
 import { BoundError } from './budget.js';
 import {
   type Arena,
@@ -40,8 +40,6 @@ export interface DeadEnd {
   readonly nonzero: readonly Poly[];
   /** Polynomial in the couplings that would have to vanish. */
   readonly needs: Poly;
-  /** Whether nothing but chosen factors was divided by on the way; otherwise a pivot may vanish on the branch. */
-  readonly proved: boolean;
 }
 
 export interface Solutions {
@@ -60,8 +58,8 @@ interface State {
   readonly zero: readonly Poly[];
   readonly nonzero: readonly Poly[];
   readonly pivots: readonly Poly[];
-  /** Whether no pivot with a variable was divided by. */
-  readonly proved: boolean;
+  /** Factors with variables that were divided by and not chosen: what follows holds where they do not vanish. */
+  readonly risks: readonly Poly[];
 }
 
 /**
@@ -78,26 +76,63 @@ export function solutionsOf(
 ): Solutions {
   const branches: Branch[] = [];
   const deadEnds: DeadEnd[] = [];
-  const open: State[] = [{ links: [], queue: given, zero: [], nonzero, pivots: [], proved: true }];
+  const open: State[] = [{ links: [], queue: given, zero: [], nonzero, pivots: [], risks: [] }];
   for (let rounds = 0; open.length > 0; rounds++) {
     if (rounds > MAX_ROUNDS) throw new BoundError(`more than ${MAX_ROUNDS} steps of elimination`);
     if (open.length + branches.length > MAX_BRANCHES) throw new BoundError(`more than ${MAX_BRANCHES} branches`);
     const state = open.pop()!;
     if (state.queue.length === 0) {
+      const lost = lostIn(arena, given, state);
+      if (lost.length > 0) {
+        open.push({ ...state, queue: lost });
+        continue;
+      }
       const { zero, nonzero: chosen, pivots } = state;
-      branches.push({ links: orderedLinks(arena, state.links), zero, nonzero: chosen, pivots });
+      const vanishing = vanishingAmong(arena, state, state.risks);
+      if (vanishingAmong(arena, state, chosen))
+        deadEnds.push({ zero, nonzero: chosen, needs: constant(arena.space.ring, 1) });
+      else if (vanishing) open.push(restarted(given, state, vanishing));
+      else branches.push({ links: orderedLinks(arena, state.links), zero, nonzero: chosen, pivots });
       continue;
     }
     const next = advance({ ...arena, pivots: [...state.pivots] }, state, trial);
     open.push(...next.states);
-    if (next.deadEnd) deadEnds.push(next.deadEnd);
+    if (!next.deadEnd) continue;
+    // Nothing was proved for the zeros of what was divided by: they are branches of their own.
+    open.push(...next.risks.map((base) => restarted(given, { ...state, ...next.deadEnd }, base)));
+    if (next.risks.length === 0) deadEnds.push(next.deadEnd);
   }
   return { branches, deadEnds };
+}
+
+/**
+ * Equations that the chain does not reduce to zero. A pivot that vanishes by what was found later may have lost them on the
+ * way: they are taken up again.
+ */
+function lostIn(arena: Arena, given: readonly Known[], state: State): readonly Known[] {
+  const here: Arena = { ...arena, pivots: [...state.pivots] };
+  const chosen = state.zero.map((poly): Known => ({ kind: 'given', poly, name: `${infix(poly)} = 0` }));
+  return [...given, ...chosen].filter((known) => !isZero(reduce(here, known.poly, state.links).rest));
+}
+
+/** One of the polynomials that vanishes by what was found; what was divided by must not, or the branch is empty. */
+function vanishingAmong(arena: Arena, state: State, polys: readonly Poly[]): Poly | undefined {
+  const here: Arena = { ...arena, pivots: [...state.pivots] };
+  return polys.find((p) => isZero(reduce(here, p, state.links).rest));
+}
+
+/** The equations from the beginning, with one more factor that vanishes. */
+function restarted(given: readonly Known[], state: State, base: Poly): State {
+  const zero = [...state.zero, base];
+  const queue = [...given, ...zero.map((poly): Known => ({ kind: 'given', poly, name: `${infix(poly)} = 0` }))];
+  return { links: [], queue, zero, nonzero: state.nonzero, pivots: [], risks: [] };
 }
 
 interface Advance {
   readonly states: readonly State[];
   readonly deadEnd?: DeadEnd;
+  /** Of the dead end. */
+  readonly risks: readonly Poly[];
 }
 
 /** Takes the simplest polynomial of the queue into the chain. Where it splits, the generic branch comes last. */
@@ -107,7 +142,7 @@ function advance(arena: Arena, before: State, trial: readonly Poly[]): Advance {
   const queue = before.queue.filter((known) => known !== chosen);
   const { rest, steps } = reduce(arena, chosen.poly, before.links);
   const { pivots } = arena;
-  if (isZero(rest)) return { states: [{ ...before, queue, pivots }] };
+  if (isZero(rest)) return { states: [{ ...before, queue, pivots }], risks: [] };
 
   const { unit, variables, rest: reduced } = splitFactors(space, rest);
   let left = reduced;
@@ -126,21 +161,22 @@ function advance(arena: Arena, before: State, trial: readonly Poly[]): Advance {
   }
   const tail = splitFactors(space, left);
   const choices = divided.map((f) => f.base).filter((base) => mayVanish(arena, before, base));
-  const risky = [...divided, ...steps.flatMap((step) => step.d)].some(
-    ({ base }) => involvesVariable(arena, base) && ![...before.nonzero, ...choices].some((p) => equals(p, base)),
-  );
-  const state = { ...before, queue, pivots, proved: before.proved && !risky };
+  const known = [...before.risks, ...before.nonzero, ...choices];
+  const risks = [...before.risks];
+  for (const { base } of [...divided, ...steps.flatMap((step) => [...step.d, ...step.u])])
+    if (involvesVariable(arena, base) && ![...known, ...risks].some((p) => equals(p, base))) risks.push(base);
+  const state = { ...before, queue, pivots, risks };
   const alone = tail.rest.size === 1;
   const link = (poly: Poly, among: Factors, nonzero: readonly Poly[]): State => {
     const all = multiply(unit, tail.unit);
-    const known: Known = { kind: 'combined', poly, base: chosen, steps, unit: all, divided: among };
-    return withLink(arena, { ...state, nonzero }, known, leaderOf(arena, poly)!);
+    const made: Known = { kind: 'combined', poly, base: chosen, steps, unit: all, divided: among };
+    return withLink(arena, { ...state, nonzero }, made, leaderOf(arena, poly)!);
   };
   // A single factor is no choice: it vanishes.
   const [only] = choices;
   if (alone && choices.length === 1 && divided.find((f) => equals(f.base, only!))!.power === 1) {
     const others = divided.filter((f) => !equals(f.base, only!));
-    return { states: [link(only!, others, state.nonzero)] };
+    return { states: [link(only!, others, state.nonzero)], risks: [] };
   }
 
   // One branch for each factor that may vanish, those before it taken not to; the last one has none of them.
@@ -151,8 +187,8 @@ function advance(arena: Arena, before: State, trial: readonly Poly[]): Advance {
   });
   const nonzero = [...state.nonzero, ...choices];
   if (!alone && leaderOf(arena, tail.rest) !== undefined)
-    return { states: [...states, link(tail.rest, divided, nonzero)] };
-  return { states, deadEnd: { zero: state.zero, nonzero, needs: tail.rest, proved: state.proved } };
+    return { states: [...states, link(tail.rest, divided, nonzero)], risks: [] };
+  return { states, deadEnd: { zero: state.zero, nonzero, needs: tail.rest }, risks };
 }
 
 const variable = ({ space }: Arena, g: number): Poly => generator(space.ring, space.ring.generators[g]!.name);

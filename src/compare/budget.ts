@@ -3,6 +3,7 @@
  * same question always has the same answer. Imports polynomials.
  */
 import { multiply, type Poly } from '../algebra/poly.js';
+import { ExponentLimitError } from '../algebra/ring.js';
 
 /** Thrown when an elimination would go beyond its bound; the answer is then "undecided". */
 export class BoundError extends Error {
@@ -10,6 +11,12 @@ export class BoundError extends Error {
     super(what);
     this.name = 'BoundError';
   }
+}
+
+/** The bound that an error says was exceeded, powers beyond those of the kernel included; undefined for any other error. */
+export function boundIn(error: unknown): BoundError | undefined {
+  if (error instanceof BoundError) return error;
+  return error instanceof ExponentLimitError ? new BoundError(error.message) : undefined;
 }
 
 export class Budget {

@@ -9,7 +9,7 @@ import { PRIMES } from '../algebra/modular.js';
 import { isZero, type Poly } from '../algebra/poly.js';
 import { exponentRange } from '../algebra/ring.js';
 import type { Branch } from './branches.js';
-import { BoundError, type Budget } from './budget.js';
+import { type Budget, boundIn } from './budget.js';
 import { type Certificate, Certifier, certifies } from './certificate.js';
 import { type Arena, reduce } from './elimination.js';
 import {
@@ -44,8 +44,8 @@ export function consequence(solved: Solved, branch: Branch, p: Poly): Verdict {
   try {
     return decided(solved, arena, branch, p);
   } catch (error) {
-    if (!(error instanceof BoundError)) throw error;
-    return { verdict: 'undecided', reason: error.message, residual: undefined };
+    if (!boundIn(error)) throw error;
+    return { verdict: 'undecided', reason: boundIn(error)!.message, residual: undefined };
   }
 }
 
@@ -109,7 +109,7 @@ export function residualOf(
 }
 
 /** What a certificate takes not to vanish: its denominator, and couplings that it divides by. */
-function conditionsOf(space: JetSpace, { denominator, cofactors }: Certificate, p: Poly): string[] {
+export function conditionsOf(space: JetSpace, { denominator, cofactors }: Certificate, p: Poly): string[] {
   const divided = new Set<string>();
   const own = exponentRange(space.ring, p.keys).low;
   for (const { value } of cofactors)

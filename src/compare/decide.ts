@@ -11,14 +11,16 @@ import type { Derivation } from '../derivation.js';
 import { errorAt, InputError } from '../notation/diagnostics.js';
 import { plainPassage } from '../notation/passage.js';
 import { type Branch, relationsOf } from './branches.js';
-import { BoundError } from './budget.js';
+import { BoundError, boundIn } from './budget.js';
 import { type Claim, readClaim } from './claim.js';
 import { consequence, type Residual, type Verdict } from './consequence.js';
+import { type Counterexample, counterexample } from './counterexample.js';
 import { basesOf } from './factors.js';
+import { identically } from './identity.js';
 import type { JetSpace } from './jet-space.js';
 import { RANKINGS, type RankingName } from './ranking.js';
 import { type Repair, repairsOf } from './repair.js';
-import { BOUNDS, type Bound, equationsOf, type Solved, solve } from './system.js';
+import { BOUNDS, type Bound, type Equations, equationsOf, type Solved, solve } from './system.js';
 import { type Vocabulary, vocabularyOf } from './vocabulary.js';
 
 export interface ClaimOptions {
@@ -53,6 +55,8 @@ export interface ClaimReport {
   /** What left minus right comes to where the claim fails, in its simplest form. */
   readonly residual: Residual | undefined;
   readonly repairs: readonly Repair[];
+  /** Particular couplings for which the claim fails, where the equations could not be solved for general ones. */
+  readonly counterexample?: Counterexample;
 }
 
 /** A branch without solutions, with the relation between couplings that it would need. */
@@ -132,12 +136,18 @@ class Settlement {
   report(claim: Claim): ClaimReport {
     this.used = true;
     let best: ClaimReport | undefined;
-    for (const bound of this.question.bounds)
+    for (const bound of this.question.bounds) {
       for (const ranking of RANKINGS) {
         const report = this.under(ranking, bound, claim);
         if (report.verdict !== 'undecided') return report;
         best = report;
       }
+      // Equations too large to be solved may still have the claim for an obvious combination.
+      const result = identically(this.equations([]), claim.poly, bound);
+      if (result) return { ...best!, verdict: 'holds', reason: undefined, branches: [{ branch: [], result }] };
+      const found = this.counterexample(claim, bound);
+      if (found) return { ...best!, verdict: 'fails', reason: undefined, branches: [], counterexample: found };
+    }
     return best!;
   }
 
@@ -191,21 +201,31 @@ class Settlement {
     return relationsOf({ ...branch, nonzero: branch.nonzero.filter((p) => !assumed.some((q) => equals(p, q))) });
   }
 
-  private solve(ranking: RankingName, bound: Bound): Attempt | BoundError {
+  /** Only where couplings are free: conditions and assumptions about them would have to be obeyed. */
+  private counterexample({ poly }: Claim, bound: Bound): Counterexample | undefined {
+    const { relations, theory } = this.d;
+    if (relations.conditions.length > 0 || (theory.assumptions ?? []).length > 0) return undefined;
+    const equations = this.equations(ratesOf(this.question.vocabulary.space));
+    return counterexample(equations, poly, ['connection', 'expansion', 'matter'], bound);
+  }
+
+  private equations(more: readonly Poly[]): Equations {
     const { vocabulary, zero, nonzero } = this.question;
-    const { space } = vocabulary;
-    const equations = (more: readonly Poly[]) =>
-      equationsOf(space, this.d, this.anyMatter, { zero, nonzero: [...nonzero, ...more] });
+    return equationsOf(vocabulary.space, this.d, this.anyMatter, { zero, nonzero: [...nonzero, ...more] });
+  }
+
+  private solve(ranking: RankingName, bound: Bound): Attempt | BoundError {
     try {
       // Static universes are solutions of their own; they are looked at only where nothing else is left.
-      const moving = solve(equations(ratesOf(space)), ranking, bound);
+      const moving = solve(this.equations(ratesOf(this.question.vocabulary.space)), ranking, bound);
       if (moving.solutions.branches.length > 0) return { solved: moving, staticOnly: false };
-      const all = solve(equations([]), ranking, bound);
+      const all = solve(this.equations([]), ranking, bound);
       if (all.solutions.branches.length === 0) throw noSolution(this.question.branch, all);
       return { solved: all, staticOnly: true };
     } catch (error) {
-      if (error instanceof BoundError) return error;
-      throw error;
+      const refusal = boundIn(error);
+      if (!refusal) throw error;
+      return refusal;
     }
   }
 }
@@ -235,7 +255,12 @@ const simplest = (residuals: readonly Residual[]): Residual | undefined =>
 
 /** The verdict for the theory's own matter, with what was seen better for any matter. */
 function combined(own: ClaimReport, general: ClaimReport | undefined): ClaimReport {
-  if (own.verdict !== 'fails' || general?.verdict !== 'fails') return own;
+  if (general?.verdict !== 'fails') return own;
+  if (own.verdict === 'undecided') {
+    const reason = `it does not hold for matter of any pressure; for the fluids of the theory ${own.reason}`;
+    return { ...own, reason, residual: general.residual };
+  }
+  if (own.verdict !== 'fails') return own;
   const lone = general.branches.length === 1 && own.branches.length === 1;
   const residuals = [general.residual, own.residual].filter((r) => r !== undefined);
   return {

@@ -8,7 +8,7 @@ import { equals, generator, type Poly } from '../algebra/poly.js';
 import { exponentRange } from '../algebra/ring.js';
 import type { Derivation } from '../derivation.js';
 import { type Branch, relationsOf } from './branches.js';
-import { BoundError } from './budget.js';
+import { boundIn } from './budget.js';
 import { consequence, type Residual } from './consequence.js';
 import type { JetSpace } from './jet-space.js';
 import { ELIMINATIONS, RANKINGS, type RankingName } from './ranking.js';
@@ -73,8 +73,8 @@ export function equivalence(
       conditions: [...new Set([...forth.conditions, ...back.conditions])],
     };
   } catch (error) {
-    if (!(error instanceof BoundError)) throw error;
-    return { result: 'undecided', reason: `the elimination needs ${error.message}` };
+    if (!boundIn(error)) throw error;
+    return { result: 'undecided', reason: `the elimination needs ${boundIn(error)!.message}` };
   }
 }
 
@@ -92,7 +92,7 @@ function withCounterpart(
     const counterpart = systems.flat().find((e) => e.name === missing.equation)?.poly;
     return { result: 'different', missing: { ...missing, counterpart } };
   } catch (error) {
-    if (!(error instanceof BoundError)) throw error;
+    if (!boundIn(error)) throw error;
     return found;
   }
 }
@@ -201,7 +201,7 @@ function firstSolved(
       const equations = equationsOf(space, side.d, anyMatter, { nonzero: rates(space) });
       return solve(equations, ranking, bound, new Set(side.eliminated));
     } catch (error) {
-      if (!(error instanceof BoundError)) throw error;
+      if (!boundIn(error)) throw error;
       refusal = error;
     }
   }

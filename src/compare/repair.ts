@@ -9,7 +9,7 @@ import { inverseMod, multiplyMod, PRIMES } from '../algebra/modular.js';
 import { constant, equals, isZero, multiply, type Poly, subtract, termsOf } from '../algebra/poly.js';
 import { multiplyRational, printRational, type Rational, rational } from '../algebra/rational.js';
 import type { Branch } from './branches.js';
-import { BoundError } from './budget.js';
+import { boundIn } from './budget.js';
 import type { Claim, ClaimTerm } from './claim.js';
 import { consequence, residualOf } from './consequence.js';
 import { reduce } from './elimination.js';
@@ -42,7 +42,7 @@ export function repairsOf(solved: Solved, branches: readonly Branch[], claim: Cl
       if (!branches.every((b) => consequence(solved, b, mended).verdict === 'follows')) continue;
       found.push(described(term, ratio));
     } catch (error) {
-      if (!(error instanceof BoundError)) throw error;
+      if (!boundIn(error)) throw error;
     }
   }
   found.sort((a, b) => a.weight - b.weight);

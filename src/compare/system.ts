@@ -5,7 +5,7 @@ import { splitUnit } from '../algebra/division.js';
 import { isZero, type Poly } from '../algebra/poly.js';
 import type { Derivation } from '../derivation.js';
 import { type Branch, type Solutions, solutionsOf } from './branches.js';
-import { BoundError, Budget } from './budget.js';
+import { Budget } from './budget.js';
 import type { Arena } from './elimination.js';
 import { equationsIn, type JetSpace } from './jet-space.js';
 import type { Known } from './known.js';
@@ -64,7 +64,7 @@ export function equationsOf(
   return { space, given, nonzero: extra.nonzero ?? [], trial: components.filter((p) => p.size > 1) };
 }
 
-/** @throws BoundError when the bound is exceeded, or when no solution is found although there may be some. */
+/** @throws BoundError when the bound is exceeded. */
 export function solve(
   equations: Equations,
   ranking: RankingName,
@@ -74,7 +74,5 @@ export function solve(
   const { space, given, nonzero, trial } = equations;
   const arena: Arena = { space, ranking: rankingOf(space, ranking, gone), budget: budgetOf(bound), pivots: [] };
   const solutions = solutionsOf(arena, given, nonzero, trial);
-  if (solutions.branches.length === 0 && solutions.deadEnds.some((e) => !e.proved))
-    throw new BoundError('another order of elimination: a pivot may vanish on every solution');
   return { ...equations, ranking, bound, arena, solutions };
 }

@@ -4,7 +4,7 @@
  * Imports derivations, jet spaces, quotients, the notation.
  */
 import { constant, generator, isZero, type Poly, scale, subtract } from '../algebra/poly.js';
-import { jetName } from '../algebra/ring.js';
+import { ExponentLimitError, jetName } from '../algebra/ring.js';
 import type { Derivation } from '../derivation.js';
 import type { Place } from '../notation/diagnostics.js';
 import { errorAt, InputError } from '../notation/diagnostics.js';
@@ -15,7 +15,7 @@ import { type Passage, plainPassage } from '../notation/passage.js';
 import { polyOfScalar } from '../notation/scalar-poly.js';
 import type { Expression } from '../notation/syntax.js';
 import { UNIT_SYMBOLS } from '../notation/units.js';
-import { BoundError } from './budget.js';
+import { boundIn } from './budget.js';
 import { withoutDots } from './dots.js';
 import { type JetSpace, jetSpace, MAX_ORDER } from './jet-space.js';
 import {
@@ -192,8 +192,17 @@ const tooHigh = (place: Place): InputError =>
 /** Terms that a typed expression may come to when it is multiplied out. */
 const MAX_TYPED_TERMS = 20_000;
 
-/** The meaning of an expression. @throws InputError for unknown names, a division by zero, too many terms. */
+/** The meaning of an expression. @throws InputError for unknown names, a division by zero, what is too large. */
 export function evaluate(vocabulary: Vocabulary, node: Expression, passage: Passage): Quotient {
+  try {
+    return meaningOf(vocabulary, node, passage);
+  } catch (error) {
+    if (!(error instanceof ExponentLimitError)) throw error;
+    throw refuse(passage.locate(node.start, node.end), 'exponent-limit', error.message, 'smaller powers only');
+  }
+}
+
+function meaningOf(vocabulary: Vocabulary, node: Expression, passage: Passage): Quotient {
   const { space, meanings } = vocabulary;
   const { ring } = space;
   const place = (): Place => passage.locate(node.start, node.end);
@@ -214,7 +223,7 @@ export function evaluate(vocabulary: Vocabulary, node: Expression, passage: Pass
       try {
         for (let n = 0; n < order; n++) value = checked(rateOfQuotient(space, value));
       } catch (error) {
-        if (error instanceof BoundError) throw tooHigh(place());
+        if (boundIn(error)) throw tooHigh(place());
         throw error;
       }
       return value;

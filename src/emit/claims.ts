@@ -52,6 +52,11 @@ function claimLines(report: ClaimReport, paint: Paint): string[] {
   const colour = { holds: paint.green, fails: paint.red, undecided: paint.yellow }[verdict];
   const matter = verdict === 'holds' && report.anyMatter ? ', for matter of any pressure' : '';
   const lines = [paint.bold(claim.text), `  ${colour(HEADLINE[verdict])}${matter}`];
+  const { counterexample: found } = report;
+  if (found) {
+    const where = found.branch.length === 0 ? '' : `, on solutions with ${shortened(found.branch.join(', '))}`;
+    lines.push(`  for instance with ${found.couplings.join(', ')}${where}`);
+  }
   if (report.staticOnly) lines.push('  all solutions are static: an expansion rate vanishes');
   if (report.reason !== undefined) lines.push(`  no answer within the bound: ${report.reason}`);
   if (claim.divisors.length > 0) lines.push(`  cleared of the divisors ${claim.divisors.map(infix).join(', ')}`);
@@ -116,6 +121,7 @@ export function claimsObject(d: Derivation, report: ClaimsReport): Record<string
       ...(c.reason === undefined ? {} : { reason: c.reason }),
       expression: infix(c.claim.poly),
       divisors: c.claim.divisors.map(infix),
+      ...(c.counterexample ? { counterexample: c.counterexample } : {}),
       ...(c.residual ? { residual: residualObject(c.residual) } : {}),
       repairs: c.repairs.map(({ kind, term, factor, corrected }) => ({ kind, term, factor, corrected })),
       branches: c.branches.map(({ branch, result }) => ({ branch, ...resultObject(result) })),

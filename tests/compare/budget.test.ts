@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { equals, multiply } from '../../src/algebra/poly.js';
-import { BoundError, Budget } from '../../src/compare/budget.js';
+import { ExponentLimitError } from '../../src/algebra/ring.js';
+import { BoundError, Budget, boundIn } from '../../src/compare/budget.js';
 import { poly, spaceOf } from './derivations.js';
 
 const space = spaceOf();
@@ -22,5 +23,11 @@ describe('the bound on an elimination', () => {
   it('refuses a polynomial with too many terms', () => {
     expect(() => new Budget(100, 5).multiply(p, p)).toThrow('more than 5 terms');
     expect(() => new Budget(100, 6).multiply(p, p)).not.toThrow();
+  });
+
+  it('powers beyond those of the kernel are a bound too, other errors are none', () => {
+    expect(boundIn(new ExponentLimitError())).toBeInstanceOf(BoundError);
+    expect(boundIn(new BoundError('x'))!.message).toBe('x');
+    expect(boundIn(new Error('x'))).toBeUndefined();
   });
 });

@@ -55,6 +55,7 @@ describe('reading a claim', () => {
     ['H = 1/0', 'division-by-zero', 'it vanishes here'],
     ['H = 0.5', 'decimal-point', 'write a fraction: 1/2'],
     ['D(H,9) = 0', 'exponent-limit', 'smaller orders only'],
+    ['(H^60)^20 = 0', 'exponent-limit', 'smaller powers only'],
   ])('%s is refused', (text, code, hint) => {
     try {
       read(text);
